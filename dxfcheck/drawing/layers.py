@@ -1,0 +1,54 @@
+"""Layers as the extraction needs them: visible or not, why, and with which linetype."""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+from ezdxf.document import Drawing
+from ezdxf.entities.layer import Layer
+
+from dxfcheck.drawing.cleaning import clean
+from dxfcheck.drawing.primitives import Fate
+
+__all__ = ["CONTINUOUS", "HIDDEN", "INVISIBLE", "LayerState", "LayerStates"]
+
+CONTINUOUS = "CONTINUOUS"
+_FROZEN = Fate("skipped", "layer is frozen")
+_OFF = Fate("skipped", "layer is off")
+INVISIBLE = Fate("skipped", "invisible")
+HIDDEN = frozenset({_FROZEN, _OFF, INVISIBLE})
+"""Fates of what the drawing holds but does not show."""
+
+
+class LayerState(NamedTuple):
+    """One layer. ``hidden`` is the fate of what lies on it, None where it shows; ``linetype`` is upper case."""
+
+    name: str
+    is_zero: bool
+    hidden: Fate | None
+    frozen: bool
+    linetype: str
+
+
+class LayerStates(dict[str, LayerState]):
+    """Layers by the name an entity states, made on first use; one that the table does not hold is simply on."""
+
+    def __init__(self, document: Drawing) -> None:
+        super().__init__()
+        self._table = document.layers
+
+    def __missing__(self, name: str) -> LayerState:
+        """Look a layer up in the drawing's table, without case."""
+        layer = self._table.get(name) if self._table.has_entry(name) else None
+        state = _state(name, layer if isinstance(layer, Layer) else None)
+        self[name] = state
+        return state
+
+
+def _state(name: str, layer: Layer | None) -> LayerState:
+    if layer is None:
+        return LayerState(clean(name), name == "0", None, frozen=False, linetype=CONTINUOUS)
+    frozen = layer.is_frozen()
+    hidden = _FROZEN if frozen else _OFF if layer.is_off() else None
+    linetype = clean(str(layer.dxf.get("linetype", CONTINUOUS))).upper()
+    return LayerState(clean(name), name == "0", hidden, frozen, linetype or CONTINUOUS)
