@@ -1,0 +1,192 @@
+"""Second formulation, which shares no code with the first: the equations of the independent loops.
+
+The unknowns are the rates at the joints: a turn for a pin, a sliding speed for a slide, both for a half joint. Around
+each closed loop the relative motions add up to nothing:
+
+    sum of q = 0,    sum of q * (-i) (p - origin) + s * u = 0
+
+with q the relative angular velocity and p the place of a turning joint, s the speed and u the direction of a sliding
+one. Source: the loop-closure equations in Norton, Design of Machinery, ch. 6, written with relative rates as in
+Uicker, Pennock & Shigley, Theory of Machines and Mechanisms, ch. 3 (both from memory).
+"""
+
+from __future__ import annotations
+
+from collections import deque
+from functools import lru_cache
+from typing import NamedTuple
+
+import numpy as np
+from numpy.typing import NDArray
+
+from dxfcheck.analysis.loops import independent_loops, places_of
+from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology
+from dxfcheck.geometry import Point
+from dxfcheck.linkage import Linkage
+
+__all__ = ["LoopSolution", "solve_loops"]
+
+Matrix = NDArray[np.float64]
+
+
+class LoopSolution(NamedTuple):
+    """Turn (rad/s) and velocity of the point at ``origin`` for every link; the links the frame does not reach rest."""
+
+    origin: Point
+    turns: list[float]
+    velocities: list[Point]
+
+    def velocity(self, link: int, place: Point) -> Point:
+        """Velocity of a link's point at a place, length units a second."""
+        return self.velocities[link] + 1j * self.turns[link] * (place - self.origin)
+
+
+class _Signs(NamedTuple):
+    """Which unknowns are turns (1 or 0), which of them a loop passes, and which lie between the frame and a link.
+
+    The last two with the sense, +1 or -1, in which they are passed.
+    """
+
+    unknowns: tuple[tuple[int, bool], ...]
+    turning: Matrix
+    around: Matrix
+    to_link: Matrix
+
+
+def solve_loops(linkage: Linkage, topology: Topology, drives: tuple[int, ...], freedom: int) -> LoopSolution:
+    """The motion under the drives with these numbers, where the loops leave as many motions as ``freedom`` says."""
+    signs = _signs_of(topology)
+    origin, size = _middle_of(linkage)
+    shares = _shares(linkage, signs, origin, size)
+    loops = (shares[:, None, :] * signs.around[None, :, :]).reshape(-1, len(signs.unknowns))
+    rows, wanted = _drive_rows(linkage, signs, drives, size)
+    rates = _joint_rates(loops, rows, wanted, freedom)
+    turns, across, up = ((shares * rates) @ signs.to_link.T).tolist()
+    velocities = [complex(right, upward) * size for right, upward in zip(across, up, strict=True)]
+    return LoopSolution(origin, turns, velocities)
+
+
+def _middle_of(linkage: Linkage) -> tuple[Point, float]:
+    """A place among the joints and the greatest distance of a joint from it."""
+    places = [joint.at for joint in linkage.joints]
+    origin = sum(places) / len(places)
+    return origin, max([abs(place - origin) for place in places]) or 1.0
+
+
+def _shares(linkage: Linkage, signs: _Signs, origin: Point, size: float) -> Matrix:
+    """What each unknown adds to the turn and to the velocity at the origin of the link behind it; three rows."""
+    columns: list[tuple[float, float, float]] = []
+    for number, slides in signs.unknowns:
+        joint = linkage.joints[number]
+        if slides:
+            along = joint.direction or 0j
+            along = along * 1j if joint.kind == "rolling" else along
+            columns.append((0.0, along.real, along.imag))
+        else:
+            arm = (origin - joint.at) / size
+            columns.append((1.0, -arm.imag, arm.real))
+    return np.array(columns).T
+
+
+def _drive_rows(
+    linkage: Linkage, signs: _Signs, drives: tuple[int, ...], size: float
+) -> tuple[list[Matrix], list[float]]:
+    """One row over the joint rates for each drive, and what it shall come to."""
+    rows: list[Matrix] = []
+    wanted: list[float] = []
+    for drive in [linkage.drives[number] for number in drives]:
+        joint = None if drive.joint is None else linkage.joints[drive.joint]
+        if drive.kind == "slide" and joint is not None:
+            sense = 1.0 if (joint.first, joint.second) == (drive.against, drive.link) else -1.0
+            rows.append(np.array([sense * float(unknown == (drive.joint, True)) for unknown in signs.unknowns]))
+            wanted.append(drive.rate / size)
+        else:
+            rows.append((signs.to_link[drive.link] - signs.to_link[drive.against]) * signs.turning)
+            wanted.append(drive.rate)
+    return rows, wanted
+
+
+def _joint_rates(loops: Matrix, rows: list[Matrix], wanted: list[float], freedom: int) -> Matrix:
+    """The joint rates that close the loops and run as the drives say; where several do, the least of them.
+
+    Where loops and drives are as many as the unknowns and none repeats another, they are solved as they stand. Else
+    the motions that fit the loops best are combined: as many as the freedom says.
+    """
+    unknowns = loops.shape[1]
+    if len(loops) + freedom == unknowns and len(rows) == freedom:
+        square = np.empty((unknowns, unknowns))
+        square[: len(loops)] = loops
+        square[len(loops) :] = rows
+        try:
+            return np.linalg.solve(square, np.array([0.0] * len(loops) + wanted))
+        except np.linalg.LinAlgError:
+            pass  # exactly singular: the least motion below will differ from the first formulation, and tell
+    motions = np.linalg.svd(loops, full_matrices=True)[2] if len(loops) else np.eye(unknowns)
+    motions = motions[unknowns - freedom :]
+    parts: Matrix = np.linalg.lstsq(np.array(rows) @ motions.T, np.array(wanted), rcond=None)[0]
+    return parts @ motions
+
+
+@lru_cache(maxsize=TOPOLOGIES_KEPT)
+def _signs_of(topology: Topology) -> _Signs:
+    """The unknowns, (joint, whether it slides), and in which sense each loop and each link's path pass them."""
+    unknowns: list[tuple[int, bool]] = []
+    for number, joint in enumerate(topology.joints):
+        unknowns += [(number, False)] if joint.kind != "slide" else []
+        unknowns += [(number, True)] if joint.kind != "pin" else []
+    steps = {
+        (start, place, end): _step(topology, joints.joints, start, end)
+        for place, joints in enumerate(places_of(topology))
+        for start in joints.links
+        for end in joints.links
+    }
+    loops = independent_loops(topology)
+    around = np.zeros((len(loops), len(topology.joints)))
+    for row, loop in zip(around, loops, strict=True):
+        for start, place, end in zip(loop.links, loop.places, loop.links[1:] + loop.links[:1], strict=True):
+            _add(row, steps[start, place, end])
+    to_link = np.zeros((topology.links, len(topology.joints)))
+    for start, place, end in _tree(topology):
+        to_link[end] = to_link[start]
+        _add(to_link[end], steps[start, place, end])
+    passed = [number for number, _ in unknowns]
+    around, to_link = around[:, passed], to_link[:, passed]
+    turning = np.array([not slides for _, slides in unknowns], dtype=float)
+    for matrix in (turning, around, to_link):
+        matrix.setflags(write=False)
+    return _Signs(tuple(unknowns), turning, around, to_link)
+
+
+def _step(topology: Topology, joints: tuple[int, ...], start: int, end: int) -> tuple[tuple[int, float], ...]:
+    """The joints passed from one link to another at one place, and their sense: a pin's joints leave its first link."""
+    step: list[tuple[int, float]] = []
+    if start != end:
+        for number in joints:
+            joint = topology.joints[number]
+            if joint.second in (start, end):
+                step.append((number, 1.0 if joint.second == end else -1.0))
+    return tuple(step)
+
+
+def _add(row: Matrix, step: tuple[tuple[int, float], ...]) -> None:
+    for number, sense in step:
+        row[number] += sense
+
+
+def _tree(topology: Topology) -> list[tuple[int, int, int]]:
+    """Steps (link, place, link) that reach every link from the frame, nearest first."""
+    at_link: list[list[int]] = [[] for _ in range(topology.links)]
+    places = places_of(topology)
+    for number, place in enumerate(places):
+        for link in place.links:
+            at_link[link].append(number)
+    reached, waiting, steps = {topology.frame}, deque([topology.frame]), []
+    while waiting:
+        link = waiting.popleft()
+        for number in at_link[link]:
+            for other in places[number].links:
+                if other not in reached:
+                    reached.add(other)
+                    waiting.append(other)
+                    steps.append((link, number, other))
+    return steps
