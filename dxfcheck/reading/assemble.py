@@ -1,0 +1,219 @@
+"""Linkages from bodies and pins: joints, assemblies, names (reading rules 7 and 8)."""
+
+from __future__ import annotations
+
+from collections import defaultdict
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from dataclasses import dataclass
+from typing import NamedTuple
+
+from dxfcheck.linkage import Joint, Link, Linkage, Pin
+from dxfcheck.reading.bodies import Body
+from dxfcheck.reading.labels import natural_key
+from dxfcheck.reading.linework import Strand
+from dxfcheck.reading.pins import PinSite
+from dxfcheck.reading.tolerance import Tolerance
+from dxfcheck.reading.unions import Unions
+
+__all__ = ["Assembled", "Assembly", "Named", "assemble", "find_assemblies"]
+
+
+class Assembled(NamedTuple):
+    """A linkage, the body each of its links was made of (None for the frame) and the site of each of its pins."""
+
+    linkage: Linkage
+    bodies: tuple[int | None, ...]
+    sites: tuple[int, ...]
+
+
+class Assembly(NamedTuple):
+    """Moving bodies (indices) that hang together otherwise than through the frame, and all their pins (sites).
+
+    ``grounded`` says whether a joint ties one of them to the frame; ``linkage`` whether the assembly shows enough to
+    be called a linkage at all (reading rule 11).
+    """
+
+    bodies: tuple[int, ...]
+    sites: tuple[int, ...]
+    grounded: bool
+    linkage: bool
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Named:
+    """What the names and handles of links and pins come from.
+
+    ``pin_names`` by site; ``labelled`` the sites with a label on the sheet; ``handles`` of each body and of each
+    site's rings; ``frame_handles`` those of the frame linework on each fixed site; ``body_layers`` and
+    ``site_layers`` the layer of each.
+    """
+
+    pin_names: Mapping[int, str]
+    labelled: frozenset[int]
+    body_handles: Sequence[tuple[str, ...]]
+    body_layers: Sequence[str | None]
+    site_handles: Mapping[int, tuple[str, ...]]
+    frame_handles: Mapping[int, tuple[str, ...]]
+    site_layers: Mapping[int, str | None]
+
+
+def find_assemblies(bodies: Sequence[Body], fixed: frozenset[int]) -> list[Assembly]:
+    """Group moving bodies by the pins they share that are not on the frame; in the order of their first body."""
+    at_site: defaultdict[int, list[int]] = defaultdict(list)
+    for number, body in enumerate(bodies):
+        if not body.frame:
+            for site in body.pins:
+                at_site[site].append(number)
+    groups = Unions(len(bodies))
+    for site, members in at_site.items():
+        if site not in fixed:
+            for other in members[1:]:
+                groups.join(members[0], other)
+    return [_assembly(members, bodies, at_site, fixed) for members in groups.groups() if not bodies[members[0]].frame]
+
+
+def _assembly(
+    members: Sequence[int], bodies: Sequence[Body], at_site: Mapping[int, Sequence[int]], fixed: frozenset[int]
+) -> Assembly:
+    sites = tuple(sorted({site for member in members for site in bodies[member].pins}))
+    grounded = any(site in fixed for site in sites)
+    chained = any(sum(len(at_site[site]) > 1 for site in bodies[member].pins) > 1 for member in members)
+    return Assembly(tuple(members), sites, grounded, grounded or chained)
+
+
+def assemble(
+    assemblies: Sequence[Assembly],
+    bodies: Sequence[Body],
+    strands: Sequence[Strand],
+    pins: Sequence[PinSite],
+    fixed: frozenset[int],
+    named: Named,
+    tolerance: Tolerance,
+) -> list[Assembled]:
+    """The linkages M1, M2 ... by x, then y, of their leftmost pins."""
+
+    def place(assembly: Assembly) -> tuple[int, int]:
+        step = tolerance.t or 1.0
+        return min((round(pins[site].at.real / step), round(pins[site].at.imag / step)) for site in assembly.sites)
+
+    ordered = sorted(assemblies, key=place)
+    return [
+        _linkage(f"M{number}", assembly, bodies, strands, pins, fixed, named)
+        for number, assembly in enumerate(ordered, start=1)
+    ]
+
+
+def _linkage(
+    name: str,
+    assembly: Assembly,
+    bodies: Sequence[Body],
+    strands: Sequence[Strand],
+    sites: Sequence[PinSite],
+    fixed: frozenset[int],
+    named: Named,
+) -> Assembled:
+    ordered_sites = sorted(assembly.sites, key=lambda site: (natural_key(named.pin_names[site]), site))
+    pin_of = {site: number for number, site in enumerate(ordered_sites)}
+    names = _link_names(assembly, bodies, strands, sites, named)
+    ordered = sorted(assembly.bodies, key=lambda body: (natural_key(names[body]), body))
+    shift = 1 if assembly.grounded else 0
+    links = [
+        Link(
+            name=names[body],
+            kind="link",
+            pins=tuple(sorted(pin_of[site] for site in bodies[body].pins)),
+            handles=named.body_handles[body],
+            layer=named.body_layers[body],
+        )
+        for body in ordered
+    ]
+    frame = 0
+    if assembly.grounded:
+        links.insert(0, _frame_link(assembly, bodies, fixed, pin_of, named))
+    else:
+        frame = max(range(len(links)), key=lambda each: (_reach(links[each], ordered_sites, sites), -each))
+    at_pin: defaultdict[int, list[int]] = defaultdict(list)
+    for number, body in enumerate(ordered, start=shift):
+        for site in bodies[body].pins:
+            at_pin[pin_of[site]].append(number)
+    made = []
+    for number, site in enumerate(ordered_sites):
+        is_fixed = site in fixed
+        made.append(
+            Pin(
+                name=named.pin_names[site],
+                at=sites[site].at,
+                radius=sites[site].radius,
+                links=tuple(([0] if is_fixed else []) + at_pin[number]),
+                fixed=is_fixed,
+                labelled=site in named.labelled,
+                handles=named.site_handles[site],
+                layer=named.site_layers[site],
+            )
+        )
+    joints = tuple(_joints(made))
+    linkage = Linkage(
+        name=name, links=tuple(links), pins=tuple(made), joints=joints, frame=frame, grounded=assembly.grounded
+    )
+    return Assembled(linkage, (*[None] * shift, *ordered), tuple(ordered_sites))
+
+
+def _joints(pins: Iterable[Pin]) -> Iterator[Joint]:
+    """k links at one pin are k - 1 full joints, each from the first of them to another."""
+    for number, pin in enumerate(pins):
+        for other in pin.links[1:]:
+            yield Joint(kind="pin", first=pin.links[0], second=other, at=pin.at, pin=number, handles=pin.handles)
+
+
+def _frame_link(
+    assembly: Assembly,
+    bodies: Sequence[Body],
+    fixed: frozenset[int],
+    pin_of: Mapping[int, int],
+    named: Named,
+) -> Link:
+    sites = [site for site in assembly.sites if site in fixed]
+    handles = dict.fromkeys(handle for site in sites for handle in named.frame_handles.get(site, ()))
+    return Link(
+        name="frame",
+        kind="frame",
+        pins=tuple(sorted(pin_of[site] for site in sites)),
+        handles=tuple(handles),
+        layer=named.body_layers[0] if bodies[0].frame else None,
+    )
+
+
+def _link_names(
+    assembly: Assembly,
+    bodies: Sequence[Body],
+    strands: Sequence[Strand],
+    sites: Sequence[PinSite],
+    named: Named,
+) -> dict[int, str]:
+    """Names by pins in natural order; further links between the same pins are numbered, the shortest drawn first."""
+    by_pins: defaultdict[str, list[int]] = defaultdict(list)
+    for body in assembly.bodies:
+        pins = sorted((named.pin_names[site] for site in bodies[body].pins), key=natural_key)
+        by_pins["-".join(pins)].append(body)
+    names: dict[int, str] = {}
+    for name, members in by_pins.items():
+        if len(members) == 1:
+            names[members[0]] = name
+            continue
+        for number, body in enumerate(sorted(members, key=lambda each: _drawn(bodies[each], strands, sites)), start=1):
+            names[body] = name if number == 1 else f"{name} ({number})"
+    return names
+
+
+def _drawn(body: Body, strands: Sequence[Strand], sites: Sequence[PinSite]) -> tuple[float, float]:
+    """Length of a body's linework and how far it reaches from its first pin: nothing that turning a sheet changes."""
+    first = sites[body.pins[0]].at
+    points = [point for index in body.strands for point in (*strands[index].ends, *strands[index].corners)]
+    length = sum(strands[index].length for index in body.strands)
+    return round(length, 9), max((abs(point - first) for point in points), default=0.0)
+
+
+def _reach(link: Link, ordered_sites: Sequence[int], sites: Sequence[PinSite]) -> float:
+    """Greatest distance between two pins of a link."""
+    places = [sites[ordered_sites[pin]].at for pin in link.pins]
+    return max((abs(one - other) for one in places for other in places), default=0.0)

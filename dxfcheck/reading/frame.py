@@ -1,0 +1,294 @@
+"""Frame symbols in plain lines: a base line with hatch strokes on one side, or a hatch along it (reading rule 5)."""
+
+from __future__ import annotations
+
+import math
+from collections import defaultdict
+from collections.abc import Collection, Iterable, Iterator, Sequence
+from dataclasses import dataclass
+from typing import NamedTuple
+
+import numpy as np
+
+from dxfcheck.drawing.primitives import Fill, Segment
+from dxfcheck.geometry import Point, angle_between_lines, cross, parameter_on_line
+from dxfcheck.reading.landing import Landing
+from dxfcheck.reading.linework import Strand, distance_to_piece
+from dxfcheck.reading.nearness import near_pairs
+from dxfcheck.reading.pins import PinSite
+from dxfcheck.reading.sheet import Sheet
+from dxfcheck.reading.tolerance import Tolerance
+from dxfcheck.reading.touches import Touch, Touches
+from dxfcheck.settings import (
+    STROKE_ANGLES_DEGREES,
+    STROKE_OF_BASE,
+    STROKE_PARALLEL_DEGREES,
+    STROKE_SHORT_OF_BASE,
+)
+
+__all__ = ["FrameSymbols", "find_frame_symbols", "pins_at_corners"]
+
+STROKES_OF_A_SYMBOL = 2
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class FrameSymbols:
+    """Strands that are frame by a symbol (bases and legs) and strands that are its hatch strokes, with reasons."""
+
+    frame: dict[int, str]
+    strokes: dict[int, str]
+
+
+class _Base(NamedTuple):
+    """One straight piece of a strand, as a base line strokes may stand on."""
+
+    strand: int
+    number: int
+
+
+class _Stroke(NamedTuple):
+    """A line that may be a hatch stroke of a base: on which side, and in which direction away from it."""
+
+    strand: int
+    base: _Base
+    side: bool
+    direction: Point
+
+
+def find_frame_symbols(sheet: Sheet, relevant: Collection[int], landings: Sequence[Landing]) -> FrameSymbols:
+    """Frame symbols among the linework that hangs together with pins (``relevant`` strands)."""
+    strands, touching, tolerance = sheet.strands, sheet.touching, sheet.tolerance
+    landed = {(landing.strand, landing.end) for landing in landings}
+    standing = _strokes_on_bases(strands, relevant, touching, landed, tolerance)
+    bases, strokes = _accept(strands, standing, {})
+    loose = _loose_strokes(strands, relevant, strokes, touching, landed)
+    bases, strokes = _accept(strands, loose, strokes, bases)
+    reasons = {base.strand: "base line of a frame symbol with hatch strokes" for base in bases}
+    hatched = _bases_along_hatches(strands, relevant, sheet.fills, sheet.pins, tolerance)
+    reasons.update({base.strand: "base line with a hatch along it" for base in hatched if base.strand not in reasons})
+    for leg in _legs(strands, [*bases, *hatched], touching, landings, tolerance):
+        reasons.setdefault(leg, "leg of a frame symbol")
+    return FrameSymbols(frame=reasons, strokes=dict.fromkeys(strokes, "hatch stroke of a frame symbol"))
+
+
+def _piece(strands: Sequence[Strand], base: _Base) -> Segment:
+    piece = strands[base.strand].pieces[base.number]
+    assert isinstance(piece, Segment)  # noqa: S101 (bases are made of straight pieces only)
+    return piece
+
+
+def _as_stroke(strands: Sequence[Strand], index: int, base: _Base, near: int) -> _Stroke | None:
+    """A line as a stroke of a base by its angle and length, its end ``near`` being the one at the base."""
+    line, piece = strands[index], _piece(strands, base)
+    along = piece.end - piece.start
+    direction = line.ends[1 - near] - line.ends[near]
+    low, high = STROKE_ANGLES_DEGREES
+    fits = low <= math.degrees(angle_between_lines(direction, along)) <= high
+    if not fits or abs(direction) > STROKE_OF_BASE * abs(along):
+        return None
+    return _Stroke(index, base, cross(along, direction) > 0, direction)
+
+
+def _strokes_on_bases(
+    strands: Sequence[Strand],
+    candidates: Iterable[int],
+    touching: Touches,
+    landed: Collection[tuple[int, int | None]],
+    tolerance: Tolerance,
+) -> Iterator[_Stroke]:
+    """Lines with one end on another line and the other end free.
+
+    A stroke may well begin inside the ring of a pin, where its base runs through the pin; it never ends on one.
+    """
+    for index in candidates:
+        strand = strands[index]
+        if not isinstance(strand.primitive, Segment):
+            continue
+        closing = [_closest(touching.at(index, end), tolerance) for end in (0, 1)]
+        for end in (0, 1):
+            if closing[1 - end] or (index, 1 - end) in landed:
+                continue
+            for target in closing[end]:
+                base = _base_at(strands[target], strand.ends[end])
+                stroke = _as_stroke(strands, index, base, end) if base else None
+                if stroke is not None:
+                    yield stroke
+
+
+def _closest(near: Sequence[Touch], tolerance: Tolerance) -> list[int]:
+    """The strands that an end closes on: of several within the shape tolerance, those it is nearest to."""
+    nearest = min((touch.gap for touch in near), default=0.0) + tolerance.t
+    return [touch.strand for touch in near if touch.gap <= min(tolerance.shape, nearest)]
+
+
+def _base_at(strand: Strand, point: Point) -> _Base | None:
+    number = min(range(len(strand.pieces)), key=lambda each: distance_to_piece(point, strand.pieces[each]))
+    return _Base(strand.number, number) if isinstance(strand.pieces[number], Segment) else None
+
+
+def _accept(
+    strands: Sequence[Strand],
+    candidates: Iterable[_Stroke],
+    known: dict[int, _Stroke],
+    bases: Sequence[_Base] = (),
+) -> tuple[list[_Base], dict[int, _Stroke]]:
+    """Bases with two or more parallel strokes on one side, the longest first; a stroke serves one base only.
+
+    A base already known takes single strokes that run parallel to its own.
+    """
+    by_base: defaultdict[_Base, list[_Stroke]] = defaultdict(list)
+    for stroke in candidates:
+        by_base[stroke.base].append(stroke)
+    accepted, taken = list(bases), dict(known)
+    longest_first = sorted(by_base, key=lambda base: (-_length(_piece(strands, base)), base))
+    for base in longest_first:
+        if any(base.strand == index for index in taken):
+            continue
+        free = [stroke for stroke in by_base[base] if stroke.strand not in taken]
+        own = [stroke for stroke in taken.values() if stroke.base == base]
+        group = max((_parallel_to(stroke, [*own, *free]) for stroke in [*own, *free]), key=len, default=[])
+        if len(group) >= STROKES_OF_A_SYMBOL:
+            taken.update({stroke.strand: stroke for stroke in group})
+            if base not in accepted:
+                accepted.append(base)
+    return accepted, taken
+
+
+def _length(piece: Segment) -> float:
+    return abs(piece.end - piece.start)
+
+
+def _parallel_to(stroke: _Stroke, others: Iterable[_Stroke]) -> list[_Stroke]:
+    within = math.radians(STROKE_PARALLEL_DEGREES)
+    return [
+        other
+        for other in others
+        if other.side == stroke.side and angle_between_lines(other.direction, stroke.direction) <= within
+    ]
+
+
+def _loose_strokes(
+    strands: Sequence[Strand],
+    relevant: Collection[int],
+    strokes: Collection[int],
+    touching: Touches,
+    landed: Collection[tuple[int, int | None]],
+) -> Iterator[_Stroke]:
+    """Free lines that stop a little short of a base, as clipped hatches do."""
+    free = [
+        strand
+        for strand in strands
+        if isinstance(strand.primitive, Segment) and touching.free(strand.number, 0) and touching.free(strand.number, 1)
+    ]
+    bases = [
+        _Base(index, number)
+        for index in sorted(relevant)
+        if index not in strokes
+        for number, piece in enumerate(strands[index].pieces)
+        if isinstance(piece, Segment)
+    ]
+    if not free or not bases:
+        return
+    points = np.array([end for strand in free for end in strand.ends], dtype=np.complex128)
+    reach = np.array([STROKE_SHORT_OF_BASE * strand.length for strand in free for _ in (0, 1)])
+    starts = np.array([_piece(strands, base).start for base in bases], dtype=np.complex128)
+    ends = np.array([_piece(strands, base).end for base in bases], dtype=np.complex128)
+    nearest: dict[int, tuple[float, _Stroke]] = {}
+    for point, piece in zip(*(each.tolist() for each in near_pairs(points, reach, starts, ends)), strict=True):
+        strand, near, base = free[point // 2], point % 2, bases[piece]
+        stroke = _as_stroke(strands, strand.number, base, near)
+        if (strand.number, 1 - near) in landed:
+            continue
+        if stroke is not None and _stops_short(strand, near, _piece(strands, base)):
+            gap = abs(_height(strand.ends[near], _piece(strands, base)))
+            if strand.number not in nearest or gap < nearest[strand.number][0]:
+                nearest[strand.number] = (gap, stroke)
+    yield from (stroke for _, stroke in nearest.values())
+
+
+def _height(point: Point, base: Segment) -> float:
+    """How far to the left of a base line a point lies."""
+    along = base.end - base.start
+    return cross(along, point - base.start) / abs(along)
+
+
+def _stops_short(line: Strand, near: int, base: Segment) -> bool:
+    heights = [_height(end, base) for end in line.ends]
+    low, high = heights[near], heights[1 - near]
+    return low * high > 0 and abs(low) <= STROKE_SHORT_OF_BASE * abs(high - low) and abs(low) < abs(high)
+
+
+def _bases_along_hatches(
+    strands: Sequence[Strand],
+    relevant: Collection[int],
+    fills: Sequence[Fill],
+    pins: Sequence[PinSite],
+    tolerance: Tolerance,
+) -> list[_Base]:
+    """Straight pieces that a pattern hatch runs along; a hatch between two or more pins fills a link instead."""
+    edges = [
+        (start, end)
+        for fill in fills
+        if not fill.solid
+        for outline in fill.outlines
+        if len(pins_at_corners(outline, pins, tolerance)) < 2
+        for start, end in zip(outline, [*outline[1:], *outline[:1]], strict=True)
+        if abs(end - start) > tolerance.shape
+    ]
+    bases = [
+        _Base(index, number)
+        for index in sorted(relevant)
+        for number, piece in enumerate(strands[index].pieces)
+        if isinstance(piece, Segment)
+    ]
+    if not edges or not bases:
+        return []
+    middles = np.array([(start + end) / 2 for start, end in edges], dtype=np.complex128)
+    half = np.array([abs(end - start) / 2 for start, end in edges])
+    starts = np.array([_piece(strands, base).start for base in bases], dtype=np.complex128)
+    ends = np.array([_piece(strands, base).end for base in bases], dtype=np.complex128)
+    found = []
+    for edge, piece in zip(*(each.tolist() for each in near_pairs(middles, half, starts, ends)), strict=True):
+        if _lies_along(edges[edge], _piece(strands, bases[piece]), tolerance) and bases[piece] not in found:
+            found.append(bases[piece])
+    return found
+
+
+def _lies_along(edge: tuple[Point, Point], base: Segment, tolerance: Tolerance) -> bool:
+    """Whether an edge lies on a base line, over at least half of the shorter of the two."""
+    along = base.end - base.start
+    if along == 0 or any(abs(cross(along, point - base.start)) / abs(along) > tolerance.shape for point in edge):
+        return False
+    low, high = sorted(parameter_on_line(point, base.start, base.end) for point in edge)
+    shared = min(high, 1.0) - max(low, 0.0)
+    return shared >= min(1.0, high - low) / 2
+
+
+def pins_at_corners(outline: Sequence[Point], pins: Sequence[PinSite], tolerance: Tolerance) -> list[int]:
+    """Indices of the pins whose rings hold a corner of an outline."""
+    return [
+        pin.number
+        for pin in pins
+        if any(abs(corner - pin.at) <= pin.radii[-1] + tolerance.rim(pin.radii[-1]) for corner in outline)
+    ]
+
+
+def _legs(
+    strands: Sequence[Strand],
+    bases: Collection[_Base],
+    touching: Touches,
+    landings: Sequence[Landing],
+    tolerance: Tolerance,
+) -> Iterator[int]:
+    """Lines from a base to a pin: sides of the triangle between them, whatever angle they meet the ring at."""
+    base_strands = {base.strand for base in bases}
+    landed = {(landing.strand, landing.end) for landing in landings if landing.how != "loose"}
+    for landing in landings:
+        strand = strands[landing.strand]
+        if landing.end is None or strand.number in base_strands:
+            continue
+        if (strand.number, 1 - landing.end) in landed:
+            continue  # a link between two pins, one of which sits on the base line itself
+        foot = touching.at(strand.number, 1 - landing.end)
+        if any(touch.strand in base_strands and touch.gap <= tolerance.shape for touch in foot):
+            yield strand.number

@@ -1,0 +1,68 @@
+"""From a sketch to linkages, with the evidence, what looked wrong, and the account of every entity."""
+
+from __future__ import annotations
+
+from collections import Counter
+
+from dxfcheck.drawing.primitives import Sketch
+from dxfcheck.reading.account import make_account
+from dxfcheck.reading.evidence import linkage_evidence
+from dxfcheck.reading.fates import fates_of
+from dxfcheck.reading.model import Model, make_model
+from dxfcheck.reading.observe import Seen, observe_linework
+from dxfcheck.reading.observe_sheet import observe_sheet
+from dxfcheck.reading.parts import Parts, find_parts
+from dxfcheck.reading.reading import Reading
+from dxfcheck.reading.sheet import Sheet, lay_out
+from dxfcheck.reading.sorting import sort_primitives
+from dxfcheck.reading.tolerance import tolerance_for
+from dxfcheck.reading.touches import find_touches
+from dxfcheck.settings import Settings
+
+__all__ = ["read_linkages"]
+
+
+def read_linkages(sketch: Sketch, settings: Settings) -> Reading:
+    """Read a sketch by the reading rules of DEVELOPERS.md. Cost near-linear in its primitives."""
+    tolerance = tolerance_for(sketch.diagonal, settings)
+    kinds = sort_primitives(sketch)
+    sheet = lay_out(kinds, tolerance)
+    parts = find_parts(kinds, sheet)
+    model = make_model(sketch, settings, kinds, sheet, parts)
+    observations = (
+        *observe_sheet(sketch, sheet, parts, model),
+        *observe_linework(_seen(sheet, parts, model)),
+        *model.driven.observations,
+    )
+    return Reading(
+        tolerance=tolerance.t,
+        linkages=model.linkages,
+        evidence=(*linkage_evidence(model, sheet, parts), *model.driven.evidence),
+        observations=observations,
+        account=make_account(sketch, fates_of(sketch, kinds, sheet, parts, model)),
+    )
+
+
+def _seen(sheet: Sheet, parts: Parts, model: Model) -> Seen:
+    bodies_at = Counter(site for body in parts.bodies.bodies for site in body.pins)
+    owners = [
+        (body, link.name, each.linkage.name)
+        for each in model.assembled
+        for body, link in zip(each.bodies, each.linkage.links, strict=True)
+        if body is not None
+    ]
+    drawn = sorted(strand for body, _, _ in owners for strand in parts.bodies.bodies[body].strands)
+    return Seen(
+        strands=sheet.strands,
+        gaps=find_touches(sheet.linework, sheet.tolerance, sheet.tolerance.gap, drawn),
+        sites=sheet.sites,
+        landings=parts.landings,
+        misses=sheet.landings.misses,
+        bodies=parts.bodies,
+        body_names={body: link for body, link, _ in owners},
+        mechanisms={body: mechanism for body, _, mechanism in owners},
+        pin_names=dict(model.names.names),
+        shared={site for site, count in bodies_at.items() if count > 1},
+        handles=model.strand_handles,
+        tolerance=sheet.tolerance,
+    )

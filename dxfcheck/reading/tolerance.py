@@ -1,0 +1,42 @@
+"""The two tolerances a sketch is read with."""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+from dxfcheck.settings import (
+    ARC_REACH_IN_SHAPES,
+    COINCIDENCE_OF_DIAGONAL,
+    RIM_OF_RADIUS,
+    SHAPE_OF_DIAGONAL,
+    WELD_GAP_OF_DIAGONAL,
+    Settings,
+)
+
+__all__ = ["Tolerance", "tolerance_for"]
+
+
+class Tolerance(NamedTuple):
+    """Lengths in the drawing's unit.
+
+    ``t`` is for ends that meet, ``shape`` for rectangles, obrounds and frame symbols, ``gap`` is how far off an end may
+    stop and still be taken to have been meant to meet.
+    """
+
+    t: float
+    shape: float
+    gap: float
+
+    def rim(self, radius: float) -> float:
+        """How far from a rim of this radius an end may lie and still be on it."""
+        return max(self.t, RIM_OF_RADIUS * radius)
+
+    def arc(self, radius: float) -> float:
+        """How far from an arc of this radius an end may lie and still meet it."""
+        return min(self.rim(radius), max(self.t, ARC_REACH_IN_SHAPES * self.shape))
+
+
+def tolerance_for(diagonal: float, settings: Settings) -> Tolerance:
+    """The tolerances for a sketch of this diagonal; a tolerance set by the user replaces t."""
+    t = settings.tolerance if settings.tolerance is not None else COINCIDENCE_OF_DIAGONAL * diagonal
+    return Tolerance(t, max(t, SHAPE_OF_DIAGONAL * diagonal), max(t, WELD_GAP_OF_DIAGONAL * diagonal))
