@@ -1,0 +1,71 @@
+"""Many drawings, one after the other or side by side, always in the order asked for."""
+
+from __future__ import annotations
+
+import os
+from collections.abc import Iterator, Sequence
+from pathlib import Path
+
+from dxfcheck.cli.messages import fault_text
+from dxfcheck.cli.outcome import Outcome
+from dxfcheck.cli.paths import Target
+from dxfcheck.errors import DrawingUnreadable, OptionInvalid
+from dxfcheck.inspection import DrawingReport
+from dxfcheck.settings import Settings
+
+__all__ = ["faulty", "inspect_all", "inspect_one"]
+
+WORTH_A_POOL = 2_000_000
+"""Bytes of drawing, about two seconds of work: from here on starting processes pays."""
+
+
+def inspect_all(targets: Sequence[Target], settings: Settings, jobs: int | None) -> Iterator[Outcome]:
+    """One outcome for each target, in order; OptionInvalid where a setting turns out unusable."""
+    workers = min(jobs or _sensible_jobs(targets), len(targets))
+    if workers <= 1:
+        return (inspect_one(settings, target) for target in targets)
+    # Loaded on use: what starts processes takes longer to load than a small drawing to check.
+    from dxfcheck.cli.pool import inspect_side_by_side  # noqa: PLC0415
+
+    return inspect_side_by_side(targets, settings, workers)
+
+
+def _unreadable(path: str, error: str) -> DrawingReport:
+    return DrawingReport(path=path, status="unreadable", error=error)
+
+
+def _sensible_jobs(targets: Sequence[Target]) -> int:
+    """All cores for much work, one process for little: starting others takes as long as a dozen small drawings."""
+    if len(targets) <= 1 or sum(_size(target) for target in targets) < WORTH_A_POOL:
+        return 1
+    return len(os.sched_getaffinity(0)) if hasattr(os, "sched_getaffinity") else os.cpu_count() or 1
+
+
+def _size(target: Target) -> int:
+    try:
+        return Path(target.path).stat().st_size
+    except (OSError, ValueError):
+        return 0
+
+
+def inspect_one(settings: Settings, target: Target) -> Outcome:
+    """One drawing; whatever goes wrong with it is its own outcome, so that the others are still checked."""
+    if target.problem is not None:
+        return Outcome(_unreadable(target.path, target.problem))
+    # Loaded on use: ezdxf and networkx are not wanted in the process that only hands out work.
+    from dxfcheck.inspection import inspect_drawing  # noqa: PLC0415
+
+    try:
+        return Outcome(inspect_drawing(target.path, settings))
+    except DrawingUnreadable as error:
+        return Outcome(_unreadable(target.path, f"{error.reason}; {error.remedy}"))
+    except OptionInvalid:
+        raise
+    except Exception as error:  # noqa: BLE001 - a fault of ours in one drawing must not end the run
+        return faulty(target, error)
+
+
+def faulty(target: Target, error: BaseException) -> Outcome:
+    """The outcome of a drawing in which a fault of our own came up."""
+    text = fault_text(error, target.path)
+    return Outcome(_unreadable(target.path, text.removeprefix(f"{target.path}: ")), text)

@@ -1,0 +1,28 @@
+"""A finding: one thing a person should look at, with its place, its size and the remedy."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal
+
+from dxfcheck.geometry import Point
+
+__all__ = ["SEVERITIES", "Finding", "Severity"]
+
+Severity = Literal["error", "warning", "note"]
+SEVERITIES: tuple[Severity, ...] = ("error", "warning", "note")
+"""From the gravest down; the words are SARIF's levels."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Finding:
+    """One finding. ``message`` says what and how much in one or two lines, ``remedy`` how to mend it."""
+
+    rule: str
+    severity: Severity
+    message: str
+    remedy: str
+    at: Point | None = None
+    handles: tuple[str, ...] = ()
+    layer: str | None = None
+    mechanism: str | None = None

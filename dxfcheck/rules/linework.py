@@ -1,0 +1,215 @@
+"""Rules on the linework of the links: ends, doubled lines, pins and their labels."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from dxfcheck.reading.reading import Observation
+from dxfcheck.rules.finding import Finding, Severity
+from dxfcheck.rules.registry import rule
+from dxfcheck.rules.subject import RuleSubject
+from dxfcheck.rules.wording import length, listed, place
+
+__all__: list[str] = []
+
+
+def _observed(subject: RuleSubject, kind: str) -> Iterator[Observation]:
+    return (each for each in subject.reading.observations if each.kind == kind)
+
+
+def _finding(seen: Observation, severity: Severity, message: str, remedy: str) -> Finding:
+    return Finding(
+        rule=seen.kind,
+        severity=seen.severity or severity,
+        message=message,
+        remedy=remedy,
+        at=seen.at,
+        handles=seen.handles,
+        layer=seen.layer,
+        mechanism=seen.mechanism,
+    )
+
+
+def _of_link(seen: Observation) -> str:
+    return f"an end of link {seen.subject}" if seen.subject else "an end of a line"
+
+
+@rule(
+    "near-miss",
+    "error",
+    "An end that just misses what it should join",
+    family="linework",
+    also=("warning",),
+    looks_for="An end that points at a pin and stops up to two ring diameters short of its rim, or stops between the "
+    "coincidence tolerance and a thousandth of the sheet's diagonal short of other linework (error); an end that runs "
+    "up to two ring diameters past the centre of a pin, which is read as pinned there (warning).",
+    matters="What does not meet is not joined: the link is missing from the loop, and the mobility count and all "
+    "speeds are those of another mechanism.",
+    remedy="Snap the end to the pin's centre or rim, or to the line it belongs to.",
+)
+def near_miss(subject: RuleSubject) -> Iterator[Finding]:
+    """Ends that stop short of a pin or a weld, or run past a pin."""
+    for seen in _observed(subject, "near-miss"):
+        amount = length(seen.amount or 0.0, subject.sketch.unit)
+        message = f"{_of_link(seen)} {seen.detail.format(amount=amount)}"
+        if seen.severity == "warning":
+            remedy = "end the line at the pin's centre or rim, or let it run on further if it is meant to"
+        else:
+            limit = length(seen.limit or 0.0, subject.sketch.unit)
+            remedy = f"snap the end to it (an end within {limit} counts as meeting it)"
+        yield _finding(seen, "error", message, remedy)
+
+
+@rule(
+    "off-centre-end",
+    "warning",
+    "A line at a pin that does not aim at its centre",
+    family="linework",
+    looks_for="An end that lands on a pin but points past its centre by more than 2 % of the ring's radius; a line "
+    "that runs through a ring less than a quarter of its radius off the centre, and is therefore not pinned there.",
+    matters="The link as drawn and the pin it turns on disagree: its true length is not the one that is drawn.",
+    remedy="Draw the line on the pin's centre, or move the ring onto the line.",
+)
+def off_centre_end(subject: RuleSubject) -> Iterator[Finding]:
+    """Ends and lines that pass the centre of the pin they are on."""
+    for seen in _observed(subject, "off-centre-end"):
+        amount = length(seen.amount or 0.0, subject.sketch.unit)
+        subject_text = _of_link(seen) if "points" in seen.detail else f"link {seen.subject}"
+        message = f"{subject_text} {seen.detail.format(amount=amount)}"
+        yield _finding(seen, "warning", message, "draw the line on the pin's centre, or move the ring onto the line")
+
+
+@rule(
+    "loose-end",
+    "warning",
+    "An end on nothing",
+    family="linework",
+    also=("note",),
+    looks_for="An end of a link that lands on no pin and meets no other line: a warning where the link has fewer than "
+    "two joints, a note where it may be the free end of a lever.",
+    matters="A joint or a weld may have been forgotten; the link then swings free in the count.",
+    remedy="Put a ring on the end, join it to its neighbour, or leave it if the lever really ends there.",
+)
+def loose_end(subject: RuleSubject) -> Iterator[Finding]:
+    """Free ends of links."""
+    for seen in _observed(subject, "loose-end"):
+        if seen.severity == "note":
+            message = f"{_of_link(seen)} is free: read as the free end of a lever"
+            remedy = "nothing, if the lever ends there; else put a pin or its neighbour there"
+        else:
+            message = f"{_of_link(seen)} ends on nothing, and the link has fewer than two joints"
+            remedy = "put a ring on it if it is pinned there, or join it to the line it belongs to"
+        yield _finding(seen, "warning", message, remedy)
+
+
+@rule(
+    "double-line",
+    "warning",
+    "A line drawn twice",
+    family="linework",
+    looks_for="Lines that lie on one another between the same two pins, or with the same two ends in one link.",
+    matters="Read as two links, they would make the count one less than it is; they are read as one, but the next "
+    "program may not do so.",
+    remedy="Delete one of the two.",
+)
+def double_line(subject: RuleSubject) -> Iterator[Finding]:
+    """Repeated lines of links."""
+    for seen in _observed(subject, "double-line"):
+        message = f"a line of link {seen.subject} is drawn twice; it is read once"
+        yield _finding(seen, "warning", message, f"delete one of the two ({', '.join(seen.handles)})")
+
+
+@rule(
+    "short-line",
+    "note",
+    "A speck of a line",
+    family="linework",
+    looks_for="A line on the linkage that is shorter than ten coincidence tolerances.",
+    matters="It is left over from trimming; it is no link, but it can keep two lines from meeting.",
+    remedy="Delete it.",
+)
+def short_line(subject: RuleSubject) -> Iterator[Finding]:
+    """Lines too short to be links."""
+    for seen in _observed(subject, "short-line"):
+        amount = length(seen.amount or 0.0, subject.sketch.unit)
+        yield _finding(
+            seen, "note", f"a line only {amount} long lies on the linkage; it is not read as a link", "delete it"
+        )
+
+
+@rule(
+    "stacked-pins",
+    "warning",
+    "Two pins on one another",
+    family="linework",
+    looks_for="Two rings whose centres lie nearer than the radius of the greater, but further than the coincidence "
+    "tolerance.",
+    matters="Two rings meant as one pin split the joint: links that should turn on one another do not.",
+    remedy="Move the two rings onto one centre, or apart.",
+)
+def stacked_pins(subject: RuleSubject) -> Iterator[Finding]:
+    """Pins that stand on one another."""
+    for seen in _observed(subject, "stacked-pins"):
+        amount = length(seen.amount or 0.0, subject.sketch.unit)
+        message = f"pins {seen.subject} lie only {amount} apart; they are read as two pins"
+        yield _finding(seen, "warning", message, "move both rings onto one centre if they are one pin, else apart")
+
+
+@rule(
+    "empty-pin",
+    "warning",
+    "A ring with no link on it",
+    family="linework",
+    looks_for="A ring among the pins of a linkage, of about their size, on which no link ends.",
+    matters="A pin that carries nothing is a link forgotten, or a link that misses its pin.",
+    remedy="Draw the link to it, or delete the ring.",
+)
+def empty_pin(subject: RuleSubject) -> Iterator[Finding]:
+    """Rings without links."""
+    for seen in _observed(subject, "empty-pin"):
+        message = "this ring looks like a pin of the linkage, but no link ends on it"
+        yield _finding(seen, "warning", message, "draw the link to it, or delete the ring")
+
+
+@rule(
+    "duplicate-label",
+    "warning",
+    "One label on several pins",
+    family="linework",
+    looks_for="Pins of one mechanism that carry the same label.",
+    matters="Drives and results that name the pin can mean either.",
+    remedy="Give each pin a label of its own.",
+)
+def duplicate_label(subject: RuleSubject) -> Iterator[Finding]:
+    """Labels that stand at several pins of one mechanism."""
+    for seen in _observed(subject, "duplicate-label"):
+        message = f"the label {seen.subject} stands at {int(seen.amount or 0)} pins, also at {seen.detail}"
+        yield _finding(seen, "warning", message, "give each pin a label of its own")
+
+
+@rule(
+    "unlabelled-pins",
+    "note",
+    "Pins without a label",
+    family="linework",
+    looks_for="Pins of a mechanism with no text of one to four characters near them.",
+    matters="They get names by place (P1, P2 ...), which change when the drawing changes.",
+    remedy="Write a label within two ring diameters of the pin.",
+)
+def unlabelled_pins(subject: RuleSubject) -> Iterator[Finding]:
+    """Pins named by place in a mechanism that has labels."""
+    for linkage, _ in subject.mechanisms:
+        unnamed = [pin for pin in linkage.pins if not pin.labelled]
+        if not unnamed:
+            continue
+        where = listed([f"{pin.name} at {place(pin.at)}" for pin in unnamed])
+        yield Finding(
+            rule="unlabelled-pins",
+            severity="note",
+            message=f"{len(unnamed)} of {len(linkage.pins)} pins have no label and are named by place: {where}",
+            remedy="write a label within two ring diameters of each",
+            at=unnamed[0].at,
+            handles=tuple(handle for pin in unnamed for handle in pin.handles),
+            layer=unnamed[0].layer,
+            mechanism=linkage.name,
+        )

@@ -1,0 +1,237 @@
+"""Rules on the mechanism as a structure: frame, count, freedom at the pose."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from dxfcheck.analysis.results import Analysis
+from dxfcheck.linkage import Linkage
+from dxfcheck.rules.finding import Finding, Severity
+from dxfcheck.rules.registry import rule
+from dxfcheck.rules.subject import RuleSubject
+from dxfcheck.rules.wording import listed, plural
+from dxfcheck.settings import RANK_DOUBTFUL
+
+__all__: list[str] = []
+
+
+def _doubt(analysis: Analysis) -> str:
+    """What to add where lengths that are nearly special make the freedom at the pose doubtful."""
+    if analysis.rank_gap is None or analysis.rank_gap[0] >= RANK_DOUBTFUL:
+        return ""
+    return f"; barely so: its lengths are within about {100 * analysis.rank_gap[0]:.1g} % of ones that move"
+
+
+def _about(linkage: Linkage, name: str, severity: Severity, message: str, remedy: str) -> Finding:
+    """A finding about a whole mechanism, placed at its leftmost pin."""
+    at = min((pin.at for pin in linkage.pins), key=lambda place: (place.real, place.imag), default=None)
+    return Finding(rule=name, severity=severity, message=message, remedy=remedy, at=at, mechanism=linkage.name)
+
+
+@rule(
+    "no-linkage",
+    "note",
+    "No linkage on the sheet",
+    family="structure",
+    looks_for="A drawing in which nothing joins a link to a frame and no link has two pins shared with others.",
+    matters="There is nothing to count; drawings of other trades look alike, so this is no error.",
+    remedy="Nothing, if none was meant; else draw pins as rings, links to the rings, and a frame.",
+)
+def no_linkage(subject: RuleSubject) -> Iterator[Finding]:
+    """Drawings without a linkage."""
+    if any(seen.kind == "no-linkage" for seen in subject.reading.observations):
+        yield Finding(
+            rule="no-linkage",
+            severity="note",
+            message="the drawing holds no linkage: nothing joins a link to a frame, and no link has two shared pins",
+            remedy="if one was meant: draw pins as rings, lines ending on them, a frame (layer FRAME or hatching)",
+        )
+
+
+@rule(
+    "no-frame",
+    "error",
+    "A mechanism without a frame",
+    family="structure",
+    looks_for="Links that hang together by pins, none of which is on a frame.",
+    matters="Nothing is fixed, so no speed can be told; the count holds the longest link fixed.",
+    remedy="Draw the frame on a layer FRAME, put frame symbols under the fixed pins, or name them with --frame.",
+)
+def no_frame(subject: RuleSubject) -> Iterator[Finding]:
+    """Mechanisms that hang on nothing."""
+    for seen in subject.reading.observations:
+        if seen.kind == "no-frame":
+            yield Finding(
+                rule="no-frame",
+                severity="error",
+                message=f"no pin of {seen.mechanism} is on a frame: {seen.subject} is held for the count, no speeds",
+                remedy="put the fixed pins on a layer FRAME or on hatched base lines, or name them: --frame A,D",
+                at=seen.at,
+                mechanism=seen.mechanism,
+            )
+
+
+@rule(
+    "unknown-frame-pin",
+    "error",
+    "A stated frame pin that is not there",
+    family="structure",
+    looks_for="A pin named by --frame that no pin of the drawing bears.",
+    matters="The pin meant is not fixed, and the mechanism is another one.",
+    remedy="Name the pins as the report does; `dxfcheck read` lists them.",
+)
+def unknown_frame_pin(subject: RuleSubject) -> Iterator[Finding]:
+    """Names in --frame that fit no pin."""
+    for seen in subject.reading.observations:
+        if seen.kind == "unknown-frame-pin":
+            known = f"; {seen.detail}" if seen.detail else ""
+            yield Finding(
+                rule="unknown-frame-pin",
+                severity="error",
+                message=f"no pin is called {seen.subject}{known}",
+                remedy="name a pin of the drawing with --frame",
+            )
+
+
+@rule(
+    "floating-group",
+    "warning",
+    "Linework that hangs on nothing",
+    family="structure",
+    looks_for="Lines with no pin on them on a layer that carries links, and links that hang on no linkage; one finding "
+    "a drawing, with the first ten places.",
+    matters="A link whose ends both miss their pins looks like this.",
+    remedy="Join them to the linkage, or move them to a layer of their own.",
+)
+def floating_group(subject: RuleSubject) -> Iterator[Finding]:
+    """Linework on link layers that is part of no linkage."""
+    for seen in subject.reading.observations:
+        if seen.kind == "floating-group":
+            count = int(seen.amount or 0)
+            yield Finding(
+                rule="floating-group",
+                severity="warning",
+                message=f"{plural(count, 'piece')} of linework on link layers hang on no linkage: {seen.detail}",
+                remedy="join them to their pins, or move them to a layer of their own",
+                at=seen.at,
+                handles=seen.handles,
+                layer=seen.layer,
+            )
+
+
+@rule(
+    "no-motion",
+    "error",
+    "A structure that cannot move",
+    family="structure",
+    looks_for="A mechanism on a frame with a count of 0 and no freedom at the drawn pose.",
+    matters="It is a structure: the crank will not turn.",
+    remedy="Take out a link or add a joint, unless a structure was meant.",
+)
+def no_motion(subject: RuleSubject) -> Iterator[Finding]:
+    """Mechanisms with count 0 and no freedom."""
+    for linkage, analysis in subject.mechanisms:
+        mobility = analysis.mobility
+        if linkage.grounded and mobility.at_pose == 0 and mobility.count == 0:
+            message = f"{linkage.name} cannot move: the count is 0, with no freedom at the drawn pose{_doubt(analysis)}"
+            yield _about(
+                linkage, "no-motion", "error", message, "take out a link or free a joint, unless it is meant so"
+            )
+
+
+@rule(
+    "over-constrained",
+    "error",
+    "More joints than the links can bear",
+    family="structure",
+    looks_for="A mechanism with a count below 0 and no freedom at the drawn pose.",
+    matters="It is stiff several times over: it fits together only while lengths are exact, and cannot move.",
+    remedy="Take out links or joints until the count is the number of drives.",
+)
+def over_constrained(subject: RuleSubject) -> Iterator[Finding]:
+    """Mechanisms with a negative count and no freedom."""
+    for linkage, analysis in subject.mechanisms:
+        mobility = analysis.mobility
+        if mobility.at_pose == 0 and mobility.count < 0:
+            message = (
+                f"{linkage.name} is over-constrained: the count is {mobility.count}, "
+                f"{plural(-mobility.count, 'constraint')} more than hold it still"
+            )
+            yield _about(
+                linkage, "over-constrained", "error", message, "take out links or joints that repeat a constraint"
+            )
+
+
+@rule(
+    "special-geometry",
+    "warning",
+    "It moves only because of its lengths",
+    family="structure",
+    looks_for="More freedom at the drawn pose than the count gives: parallel cranks, coincident joints, a stretched "
+    "chain.",
+    matters="The extra freedom holds while lengths are exact, or only for an instant: wear or a tolerance locks it.",
+    remedy="Check that the equal lengths are meant; else take out the link that repeats a constraint.",
+)
+def special_geometry(subject: RuleSubject) -> Iterator[Finding]:
+    """Freedom at the pose beyond the count."""
+    for linkage, analysis in subject.mechanisms:
+        mobility = analysis.mobility
+        if mobility.at_pose > max(mobility.count, 0):
+            message = (
+                f"{linkage.name} has {plural(mobility.at_pose, 'freedom')} at the drawn pose where the count gives "
+                f"{mobility.count}: it moves by its special lengths, or only for an instant"
+            )
+            yield _about(
+                linkage,
+                "special-geometry",
+                "warning",
+                message,
+                "check that these lengths are meant and held to tolerance",
+            )
+
+
+@rule(
+    "undriven-freedom",
+    "warning",
+    "Links that no drive settles",
+    family="structure",
+    looks_for="A mechanism with more freedoms at the pose than drives that count.",
+    matters="The speeds of those links are not known; they are shown as '?'.",
+    remedy="State another drive with a note on the sheet or with --drive.",
+)
+def undriven_freedom(subject: RuleSubject) -> Iterator[Finding]:
+    """Freedoms left by the drives."""
+    for linkage, analysis in subject.mechanisms:
+        left = _undriven(linkage, analysis)
+        if left > 0:
+            free = [
+                link.name for link, motion in zip(linkage.links, analysis.links, strict=True) if not motion.determined
+            ]
+            message = f"{plural(left, 'freedom')} of {linkage.name} not driven: {listed(free)} may move in any way"
+            remedy = f"state {plural(left, 'further drive')}, by a note or with --drive"
+            yield _about(linkage, "undriven-freedom", "warning", message, remedy)
+
+
+def _undriven(linkage: Linkage, analysis: Analysis) -> int:
+    taken = sum(drive.outcome == "taken" for drive in analysis.drives)
+    at_limit = any(drive.outcome == "at limit" for drive in analysis.drives)
+    return analysis.mobility.at_pose - taken if linkage.grounded and not at_limit else 0
+
+
+@rule(
+    "expected-mobility",
+    "error",
+    "Another mobility than stated",
+    family="structure",
+    looks_for="A mechanism whose count differs from the one stated with --expect-mobility.",
+    matters="What is drawn is not what was designed.",
+    remedy="Look for a link or joint too many or too few.",
+)
+def expected_mobility(subject: RuleSubject) -> Iterator[Finding]:
+    """Counts that differ from the stated one."""
+    expected = subject.settings.expected_mobility
+    for linkage, analysis in subject.mechanisms if expected is not None else ():
+        count = analysis.mobility.count
+        if count != expected:
+            message = f"the count of {linkage.name} is {count}, stated was {expected}"
+            yield _about(linkage, "expected-mobility", "error", message, "look for a link or joint too many or too few")
