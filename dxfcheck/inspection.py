@@ -50,9 +50,10 @@ class DrawingReport:
     findings: tuple[Finding, ...] = ()
 
 
-def inspect_drawing(path: str, settings: Settings) -> DrawingReport:
+def inspect_drawing(path: str, settings: Settings, *, with_evidence: bool = True) -> DrawingReport:
     """Read, analyse and check one drawing; one that cannot be read gives a report of status 'unreadable'.
 
+    ``with_evidence`` False leaves out how each thing was read, which only the reading's own report shows.
     OptionInvalid where an option or setting cannot be used. Cost near-linear in the entities of the drawing.
     """
     with collector_paused():
@@ -60,11 +61,11 @@ def inspect_drawing(path: str, settings: Settings) -> DrawingReport:
             sketch = load_sketch(path, settings)
         except DrawingUnreadable as fault:
             return DrawingReport(path=fault.path, status="unreadable", error=f"{fault.reason}; {fault.remedy}")
-        return _inspect(sketch, settings)
+        return _inspect(sketch, settings, with_evidence=with_evidence)
 
 
-def _inspect(sketch: Sketch, settings: Settings) -> DrawingReport:
-    reading = read_linkages(sketch, settings)
+def _inspect(sketch: Sketch, settings: Settings, *, with_evidence: bool) -> DrawingReport:
+    reading = read_linkages(sketch, settings, with_evidence=with_evidence)
     mechanisms = tuple((linkage, analyse(linkage)) for linkage in reading.linkages)
     subject = RuleSubject(sketch=sketch, reading=reading, mechanisms=mechanisms, settings=settings)
     return DrawingReport(

@@ -29,6 +29,9 @@ COINCIDENCE_OF_DIAGONAL = 3e-6
 SHAPE_OF_DIAGONAL = 5e-4
 """Rectangles, obrounds and frame symbols close within this part of the diagonal: drafters type them to two decimals."""
 
+SHAPE_OF_SIZE = 0.03
+"""... and within this part of their own size, whatever the sheet's diagonal."""
+
 RIM_OF_RADIUS = 0.02
 """An end meets a rim, and aims at its centre, within this part of the radius."""
 
@@ -81,6 +84,9 @@ SHORT_OF_COINCIDENCE = 10.0
 
 WELD_GAP_OF_DIAGONAL = 1e-3
 """An end between t and this part of the diagonal from other linework is a near miss of a weld."""
+
+GAP_OF_SIZE = 0.1
+"""... if that is no more than this part of its line's own length."""
 
 RIM_GAP_IN_DIAMETERS = 2.0
 """An end up to this many ring diameters short of a rim, or past a pin it runs through, is a near miss of that pin."""

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import partial
+
 from dxfcheck.analysis.constraints import bodies_of, constraint_matrix, freedom_of, rank_tolerance
 from dxfcheck.analysis.dead_centres import dead_centres
 from dxfcheck.analysis.loop_equations import LoopSolution, solve_loops
@@ -24,7 +26,7 @@ def analyse(linkage: Linkage) -> Analysis:
     """
     topology = topology_of(linkage)
     bodies = bodies_of(linkage)
-    freedom = freedom_of(constraint_matrix(linkage, topology, bodies), rank_tolerance(linkage))
+    freedom = freedom_of(constraint_matrix(linkage, topology, bodies), partial(rank_tolerance, linkage))
     at_pose = len(freedom.motions)
     mobility = count_mobility(linkage, at_pose)
     if not linkage.grounded:

@@ -119,14 +119,19 @@ def _on_grid(value: float, step: float) -> bool:
     return abs(value / step - round(value / step)) * step <= TYPED_NOISE * max(1.0, abs(value))
 
 
-def freedom_of(matrix: Matrix, tolerance: float) -> Freedom:
-    """Null space of the constraints by singular values; which of them count as zero, _rank_of says."""
+def freedom_of(matrix: Matrix, tolerance: Callable[[], float]) -> Freedom:
+    """Null space of the constraints by singular values; which of them count as zero, _rank_of says.
+
+    ``tolerance`` is called only where a small value makes the question arise.
+    """
     rows, columns = matrix.shape
     if rows == 0 or columns == 0:
         return Freedom(np.eye(columns), None)
     _, singular, right = np.linalg.svd(matrix, full_matrices=True)
     values = singular.tolist()
-    rank = _rank_of(values, tolerance)
+    rank = len(values)
+    if values[-1] <= RANK_GREATEST * values[0]:
+        rank = _rank_of(values, tolerance())
     zero = values[rank] if rank < len(values) else 0.0
     return Freedom(right[rank:], (values[rank - 1] / values[0], zero / values[0]) if rank else None)
 

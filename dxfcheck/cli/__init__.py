@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 import sys
 from collections.abc import Sequence
 from typing import TYPE_CHECKING
@@ -40,6 +41,9 @@ def main(arguments: Sequence[str] | None = None) -> int:
 
 
 def _run(request: Request) -> int:
+    # The matrices are small and the drawings many: threads inside numpy only get in one another's way. It must be said
+    # before numpy is loaded, and only here: a program that imports dxfcheck has its own mind on that.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     # Loaded once the arguments are known to be good: wrong usage and --help answer before rich is loaded, and
     # explain before ezdxf is.
     if request.command == "explain":

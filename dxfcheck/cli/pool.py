@@ -6,7 +6,7 @@ import multiprocessing
 import os
 import signal
 import threading
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from concurrent.futures import ProcessPoolExecutor
 from concurrent.futures.process import BrokenProcessPool
 from multiprocessing.connection import wait
@@ -14,39 +14,42 @@ from multiprocessing.context import BaseContext
 
 from dxfcheck.cli.outcome import Outcome
 from dxfcheck.cli.paths import Target
-from dxfcheck.cli.workers import faulty, inspect_one
-from dxfcheck.settings import Settings
+from dxfcheck.cli.workers import faulty
 
 __all__ = ["inspect_side_by_side"]
 
 
-def inspect_side_by_side(targets: Sequence[Target], settings: Settings, workers: int) -> Iterator[Outcome]:
+Inspect = Callable[[Target], Outcome]
+"""What a worker does with one drawing; sent to it, so no lambda."""
+
+
+def inspect_side_by_side(targets: Sequence[Target], inspect: Inspect, workers: int) -> Iterator[Outcome]:
     """One outcome for each target, in their order; a worker that dies takes only its own drawing with it."""
     done = 0
     try:
-        for outcome in _pooled(targets, settings, workers):
+        for outcome in _pooled(targets, inspect, workers):
             yield outcome
             done += 1
     except BrokenProcessPool:
         # A worker died (out of memory, or killed). Each drawing left gets a process of its own, so that only the one
         # that kills it is lost.
         for target in targets[done:]:
-            yield _alone(target, settings)
+            yield _alone(target, inspect)
 
 
-def _alone(target: Target, settings: Settings) -> Outcome:
+def _alone(target: Target, inspect: Inspect) -> Outcome:
     try:
-        return next(iter(_pooled([target], settings, 1)))
+        return next(iter(_pooled([target], inspect, 1)))
     except BrokenProcessPool as error:
         return faulty(target, error)
 
 
-def _pooled(targets: Sequence[Target], settings: Settings, workers: int) -> Iterator[Outcome]:
+def _pooled(targets: Sequence[Target], inspect: Inspect, workers: int) -> Iterator[Outcome]:
     pool = ProcessPoolExecutor(workers, mp_context=_context(), initializer=_start_worker)
     try:
         # Futures of our own, not pool.map: that one cancels what is left, and a pool whose workers are then ended
         # complains about cancelled futures on standard error.
-        futures = [pool.submit(inspect_one, settings, target) for target in targets]
+        futures = [pool.submit(inspect, target) for target in targets]
         for future in futures:
             yield future.result()
     except BaseException:

@@ -33,7 +33,8 @@ def run_drawings(request: Request) -> int:
     outcomes: list[Outcome] = []
     terminal = None if request.json == STANDARD_OUTPUT else TerminalReport(sys.stdout)
     try:
-        for outcome in _with_progress(inspect_all(targets, request.settings, request.jobs), len(targets), request):
+        work = inspect_all(targets, request.settings, request.jobs, with_evidence=request.command == "read")
+        for outcome in _with_progress(work, len(targets), request):
             outcomes.append(outcome)
             _tell_of_trouble(outcome)
             if terminal is not None:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import os
 from collections.abc import Iterator, Sequence
+from functools import partial
 from pathlib import Path
 
 from dxfcheck.cli.messages import fault_text
@@ -19,15 +20,20 @@ WORTH_A_POOL = 2_000_000
 """Bytes of drawing, about two seconds of work: from here on starting processes pays."""
 
 
-def inspect_all(targets: Sequence[Target], settings: Settings, jobs: int | None) -> Iterator[Outcome]:
-    """One outcome for each target, in order; OptionInvalid where a setting turns out unusable."""
+def inspect_all(
+    targets: Sequence[Target], settings: Settings, jobs: int | None, *, with_evidence: bool = False
+) -> Iterator[Outcome]:
+    """One outcome for each target, in order; OptionInvalid where a setting turns out unusable.
+
+    ``with_evidence`` keeps how each thing was read, which takes a little longer and only `read` shows.
+    """
     workers = min(jobs or _sensible_jobs(targets), len(targets))
     if workers <= 1:
-        return (inspect_one(settings, target) for target in targets)
+        return (inspect_one(settings, target, with_evidence=with_evidence) for target in targets)
     # Loaded on use: what starts processes takes longer to load than a small drawing to check.
     from dxfcheck.cli.pool import inspect_side_by_side  # noqa: PLC0415
 
-    return inspect_side_by_side(targets, settings, workers)
+    return inspect_side_by_side(targets, partial(inspect_one, settings, with_evidence=with_evidence), workers)
 
 
 def _unreadable(path: str, error: str) -> DrawingReport:
@@ -48,7 +54,7 @@ def _size(target: Target) -> int:
         return 0
 
 
-def inspect_one(settings: Settings, target: Target) -> Outcome:
+def inspect_one(settings: Settings, target: Target, *, with_evidence: bool) -> Outcome:
     """One drawing; whatever goes wrong with it is its own outcome, so that the others are still checked."""
     if target.problem is not None:
         return Outcome(_unreadable(target.path, target.problem))
@@ -56,7 +62,7 @@ def inspect_one(settings: Settings, target: Target) -> Outcome:
     from dxfcheck.inspection import inspect_drawing  # noqa: PLC0415
 
     try:
-        return Outcome(inspect_drawing(target.path, settings))
+        return Outcome(inspect_drawing(target.path, settings, with_evidence=with_evidence))
     except DrawingUnreadable as error:
         return Outcome(_unreadable(target.path, f"{error.reason}; {error.remedy}"))
     except OptionInvalid:

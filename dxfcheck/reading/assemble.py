@@ -9,7 +9,6 @@ from typing import NamedTuple
 
 from dxfcheck.linkage import Joint, Link, Linkage, Pin
 from dxfcheck.reading.bodies import Body
-from dxfcheck.reading.labels import natural_key
 from dxfcheck.reading.linework import Strand
 from dxfcheck.reading.pins import PinSite
 from dxfcheck.reading.tolerance import Tolerance
@@ -43,12 +42,13 @@ class Assembly(NamedTuple):
 class Named:
     """What the names and handles of links and pins come from.
 
-    ``pin_names`` by site; ``labelled`` the sites with a label on the sheet; ``handles`` of each body and of each
-    site's rings; ``frame_handles`` those of the frame linework on each fixed site; ``body_layers`` and
-    ``site_layers`` the layer of each.
+    ``pin_names`` by site, ``pin_keys`` to sort them naturally; ``labelled`` the sites with a label on the sheet;
+    ``handles`` of each body and of each site's rings; ``frame_handles`` those of the frame linework on each fixed
+    site; ``body_layers`` and ``site_layers`` the layer of each.
     """
 
     pin_names: Mapping[int, str]
+    pin_keys: Mapping[int, tuple[tuple[int, int | str], ...]]
     labelled: frozenset[int]
     body_handles: Sequence[tuple[str, ...]]
     body_layers: Sequence[str | None]
@@ -112,10 +112,11 @@ def _linkage(
     fixed: frozenset[int],
     named: Named,
 ) -> Assembled:
-    ordered_sites = sorted(assembly.sites, key=lambda site: (natural_key(named.pin_names[site]), site))
+    ordered_sites = sorted(assembly.sites, key=lambda site: (named.pin_keys[site], site))
     pin_of = {site: number for number, site in enumerate(ordered_sites)}
+    pins_of = {body: sorted(bodies[body].pins, key=named.pin_keys.__getitem__) for body in assembly.bodies}
     names = _link_names(assembly, bodies, strands, sites, named)
-    ordered = sorted(assembly.bodies, key=lambda body: (natural_key(names[body]), body))
+    ordered = sorted(assembly.bodies, key=lambda body: ([named.pin_keys[site] for site in pins_of[body]], names[body]))
     shift = 1 if assembly.grounded else 0
     links = [
         Link(
@@ -193,8 +194,8 @@ def _link_names(
     """Names by pins in natural order; further links between the same pins are numbered, the shortest drawn first."""
     by_pins: defaultdict[str, list[int]] = defaultdict(list)
     for body in assembly.bodies:
-        pins = sorted((named.pin_names[site] for site in bodies[body].pins), key=natural_key)
-        by_pins["-".join(pins)].append(body)
+        pins = sorted(bodies[body].pins, key=named.pin_keys.__getitem__)
+        by_pins["-".join([named.pin_names[site] for site in pins])].append(body)
     names: dict[int, str] = {}
     for name, members in by_pins.items():
         if len(members) == 1:

@@ -214,7 +214,8 @@ def _drawn_along(sheet: Sheet, body: Body, corners: Collection[int], edges: Sequ
     """Whether all of a body's pins are corners of a fill and all its strands run along the fill's edges."""
     if not set(body.pins) <= set(corners):
         return False
-    within = max(sheet.tolerance.shape, *(sheet.tolerance.rim(sheet.pins[pin].radii[-1]) for pin in corners))
+    radius = max(sheet.pins[pin].radii[-1] for pin in corners)
+    within = max(sheet.tolerance.close(radius), sheet.tolerance.rim(radius))
     points = [point for index in body.strands for point in (*sheet.strands[index].ends, *sheet.strands[index].corners)]
     return all(min(distance_to_segment(point, *edge) for edge in edges) <= within for point in points)
 

@@ -11,12 +11,11 @@ from typing import NamedTuple
 import numpy as np
 
 from dxfcheck.drawing.primitives import Text
-from dxfcheck.geometry import Point, distance_to_segment
+from dxfcheck.geometry import Point
 from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.reading.drive_text import DriveStatement, find_statement, parse_drive
-from dxfcheck.reading.labels import distance_to_text
-from dxfcheck.reading.nearness import near_pairs
 from dxfcheck.reading.reading import Evidence, Observation
+from dxfcheck.reading.text_places import texts_near
 from dxfcheck.settings import (
     ASSUMED_TIE,
     NAMED_NOTE_REACH_IN_HEIGHTS,
@@ -61,17 +60,13 @@ def drive_linkages(
     """Give every grounded linkage its drives. ``handles`` are those of the texts, as a drafter would look for them."""
     observations: list[Observation] = []
     stated: list[_Stated] = []
-    names = _index_names(linkages)
+    statements = [(number, find_statement(text.content)) for number, text in enumerate(texts)]
+    notes = {number: statement for number, statement in statements if statement is not None}
+    names = _index_names(linkages if settings.drives or notes else ())
     for option in settings.drives:
         outcome = _from_option(option, names, linkages)
         (stated if isinstance(outcome, _Stated) else observations).append(outcome)  # type: ignore[arg-type]
     by_option = {each.place for each in stated}
-    notes: dict[int, DriveStatement] = {}
-    for number, text in enumerate(texts):
-        statement = find_statement(text.content)
-        if statement is None:
-            continue
-        notes[number] = statement
     near = _near_links([texts[number] for number in notes], shapes)
     for (number, statement), links in zip(notes.items(), near, strict=True):
         noted = _from_note(statement, texts[number], handles[number], links, names, linkages)
@@ -79,18 +74,21 @@ def drive_linkages(
             observations.append(noted)
         elif noted.place not in by_option:
             stated.append(noted)
+    of_linkage: defaultdict[int, list[Drive]] = defaultdict(list)
+    for each in stated:
+        of_linkage[each.place.linkage].append(each.drive)
     driven = tuple(
-        replace(linkage, drives=_drives_of(number, linkage, stated)) for number, linkage in enumerate(linkages)
+        replace(linkage, drives=_drives_of(linkage, of_linkage[number])) for number, linkage in enumerate(linkages)
     )
     evidence = tuple(_evidence(driven))
     return Driven(linkages=driven, evidence=evidence, observations=tuple(observations), notes=frozenset(notes))
 
 
-def _drives_of(number: int, linkage: Linkage, stated: Sequence[_Stated]) -> tuple[Drive, ...]:
-    own = [each.drive for each in stated if each.place.linkage == number]
-    own.sort(key=lambda drive: (drive.source != "option", linkage.links[drive.link].name, drive.rate))
-    if own or not linkage.grounded:
-        return tuple(own)
+def _drives_of(linkage: Linkage, stated: Sequence[Drive]) -> tuple[Drive, ...]:
+    """The stated drives, options first, or else an assumed one."""
+    if stated or not linkage.grounded:
+        links = linkage.links
+        return tuple(sorted(stated, key=lambda each: (each.source != "option", links[each.link].name, each.rate)))
     assumed = _assumed(linkage)
     return (assumed,) if assumed is not None else ()
 
@@ -117,7 +115,7 @@ def _assumed(linkage: Linkage) -> Drive | None:
 def _from_option(option: str, names: _Names, linkages: Sequence[Linkage]) -> _Stated | Observation:
     statement = parse_drive(option)
     assert statement.name is not None  # noqa: S101 (parse_drive refuses an option without a name)
-    places = names.places(statement.name)
+    places = list(names.places(statement.name))
     if len(places) == 1 and statement.kind == "turn":
         drive = Drive(link=places[0].link, against=_frame_of(places[0], linkages), rate=statement.rate, stated=option)
         return _Stated(places[0], drive)
@@ -139,9 +137,9 @@ def _from_note(
 ) -> _Stated | Observation:
     if statement.name is not None and not statement.name.isdecimal():
         # Labels repeat from mechanism to mechanism on a sheet of several: the note means the one it stands in.
-        places = names.places(statement.name)
-        if len(places) > 1:
-            places = _clearly_nearest([each for each in near if each[1] in places]) or places
+        named = names.places(statement.name)
+        nearest = _clearly_nearest([each for each in near if each[1] in named]) if len(named) > 1 else []
+        places = nearest or list(named)
     else:
         reach = NOTE_REACH_IN_HEIGHTS * text.height
         places = _clearly_nearest([each for each in near if each[0] <= reach])
@@ -186,47 +184,39 @@ def _near_links(texts: Sequence[Text], shapes: Shapes) -> list[list[tuple[float,
         for piece in drawn
     ]
     found: list[dict[_Place, float]] = [{} for _ in texts]
-    if pieces and texts:
-        centres = [sum(text.box) / len(text.box) if text.box else text.at for text in texts]
-        around = [max((abs(corner - text.at) for corner in text.box), default=0.0) for text in texts]
-        reach = [2 * each + NAMED_NOTE_REACH_IN_HEIGHTS * text.height for each, text in zip(around, texts, strict=True)]
-        starts = np.array([piece[0] for _, piece in pieces], dtype=np.complex128)
-        ends = np.array([piece[1] for _, piece in pieces], dtype=np.complex128)
-        pairs = near_pairs(np.array(centres, dtype=np.complex128), np.array(reach), starts, ends)
-        for number, index in zip(*(each.tolist() for each in pairs), strict=True):
-            place, piece = pieces[index]
-            distance = _text_to_piece(texts[number], piece)
-            found[number][place] = min(distance, found[number].get(place, math.inf))
+    reaches = np.array([NAMED_NOTE_REACH_IN_HEIGHTS * text.height for text in texts])
+    starts = np.array([piece[0] for _, piece in pieces], dtype=np.complex128)
+    ends = np.array([piece[1] for _, piece in pieces], dtype=np.complex128)
+    near = texts_near(texts, reaches, starts, ends)
+    for number, index, distance in zip(*(each.tolist() for each in near), strict=True):
+        place = pieces[index][0]
+        found[number][place] = min(distance, found[number].get(place, math.inf))
     return [sorted((distance, place) for place, distance in each.items()) for each in found]
-
-
-def _text_to_piece(text: Text, piece: tuple[Point, Point]) -> float:
-    to_piece = [distance_to_segment(point, *piece) for point in (text.at, *text.box)]
-    return min(*to_piece, *(distance_to_text(end, text) for end in piece))
 
 
 class _Names(NamedTuple):
     """Moving links by their names, and by two of their pins written 'AB' or 'A-B' in either order."""
 
-    links: Mapping[str, list[_Place]]
-    pairs: Mapping[str, list[_Place]]
+    links: Mapping[str, dict[_Place, None]]
+    pairs: Mapping[str, dict[_Place, None]]
 
-    def places(self, name: str) -> list[_Place]:
-        return list(self.links.get(name, self.pairs.get(name, ())))
+    def places(self, name: str) -> Mapping[_Place, None]:
+        """The links that a name fits, in order."""
+        return self.links.get(name, self.pairs.get(name, {}))
 
 
 def _index_names(linkages: Sequence[Linkage]) -> _Names:
-    links: defaultdict[str, list[_Place]] = defaultdict(list)
-    pairs: defaultdict[str, list[_Place]] = defaultdict(list)
+    links: defaultdict[str, dict[_Place, None]] = defaultdict(dict)
+    pairs: defaultdict[str, dict[_Place, None]] = defaultdict(dict)
     for number, linkage in enumerate(linkages):
         for index, link in enumerate(linkage.links if linkage.grounded else ()):
             if index == linkage.frame:
                 continue
             place = _Place(number, index)
-            links[link.name].append(place)
+            links[link.name][place] = None
             own = [linkage.pins[pin].name for pin in link.pins]
             for name in {f"{one}{joint}{other}" for one in own for other in own if one != other for joint in ("", "-")}:
-                pairs[name].append(place)
+                pairs[name][place] = None
     return _Names(links, pairs)
 
 

@@ -66,7 +66,7 @@ def find_frame_symbols(sheet: Sheet, relevant: Collection[int], landings: Sequen
     reasons = {base.strand: "base line of a frame symbol with hatch strokes" for base in bases}
     hatched = _bases_along_hatches(strands, relevant, sheet.fills, sheet.pins, tolerance)
     reasons.update({base.strand: "base line with a hatch along it" for base in hatched if base.strand not in reasons})
-    for leg in _legs(strands, [*bases, *hatched], touching, landings, tolerance):
+    for leg in _legs(strands, [*bases, *hatched], touching, landings):
         reasons.setdefault(leg, "leg of a frame symbol")
     return FrameSymbols(frame=reasons, strokes=dict.fromkeys(strokes, "hatch stroke of a frame symbol"))
 
@@ -104,9 +104,10 @@ def _strokes_on_bases(
         strand = strands[index]
         if not isinstance(strand.primitive, Segment):
             continue
-        closing = [_closest(touching.at(index, end), tolerance) for end in (0, 1)]
-        for end in (0, 1):
-            if closing[1 - end] or (index, 1 - end) in landed:
+        ends = [end for end in (0, 1) if (index, 1 - end) not in landed]
+        closing = [_closest(touching.at(index, end), tolerance) for end in (0, 1)] if ends else []
+        for end in ends:
+            if closing[1 - end]:
                 continue
             for target in closing[end]:
                 base = _base_at(strands[target], strand.ends[end])
@@ -118,7 +119,7 @@ def _strokes_on_bases(
 def _closest(near: Sequence[Touch], tolerance: Tolerance) -> list[int]:
     """The strands that an end closes on: of several within the shape tolerance, those it is nearest to."""
     nearest = min((touch.gap for touch in near), default=0.0) + tolerance.t
-    return [touch.strand for touch in near if touch.gap <= min(tolerance.shape, nearest)]
+    return [touch.strand for touch in near if touch.gap <= nearest]
 
 
 def _base_at(strand: Strand, point: Point) -> _Base | None:
@@ -141,15 +142,17 @@ def _accept(
         by_base[stroke.base].append(stroke)
     accepted, taken = list(bases), dict(known)
     longest_first = sorted(by_base, key=lambda base: (-_length(_piece(strands, base)), base))
+    own: defaultdict[_Base, list[_Stroke]] = defaultdict(list)
+    for stroke in known.values():
+        own[stroke.base].append(stroke)
     for base in longest_first:
-        if any(base.strand == index for index in taken):
+        if base.strand in taken:
             continue
-        free = [stroke for stroke in by_base[base] if stroke.strand not in taken]
-        own = [stroke for stroke in taken.values() if stroke.base == base]
-        group = max((_parallel_to(stroke, [*own, *free]) for stroke in [*own, *free]), key=len, default=[])
+        together = own[base] + [stroke for stroke in by_base[base] if stroke.strand not in taken]
+        group = max((_parallel_to(stroke, together) for stroke in together), key=len, default=[])
         if len(group) >= STROKES_OF_A_SYMBOL:
             taken.update({stroke.strand: stroke for stroke in group})
-            if base not in accepted:
+            if not own[base]:
                 accepted.append(base)
     return accepted, taken
 
@@ -233,7 +236,7 @@ def _bases_along_hatches(
         for outline in fill.outlines
         if len(pins_at_corners(outline, pins, tolerance)) < 2
         for start, end in zip(outline, [*outline[1:], *outline[:1]], strict=True)
-        if abs(end - start) > tolerance.shape
+        if abs(end - start) > tolerance.close(abs(end - start))
     ]
     bases = [
         _Base(index, number)
@@ -257,7 +260,8 @@ def _bases_along_hatches(
 def _lies_along(edge: tuple[Point, Point], base: Segment, tolerance: Tolerance) -> bool:
     """Whether an edge lies on a base line, over at least half of the shorter of the two."""
     along = base.end - base.start
-    if along == 0 or any(abs(cross(along, point - base.start)) / abs(along) > tolerance.shape for point in edge):
+    within = tolerance.close(abs(edge[1] - edge[0]))
+    if along == 0 or any(abs(cross(along, point - base.start)) / abs(along) > within for point in edge):
         return False
     low, high = sorted(parameter_on_line(point, base.start, base.end) for point in edge)
     shared = min(high, 1.0) - max(low, 0.0)
@@ -278,7 +282,6 @@ def _legs(
     bases: Collection[_Base],
     touching: Touches,
     landings: Sequence[Landing],
-    tolerance: Tolerance,
 ) -> Iterator[int]:
     """Lines from a base to a pin: sides of the triangle between them, whatever angle they meet the ring at."""
     base_strands = {base.strand for base in bases}
@@ -290,5 +293,5 @@ def _legs(
         if (strand.number, 1 - landing.end) in landed:
             continue  # a link between two pins, one of which sits on the base line itself
         foot = touching.at(strand.number, 1 - landing.end)
-        if any(touch.strand in base_strands and touch.gap <= tolerance.shape for touch in foot):
+        if any(touch.strand in base_strands for touch in foot):
             yield strand.number

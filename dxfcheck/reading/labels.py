@@ -10,15 +10,13 @@ from typing import NamedTuple
 import numpy as np
 
 from dxfcheck.drawing.primitives import Text
-from dxfcheck.geometry import Point, distance_to_segment
-from dxfcheck.reading.nearness import near_pairs
-from dxfcheck.reading.outlines import inside_outline
 from dxfcheck.reading.pins import PinSite
 from dxfcheck.reading.roles import is_label_layer
+from dxfcheck.reading.text_places import texts_near
 from dxfcheck.reading.tolerance import Tolerance
 from dxfcheck.settings import LABEL_LENGTH, LABEL_REACH_IN_DIAMETERS, LABEL_REACH_IN_HEIGHTS
 
-__all__ = ["PinNames", "distance_to_text", "name_pins", "natural_key"]
+__all__ = ["PinNames", "name_pins", "natural_key"]
 
 _LABEL = re.compile(r"[^\W_][\w'\u2032\u2033*]*")  # a letter or digit, then also primes (B', B\u2032) and stars
 
@@ -73,33 +71,17 @@ def _near(
     """Pairs of a pin and a label within reach of it: (is a mere number, distance, pin, text)."""
     if not used or not candidates:
         return
-    edges = [(text, start, end) for text in candidates for start, end in _edges(texts[text])]
-    height = max(texts[text].height for text in candidates)
+    written = [texts[number] for number in candidates]
     centres = np.array([pins[pin].at for pin in used], dtype=np.complex128)
-    reach = np.array([_reach(pins[pin], height) for pin in used])
-    starts = np.array([start for _, start, _ in edges], dtype=np.complex128)
-    ends = np.array([end for _, _, end in edges], dtype=np.complex128)
-    which, edge = near_pairs(centres, reach, starts, ends)
-    for place, text in sorted(
-        {(place, edges[each][0]) for place, each in zip(which.tolist(), edge.tolist(), strict=True)}
+    largest = max(_reach(pins[pin], 0.0) for pin in used)
+    reaches = np.array([max(largest, LABEL_REACH_IN_HEIGHTS * text.height) for text in written])
+    for number, place, distance in zip(
+        *(each.tolist() for each in texts_near(written, reaches, centres, centres)), strict=True
     ):
         pin = pins[used[place]]
-        distance = distance_to_text(pin.at, texts[text])
-        if distance <= _reach(pin, texts[text].height):
-            yield texts[text].content.strip().isdecimal(), distance, pin.number, text
+        if distance <= _reach(pin, written[number].height):
+            yield written[number].content.strip().isdecimal(), distance, pin.number, candidates[number]
 
 
 def _reach(pin: PinSite, height: float) -> float:
     return max(LABEL_REACH_IN_DIAMETERS * 2.0 * pin.radius, LABEL_REACH_IN_HEIGHTS * height)
-
-
-def _edges(text: Text) -> list[tuple[Point, Point]]:
-    around = list(zip(text.box, [*text.box[1:], *text.box[:1]], strict=True))
-    return [(text.at, text.at), *around]
-
-
-def distance_to_text(point: Point, text: Text) -> float:
-    """Distance from a point to a text's alignment point or its box, whichever is nearer; 0 inside the box."""
-    if text.box and inside_outline(point, text.box):
-        return 0.0
-    return min(distance_to_segment(point, start, end) for start, end in _edges(text))

@@ -59,14 +59,45 @@ def find_landings(pins: Sequence[PinSite], linework: Linework, tolerance: Tolera
     """Compare each pin with the linework in its neighbourhood. Cost near-linear in pins plus strands."""
     landings: list[Landing] = []
     misses: list[Miss] = []
+    rims = [_Rims.of(pin, tolerance) for pin in pins]
     for pin, strand in _neighbours(pins, linework, tolerance):
-        landed = list(_land(pin, strand, tolerance))
-        landings.extend(landed)
-        missing = [
-            end for end in range(len(strand.ends)) if all(each.end != end or each.how == "loose" for each in landed)
-        ]
-        misses.extend(filter(None, (_miss(pin, strand, end) for end in missing)))
+        ended = False
+        for end, point in enumerate(strand.ends):
+            away = abs(point - pin.at)
+            landing = _land_end(pin, strand, end, away, rims[pin.number]) if away <= rims[pin.number].furthest else None
+            if landing is not None:
+                ended = True
+                landings.append(landing)
+            if landing is None or landing.how == "loose":
+                miss = _miss(pin, strand, end, away)
+                if miss is not None:
+                    misses.append(miss)
+        landing = None if ended else _land_inside(pin, strand, rims[pin.number])
+        if landing is not None:
+            landings.append(landing)
     return Landings(landings=tuple(landings), misses=tuple(misses))
+
+
+class _Rims(NamedTuple):
+    """How far from a pin's centre what meets its rings may lie: within ``rim`` of each radius, loosely ``close``."""
+
+    t: float
+    furthest: float
+    bands: tuple[tuple[float, float, float], ...]
+
+    @classmethod
+    def of(cls, pin: PinSite, tolerance: Tolerance) -> _Rims:
+        """The radii of a pin, each with its two tolerances."""
+        bands = tuple((radius, tolerance.rim(radius), tolerance.close(radius)) for radius in pin.radii)
+        return cls(tolerance.t, max(radius + max(rim, close) for radius, rim, close in bands), bands)
+
+    def met(self, away: float) -> bool:
+        """Whether what lies so far from the centre is on a rim."""
+        return any(abs(away - radius) <= rim for radius, rim, _ in self.bands)
+
+    def loose(self, away: float) -> bool:
+        """Whether it is on a rim as frame symbols are."""
+        return any(abs(away - radius) <= max(rim, close) for radius, rim, close in self.bands)
 
 
 def _neighbours(pins: Sequence[PinSite], linework: Linework, tolerance: Tolerance) -> Iterator[tuple[PinSite, Strand]]:
@@ -88,43 +119,44 @@ def _reach(pin: PinSite, tolerance: Tolerance) -> float:
     return max(largest + tolerance.rim(largest), largest + RIM_GAP_IN_DIAMETERS * 2.0 * pin.radius)
 
 
-def _land(pin: PinSite, strand: Strand, tolerance: Tolerance) -> Iterator[Landing]:
-    ended = False
-    for end, point in enumerate(strand.ends):
-        landing = _land_end(pin, strand, end, point, tolerance)
-        if landing is not None:
-            ended = True
-            yield landing
-    for corner in () if ended else strand.corners:
+def _land_inside(pin: PinSite, strand: Strand, rims: _Rims) -> Landing | None:
+    """A strand that bends at a pin, or runs on through its centre or past its ring: one landing at most."""
+    for corner in strand.corners:
         away = abs(corner - pin.at)
-        if away <= tolerance.t or away < pin.radius:
-            yield Landing(strand.number, pin.number, "corner", None, away)
-            return
-        if any(abs(away - radius) <= max(tolerance.rim(radius), tolerance.shape) for radius in pin.radii):
-            yield Landing(strand.number, pin.number, "loose", None, away)
-            return
-    if not ended:
-        yield from _land_partway(pin, strand, tolerance)
+        if away <= rims.t or away < pin.radius:
+            return Landing(strand.number, pin.number, "corner", None, away)
+        if rims.loose(away):
+            return Landing(strand.number, pin.number, "loose", None, away)
+    for piece in strand.pieces:
+        landing = _land_on(pin, strand, piece, rims)
+        if landing is not None:
+            return landing
+    return None
 
 
-def _land_end(pin: PinSite, strand: Strand, end: int, point: Point, tolerance: Tolerance) -> Landing | None:
-    away = abs(point - pin.at)
-    if away <= tolerance.t:
+def _land_end(pin: PinSite, strand: Strand, end: int, away: float, rims: _Rims) -> Landing | None:
+    """The landing of an end that lies ``away`` from a pin's centre."""
+    if away <= rims.t:
         return Landing(strand.number, pin.number, "end", end, away)
-    inside = away < pin.radius
-    on_rim = any(abs(away - radius) <= tolerance.rim(radius) for radius in pin.radii)
-    if not inside and not on_rim:
-        if any(abs(away - radius) <= tolerance.shape for radius in pin.radii):
-            return Landing(strand.number, pin.number, "loose", end, away)
-        return None
+    on_rim = rims.met(away)
+    if away >= pin.radius and not on_rim:
+        return Landing(strand.number, pin.number, "loose", end, away) if rims.loose(away) else None
+    point = strand.ends[end]
     piece = strand.pieces[0] if end == 0 else strand.pieces[-1]
     offset = _aim_offset(piece, point, pin.at)
-    how: How = "end"
-    if on_rim and angle_between_lines(_direction_at(piece, point), pin.at - point) > math.radians(
-        TANGENT_ANGLE_DEGREES
-    ):
-        how = "loose"
+    how: How = "loose" if on_rim and _is_tangent(piece, point, pin.at, offset / away) else "end"
     return Landing(strand.number, pin.number, how, end, offset)
+
+
+TANGENT_SINE = math.sin(math.radians(TANGENT_ANGLE_DEGREES))
+
+
+def _is_tangent(piece: Segment | Arc, point: Point, centre: Point, sine: float) -> bool:
+    """Whether an end at a rim passes the centre by; ``sine`` is that of a line's angle to the radius."""
+    if isinstance(piece, Segment):
+        return sine > TANGENT_SINE
+    along = (point - piece.centre) * 1j
+    return angle_between_lines(along, centre - point) > math.radians(TANGENT_ANGLE_DEGREES)
 
 
 def _aim_offset(piece: Segment | Arc, point: Point, centre: Point) -> float:
@@ -136,48 +168,36 @@ def _aim_offset(piece: Segment | Arc, point: Point, centre: Point) -> float:
     return abs(cross(along, centre - point)) / length if length else abs(centre - point)
 
 
-def _direction_at(piece: Segment | Arc, point: Point) -> Point:
-    """Direction of a piece at one of its points, either way along it."""
+def _land_on(pin: PinSite, strand: Strand, piece: Segment | Arc, rims: _Rims) -> Landing | None:
+    """A piece that runs on through a pin's centre, or past its ring touching it from one side."""
     if isinstance(piece, Arc):
-        return (point - piece.centre) * 1j
-    return piece.end - piece.start
-
-
-def _land_partway(pin: PinSite, strand: Strand, tolerance: Tolerance) -> Iterator[Landing]:
-    """A strand that runs on through the centre, or past the ring touching it from one side: at most one landing."""
-    for piece in strand.pieces:
-        if isinstance(piece, Arc):
-            out = pin.at - piece.centre
-            turn = (cmath.phase(out) - piece.start_angle) % math.tau if out else 0.0
-            if turn < piece.sweep and abs(abs(out) - piece.radius) <= tolerance.t:
-                yield Landing(strand.number, pin.number, "through", None, 0.0)
-                return
-            continue
-        parameter = parameter_on_line(pin.at, piece.start, piece.end)
-        if not 0.0 < parameter < 1.0:
-            continue
-        foot = piece.start + parameter * (piece.end - piece.start)
-        away = abs(foot - pin.at)
-        if away <= tolerance.t:
-            yield Landing(strand.number, pin.number, "through", None, away)
-            return
-        if away <= pin.radius - tolerance.rim(pin.radius):
-            yield Landing(strand.number, pin.number, "across", None, away)
-            return
-        runs_on = min(abs(foot - piece.start), abs(foot - piece.end)) > pin.radius
-        gap = min(abs(away - radius) - tolerance.rim(radius) for radius in pin.radii)
-        if runs_on and gap <= tolerance.shape:
-            yield Landing(strand.number, pin.number, "beside" if gap <= 0.0 else "loose", None, away)
-            return
-
-
-def _miss(pin: PinSite, strand: Strand, end: int) -> Miss | None:
-    point = strand.ends[end]
-    outer = [radius for radius in pin.radii if radius < abs(point - pin.at)]
-    if not outer:
+        through = abs(abs(pin.at - piece.centre) - piece.radius) <= rims.t and _covers(piece, pin.at)
+        return Landing(strand.number, pin.number, "through", None, 0.0) if through else None
+    parameter = parameter_on_line(pin.at, piece.start, piece.end)
+    if not 0.0 < parameter < 1.0:
         return None
-    gap = abs(point - pin.at) - outer[-1]
-    if gap > RIM_GAP_IN_DIAMETERS * 2.0 * pin.radius:
+    foot = piece.start + parameter * (piece.end - piece.start)
+    away = abs(foot - pin.at)
+    if away <= rims.t:
+        return Landing(strand.number, pin.number, "through", None, away)
+    if away < pin.radius and not rims.met(away):
+        return Landing(strand.number, pin.number, "across", None, away)
+    runs_on = min(abs(foot - piece.start), abs(foot - piece.end)) > pin.radius
+    if not runs_on or not rims.loose(away):
+        return None
+    return Landing(strand.number, pin.number, "beside" if rims.met(away) else "loose", None, away)
+
+
+def _covers(arc: Arc, point: Point) -> bool:
+    """Whether an arc passes the direction in which a point lies from its centre."""
+    out = point - arc.centre
+    return out == 0 or (cmath.phase(out) - arc.start_angle) % math.tau < arc.sweep
+
+
+def _miss(pin: PinSite, strand: Strand, end: int, away: float) -> Miss | None:
+    """An end that stops short of a pin's nearest rim by no more than two of its diameters."""
+    outer = max([radius for radius in pin.radii if radius < away], default=None)
+    if outer is None or away - outer > RIM_GAP_IN_DIAMETERS * 2.0 * pin.radius:
         return None
     piece = strand.pieces[0] if end == 0 else strand.pieces[-1]
-    return Miss(strand.number, pin.number, end, gap, _aim_offset(piece, point, pin.at))
+    return Miss(strand.number, pin.number, end, away - outer, _aim_offset(piece, strand.ends[end], pin.at))

@@ -34,7 +34,7 @@ class Strand(NamedTuple):
 
     ``number`` is its place among the strands; ``ends`` are the two ends, empty for a closed strand; ``corners`` the
     drawn vertices between them (all of them, for a closed one; none for a smooth curve). ``frame`` is True where its
-    layer or block says that it is the frame.
+    layer or block says that it is the frame; ``length`` is measured along it.
     """
 
     number: int
@@ -43,16 +43,12 @@ class Strand(NamedTuple):
     ends: tuple[Point, ...]
     corners: tuple[Point, ...]
     frame: bool
+    length: float
 
     @property
     def closed(self) -> bool:
         """Whether it is an outline, without ends."""
         return not self.ends
-
-    @property
-    def length(self) -> float:
-        """Length along the strand."""
-        return sum(piece_length(piece) for piece in self.pieces)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -132,11 +128,12 @@ def _strand(index: int, primitive: Segment | Arc | Path, frames: Collection[int]
     frame = index in frames
     if isinstance(primitive, Path):
         corners = () if primitive.curved else primitive.vertices
+        length = sum(piece_length(piece) for piece in primitive.pieces)
         if primitive.closed:
-            return Strand(index, primitive, primitive.pieces, (), corners, frame)
+            return Strand(index, primitive, primitive.pieces, (), corners, frame, length)
         ends = (primitive.vertices[0], primitive.vertices[-1])
-        return Strand(index, primitive, primitive.pieces, ends, corners[1:-1], frame)
-    return Strand(index, primitive, (primitive,), (primitive.start, primitive.end), (), frame)
+        return Strand(index, primitive, primitive.pieces, ends, corners[1:-1], frame, length)
+    return Strand(index, primitive, (primitive,), (primitive.start, primitive.end), (), frame, piece_length(primitive))
 
 
 def _chord_points(arc: Arc) -> list[Point]:

@@ -124,7 +124,7 @@ def _arrows(
         if not isinstance(strand.primitive, Segment):
             continue
         for end in (0, 1):
-            if (strand.number, end) in landed:
+            if (strand.number, end) in landed or touching.count(strand.number, end) < 2:
                 continue
             barbs = list(_barbs(strand, end, strands, touching))
             sides = {cross(side, barb) > 0 for side, barb in _sides(strand, end, barbs, strands)}

@@ -13,7 +13,7 @@ from dxfcheck.linkage import Linkage
 from dxfcheck.reading.assemble import Assembled, Assembly, Named, assemble, find_assemblies
 from dxfcheck.reading.bodies import Body
 from dxfcheck.reading.drives import Driven, drive_linkages
-from dxfcheck.reading.labels import PinNames, name_pins
+from dxfcheck.reading.labels import PinNames, name_pins, natural_key
 from dxfcheck.reading.parts import Parts
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.sorting import Sorted
@@ -99,7 +99,7 @@ def _obstacle(assembly: Assembly, bodies: Sequence[Body], sheet: Sheet, parts: P
             for strand in sorted(strands)
             for end in range(len(sheet.strands[strand].ends))
             for touch in sheet.touching.at(strand, end)
-            if touch.strand in drawn and (touch.meets or touch.gap <= sheet.tolerance.shape)
+            if touch.strand in drawn
         ]
     return joints[0] if joints else None
 
@@ -125,6 +125,7 @@ def _named(
             frame_handles[site].update(dict.fromkeys(sketch.handles(ring) for ring in pin.rings))
     return Named(
         pin_names=names.names,
+        pin_keys={site: natural_key(name) for site, name in names.names.items()},
         labelled=frozenset(names.labels),
         body_handles=[
             tuple(dict.fromkeys(strand_handles[index] for index in body.strands)) if not body.frame else ()

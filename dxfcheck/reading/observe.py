@@ -247,6 +247,8 @@ def _doubles(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
 
 def _same_line_before(seen: Seen, index: int, body_of: dict[int, int]) -> int | None:
     """An earlier straight line of the same body with both ends where this one has its own."""
+    if seen.gaps.free(index, 0) or seen.gaps.free(index, 1):
+        return None
     strand = seen.strands[index]
     both = [{touch.strand for touch in seen.gaps.at(index, end) if touch.gap <= seen.tolerance.t} for end in (0, 1)]
     for other in sorted(both[0] & both[1]):

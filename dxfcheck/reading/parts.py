@@ -49,7 +49,7 @@ def find_parts(kinds: Sorted, sheet: Sheet) -> Parts:
     }
     free = [strand for strand in strands if strand.number not in sheet.ring_strands]
     outlines = find_outlines(free, sheet.landings.landings, pins, by_layer)
-    obrounds = find_obrounds(strands, sheet.touching, tolerance) if pins else []
+    obrounds = find_obrounds(strands, sheet.touching) if pins else []
     rectangles = find_rectangles(sheet.linework, sheet.touching, pins, tolerance) if pins else []
     bars = list(bars_of(obrounds, pins, tolerance))
     unread = (

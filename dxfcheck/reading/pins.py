@@ -63,7 +63,7 @@ def rings_of_arcs(arcs: Sequence[Strand], tolerance: Tolerance) -> list[tuple[Ri
         return []
     shapes = [strand.primitive for strand in curved if isinstance(strand.primitive, Arc)]
     centres = np.array([arc.centre for arc in shapes], dtype=np.complex128)
-    reach = np.array([max(tolerance.t, min(tolerance.rim(arc.radius), tolerance.shape)) for arc in shapes])
+    reach = np.array([min(tolerance.rim(arc.radius), tolerance.close(arc.radius)) for arc in shapes])
     groups = Unions(len(shapes))
     for one, other in zip(*(each.tolist() for each in near_pairs(centres, reach, centres, centres)), strict=True):
         if abs(shapes[one].radius - shapes[other].radius) <= min(reach[one], reach[other]):
@@ -142,7 +142,7 @@ def _circle_through(lines: Sequence[Strand], tolerance: Tolerance) -> Ring | Non
     corners = [point for line in lines for point in line.ends]
     centre = sum(corners) / len(corners)
     radius = sum(abs(corner - centre) for corner in corners) / len(corners)
-    within = min(tolerance.rim(radius), max(tolerance.shape, tolerance.t))
+    within = min(tolerance.rim(radius), tolerance.close(radius))
     if any(abs(abs(corner - centre) - radius) > within for corner in corners):
         return None
     return Ring(lines[0].primitive.source, centre, radius)
@@ -177,8 +177,9 @@ def _concentric(rings: Sequence[Ring], tolerance: Tolerance) -> Iterable[list[in
     centres = np.array([ring.centre for ring in rings], dtype=np.complex128)
     groups = Unions(len(rings))
     reach = np.full(centres.size, tolerance.t)
-    for one, other in zip(*(each.tolist() for each in near_pairs(centres, reach, centres, centres)), strict=True):
-        groups.join(one, other)
+    one, other = near_pairs(centres, reach, centres, centres)
+    for pair in zip(one[one < other].tolist(), other[one < other].tolist(), strict=True):
+        groups.join(*pair)
     return groups.groups()
 
 
@@ -192,10 +193,11 @@ def _rings_that_hold(groups: Sequence[Sequence[Ring]]) -> dict[int, list[int]]:
     radii = np.array([ring.radius for _, ring in owners])
     others = np.array([ring.centre for ring in smallest], dtype=np.complex128)
     holds: dict[int, list[int]] = {}
-    for place, held in zip(*(each.tolist() for each in near_pairs(centres, radii, others, others)), strict=True):
-        number, ring = owners[place]
-        if number == held:
-            continue
+    group_of = np.array([number for number, _ in owners])
+    place_of, held_by = near_pairs(centres, radii, others, others)
+    foreign = group_of[place_of] != held_by
+    for place, held in zip(place_of[foreign].tolist(), held_by[foreign].tolist(), strict=True):
+        ring = owners[place][1]
         inner = smallest[held]
         offset = abs(inner.centre - ring.centre)
         # Two rings nearly on one centre were meant to be on it: they are reported as stacked, not read as a disc.
@@ -210,7 +212,8 @@ def _stacked(pins: Sequence[PinSite]) -> Iterable[tuple[int, int, float]]:
         return
     centres = np.array([pin.at for pin in pins], dtype=np.complex128)
     reach = np.array([STACKED_OF_RADIUS * pin.radius for pin in pins])
-    for one, other in zip(*(each.tolist() for each in near_pairs(centres, reach, centres, centres)), strict=True):
-        greater = (pins[one].radius, -one) > (pins[other].radius, -other)
-        if one != other and greater:
+    which, beside = near_pairs(centres, reach, centres, centres)
+    apart = which != beside
+    for one, other in zip(which[apart].tolist(), beside[apart].tolist(), strict=True):
+        if (pins[one].radius, -one) > (pins[other].radius, -other):
             yield (min(one, other), max(one, other), abs(pins[one].at - pins[other].at))

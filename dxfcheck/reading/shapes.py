@@ -44,7 +44,7 @@ class Obround(NamedTuple):
     def ends_at(self, pin: PinSite, tolerance: Tolerance) -> bool:
         """Whether a pin sits at the centre of one of its half arcs."""
         return min(abs(pin.at - centre) for centre in self.centres) <= max(
-            tolerance.t, min(tolerance.shape, RIM_OF_RADIUS * self.radius)
+            tolerance.t, min(tolerance.close(self.radius), RIM_OF_RADIUS * self.radius)
         )
 
 
@@ -109,14 +109,15 @@ def _rectangle_from(
     first: Strand, strands: Sequence[Strand], touching: Touches, tolerance: Tolerance
 ) -> Iterator[Rectangle]:
     """The rectangles in which this line comes first: four sides, each square to the one before, back to the start."""
+    within = tolerance.close(first.length)
 
     def onward(side: _Side, end: int) -> Iterator[tuple[_Side, int]]:
         for touch in touching.at(side.strand, end):
             other = strands[touch.strand]
-            if touch.gap > tolerance.shape or touch.strand <= first.number or not _is_line(other):
+            if touch.strand <= first.number or not _is_line(other):
                 continue
             for near in (0, 1):
-                meets = abs(other.ends[near] - side.far) <= tolerance.shape
+                meets = abs(other.ends[near] - side.far) <= within
                 if meets and _square(side.far - side.near, other.ends[1] - other.ends[0]):
                     yield _Side(other.number, other.ends[near], other.ends[1 - near]), 1 - near
 
@@ -126,13 +127,13 @@ def _rectangle_from(
         for third, third_end in onward(second, second_end):
             for fourth, _ in onward(third, third_end):
                 members = (first.number, second.strand, third.strand, fourth.strand)
-                closes = abs(fourth.far - start.near) <= tolerance.shape
+                closes = abs(fourth.far - start.near) <= within
                 if closes and len(set(members)) == 4 and frozenset(members) not in seen:
                     seen.add(frozenset(members))
                     yield Rectangle(members, (start.near, second.near, third.near, fourth.near))
 
 
-def find_obrounds(strands: Sequence[Strand], touching: Touches, tolerance: Tolerance) -> list[Obround]:
+def find_obrounds(strands: Sequence[Strand], touching: Touches) -> list[Obround]:
     """All obrounds, of one closed polyline with bulges or of two lines and two half arcs."""
     found = []
     for strand in strands:
@@ -142,7 +143,7 @@ def find_obrounds(strands: Sequence[Strand], touching: Touches, tolerance: Toler
             if len(arcs) == 2 and len(lines) == 2 and _make_an_obround(arcs, lines):
                 found.append(Obround((strand.number,), (arcs[0].centre, arcs[1].centre), arcs[0].radius))
         elif isinstance(strand.primitive, Arc) and _is_half(strand.primitive):
-            found.extend(_obround_from(strand, strands, touching, tolerance))
+            found.extend(_obround_from(strand, strands, touching))
     return found
 
 
@@ -159,15 +160,12 @@ def _make_an_obround(arcs: Sequence[Arc], lines: Sequence[Segment]) -> bool:
     return alike and parallel and along != 0 and all(_is_half(arc) for arc in arcs)
 
 
-def _obround_from(
-    first: Strand, strands: Sequence[Strand], touching: Touches, tolerance: Tolerance
-) -> Iterator[Obround]:
+def _obround_from(first: Strand, strands: Sequence[Strand], touching: Touches) -> Iterator[Obround]:
     """The obround in which this half arc comes first, if there is one."""
-    within = max(tolerance.shape, tolerance.t)
 
     def lines_at(strand: Strand, end: int) -> list[int]:
         near = touching.at(strand.number, end)
-        return [touch.strand for touch in near if touch.gap <= within and _is_line(strands[touch.strand])]
+        return [touch.strand for touch in near if _is_line(strands[touch.strand])]
 
     assert isinstance(first.primitive, Arc)  # noqa: S101 (the caller's condition, for the type checker)
     for one in lines_at(first, 0):
@@ -177,7 +175,7 @@ def _obround_from(
                 for line in (one, other)
                 for end in (0, 1)
                 for touch in touching.at(line, end)
-                if touch.gap <= within and touch.strand > first.number
+                if touch.strand > first.number
             }
             for candidate in sorted(far):
                 arc = strands[candidate].primitive

@@ -48,7 +48,7 @@ def lay_out(kinds: Sorted, tolerance: Tolerance) -> Sheet:
     """Rings, strands and where they meet."""
     frame = {number for number, (index, _) in enumerate(kinds.lines) if index in kinds.frame_lines}
     linework = make_linework((primitive for _, primitive in kinds.lines), frame)
-    touching = find_touches(linework, tolerance, tolerance.shape)
+    touching = find_touches(linework, tolerance, tolerance.close)
     arcs = [strand for strand in linework.strands if len(strand.pieces) == 1]
     made = rings_of_arcs(arcs, tolerance)
     made.extend(rings_of_lines(linework, touching, tolerance))

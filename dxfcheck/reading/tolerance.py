@@ -7,8 +7,10 @@ from typing import NamedTuple
 from dxfcheck.settings import (
     ARC_REACH_IN_SHAPES,
     COINCIDENCE_OF_DIAGONAL,
+    GAP_OF_SIZE,
     RIM_OF_RADIUS,
     SHAPE_OF_DIAGONAL,
+    SHAPE_OF_SIZE,
     WELD_GAP_OF_DIAGONAL,
     Settings,
 )
@@ -26,6 +28,17 @@ class Tolerance(NamedTuple):
     t: float
     shape: float
     gap: float
+
+    def close(self, size: float) -> float:
+        """How far apart the parts of a symbol of this size may lie: the shape tolerance, but no more than 3 % of it.
+
+        On a sheet of hundreds of mechanisms the diagonal says little about any one of them.
+        """
+        return max(self.t, min(self.shape, SHAPE_OF_SIZE * size))
+
+    def missing(self, size: float) -> float:
+        """How far an end of a line of this length may stop short of what it was meant to meet."""
+        return max(self.t, min(self.gap, GAP_OF_SIZE * size))
 
     def rim(self, radius: float) -> float:
         """How far from a rim of this radius an end may lie and still be on it."""

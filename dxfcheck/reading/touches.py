@@ -10,7 +10,7 @@ Kept as parallel lists, since a busy sheet has tens of thousands of ends and onl
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
 from typing import NamedTuple
@@ -55,14 +55,18 @@ class Touches:
             return ()
         return [Touch(self.strands[each], self.gaps[each], self.meets[each]) for each in range(start, stop)]
 
+    def count(self, strand: int, end: int) -> int:
+        """How many strands lie near an end."""
+        number = 2 * strand + end
+        return self.first[number + 1] - self.first[number]
+
     def met(self, strand: int, end: int) -> list[int]:
         """The strands that an end meets."""
         return [touch.strand for touch in self.at(strand, end) if touch.meets]
 
     def free(self, strand: int, end: int) -> bool:
         """Whether nothing at all lies near an end."""
-        number = 2 * strand + end
-        return self.first[number] == self.first[number + 1]
+        return self.count(strand, end) == 0
 
     def as_pairs(self) -> tuple[IntArray, IntArray, FloatArray, np.typing.NDArray[np.bool_]]:
         """All touches as arrays (K,): number of the end, strand touched, gap, whether they meet."""
@@ -76,8 +80,10 @@ class Touches:
         )
 
 
-def find_touches(linework: Linework, tolerance: Tolerance, reach: float, among: Sequence[int] | None = None) -> Touches:
-    """What lies within ``reach`` of each end (of the strands ``among``, or of all).
+def find_touches(
+    linework: Linework, tolerance: Tolerance, within: Callable[[float], float], among: Sequence[int] | None = None
+) -> Touches:
+    """What lies near each end (of the strands ``among``, or of all); ``within`` gives the reach for a strand's length.
 
     The reach of a large arc is bounded (Tolerance.arc), or a wide curved link would catch ends that have nothing to
     do with it. Cost near-linear in the number of strands.
@@ -86,6 +92,7 @@ def find_touches(linework: Linework, tolerance: Tolerance, reach: float, among: 
     looked = strands if among is None else [strands[number] for number in among]
     numbers = np.array([2 * each.number + end for each in looked for end in range(len(each.ends))], dtype=np.int64)
     points = np.array([end for each in looked for end in each.ends], dtype=np.complex128)
+    reach = np.array([within(each.length) for each in looked for _ in each.ends])
     ends, targets, gaps = _on_lines(linework, numbers, points, reach)
     meets = gaps <= tolerance.t
     if linework.chord_strand.size and points.size:
@@ -105,9 +112,9 @@ def find_touches(linework: Linework, tolerance: Tolerance, reach: float, among: 
 
 
 def _on_lines(
-    linework: Linework, numbers: IntArray, points: ComplexArray, reach: float
+    linework: Linework, numbers: IntArray, points: ComplexArray, reach: FloatArray
 ) -> tuple[IntArray, IntArray, FloatArray]:
-    which, piece = near_pairs(points, np.full(points.size, reach), linework.piece_starts, linework.piece_ends)
+    which, piece = near_pairs(points, reach, linework.piece_starts, linework.piece_ends)
     ends, targets = numbers[which], linework.piece_strand[piece]
     foreign = targets != ends // 2
     which, piece = which[foreign], piece[foreign]
@@ -116,7 +123,7 @@ def _on_lines(
 
 
 def _on_arcs(
-    linework: Linework, numbers: IntArray, points: ComplexArray, tolerance: Tolerance, reach: float
+    linework: Linework, numbers: IntArray, points: ComplexArray, tolerance: Tolerance, reach: FloatArray
 ) -> list[tuple[int, Touch]]:
     """The arcs that ends touch: first by chords with the widest reach, then measured on the arc itself."""
     arcs = {
@@ -125,7 +132,7 @@ def _on_arcs(
     }
     sagitta = 1.0 - math.cos(math.radians(CHORD_ANGLE_DEGREES) / 2.0)
     radius = max(arc.radius for each in arcs.values() for arc in each)
-    widest = max(reach, tolerance.arc(radius)) + sagitta * radius
+    widest = max(float(reach.max()), tolerance.arc(radius)) + sagitta * radius
     which, chord = near_pairs(points, np.full(points.size, widest), linework.chord_starts, linework.chord_ends)
     found = []
     for place, target in sorted(set(zip(which.tolist(), linework.chord_strand[chord].tolist(), strict=True))):
@@ -134,6 +141,6 @@ def _on_arcs(
             continue
         point = complex(points[place])
         gap, arc = min(((distance_to_piece(point, arc), arc) for arc in arcs[target]), key=lambda pair: pair[0])
-        if gap <= max(reach, tolerance.arc(arc.radius)):
+        if gap <= max(float(reach[place]), tolerance.arc(arc.radius)):
             found.append((number, Touch(target, gap, gap <= tolerance.arc(arc.radius))))
     return found

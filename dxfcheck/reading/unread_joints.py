@@ -76,6 +76,6 @@ def pitch_circles_of(
 
 def _roll(one: Ring, other: Ring, tolerance: Tolerance) -> bool:
     apart = abs(one.centre - other.centre)
-    within = max(tolerance.shape, tolerance.rim(min(one.radius, other.radius)))
+    within = tolerance.rim(min(one.radius, other.radius))
     outside, inside = one.radius + other.radius, abs(one.radius - other.radius)
     return apart > tolerance.t and (abs(apart - outside) <= within or abs(apart - inside) <= within)

@@ -27,7 +27,7 @@ TROUBLE = {
 def drawings_without_dxf(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
     """What a drawing holds follows from its name, so that these tests are about the command alone."""
 
-    def inspect(path: str, _settings: Settings) -> DrawingReport:
+    def inspect(path: str, _settings: Settings, **_: object) -> DrawingReport:
         for name, error in TROUBLE.items():
             if name in path:
                 raise error

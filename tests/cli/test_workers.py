@@ -57,8 +57,8 @@ import os, sys
 from dxfcheck.cli import main, run
 from dxfcheck.cli.workers import inspect_all
 
-def interrupt_after_the_first(*arguments):
-    outcomes = inspect_all(*arguments)
+def interrupt_after_the_first(*arguments, **options):
+    outcomes = inspect_all(*arguments, **options)
     yield next(outcomes)
     os.kill(os.getpid(), {signal})
     yield from outcomes
