@@ -114,15 +114,14 @@ def _linkage(
 ) -> Assembled:
     ordered_sites = sorted(assembly.sites, key=lambda site: (named.pin_keys[site], site))
     pin_of = {site: number for number, site in enumerate(ordered_sites)}
-    pins_of = {body: sorted(bodies[body].pins, key=named.pin_keys.__getitem__) for body in assembly.bodies}
     names = _link_names(assembly, bodies, strands, sites, named)
-    ordered = sorted(assembly.bodies, key=lambda body: ([named.pin_keys[site] for site in pins_of[body]], names[body]))
-    shift = 1 if assembly.grounded else 0
+    pins_of = {body: sorted([pin_of[site] for site in bodies[body].pins]) for body in assembly.bodies}
+    ordered = sorted(assembly.bodies, key=lambda body: (pins_of[body], names[body]))
     links = [
         Link(
             name=names[body],
             kind="link",
-            pins=tuple(sorted(pin_of[site] for site in bodies[body].pins)),
+            pins=tuple(pins_of[body]),
             handles=named.body_handles[body],
             layer=named.body_layers[body],
         )
@@ -134,29 +133,32 @@ def _linkage(
     else:
         frame = max(range(len(links)), key=lambda each: (_reach(links[each], ordered_sites, sites), -each))
     at_pin: defaultdict[int, list[int]] = defaultdict(list)
-    for number, body in enumerate(ordered, start=shift):
-        for site in bodies[body].pins:
-            at_pin[pin_of[site]].append(number)
-    made = []
-    for number, site in enumerate(ordered_sites):
-        is_fixed = site in fixed
-        made.append(
-            Pin(
-                name=named.pin_names[site],
-                at=sites[site].at,
-                radius=sites[site].radius,
-                links=tuple(([0] if is_fixed else []) + at_pin[number]),
-                fixed=is_fixed,
-                labelled=site in named.labelled,
-                handles=named.site_handles[site],
-                layer=named.site_layers[site],
-            )
+    for number, link in enumerate(links):
+        for pin in link.pins:
+            at_pin[pin].append(number)
+    pins = [
+        Pin(
+            name=named.pin_names[site],
+            at=sites[site].at,
+            radius=sites[site].radius,
+            links=tuple(at_pin[pin]),
+            fixed=site in fixed,
+            labelled=site in named.labelled,
+            handles=named.site_handles[site],
+            layer=named.site_layers[site],
         )
-    joints = tuple(_joints(made))
+        for pin, site in enumerate(ordered_sites)
+    ]
     linkage = Linkage(
-        name=name, links=tuple(links), pins=tuple(made), joints=joints, frame=frame, grounded=assembly.grounded
+        name=name,
+        links=tuple(links),
+        pins=tuple(pins),
+        joints=tuple(_joints(pins)),
+        frame=frame,
+        grounded=assembly.grounded,
     )
-    return Assembled(linkage, (*[None] * shift, *ordered), tuple(ordered_sites))
+    made_of = (None, *ordered) if assembly.grounded else tuple(ordered)
+    return Assembled(linkage, made_of, tuple(ordered_sites))
 
 
 def _joints(pins: Iterable[Pin]) -> Iterator[Joint]:

@@ -59,7 +59,8 @@ def find_landings(pins: Sequence[PinSite], linework: Linework, tolerance: Tolera
     """Compare each pin with the linework in its neighbourhood. Cost near-linear in pins plus strands."""
     landings: list[Landing] = []
     misses: list[Miss] = []
-    rims = [_Rims.of(pin, tolerance) for pin in pins]
+    of_radii = {radii: _Rims.of(radii, tolerance) for radii in {pin.radii for pin in pins}}
+    rims = [of_radii[pin.radii] for pin in pins]
     for pin, strand in _neighbours(pins, linework, tolerance):
         ended = False
         for end, point in enumerate(strand.ends):
@@ -86,9 +87,9 @@ class _Rims(NamedTuple):
     bands: tuple[tuple[float, float, float], ...]
 
     @classmethod
-    def of(cls, pin: PinSite, tolerance: Tolerance) -> _Rims:
+    def of(cls, radii: Sequence[float], tolerance: Tolerance) -> _Rims:
         """The radii of a pin, each with its two tolerances."""
-        bands = tuple((radius, tolerance.rim(radius), tolerance.close(radius)) for radius in pin.radii)
+        bands = tuple((radius, tolerance.rim(radius), tolerance.close(radius)) for radius in radii)
         return cls(tolerance.t, max(radius + max(rim, close) for radius, rim, close in bands), bands)
 
     def met(self, away: float) -> bool:
@@ -196,8 +197,10 @@ def _covers(arc: Arc, point: Point) -> bool:
 
 def _miss(pin: PinSite, strand: Strand, end: int, away: float) -> Miss | None:
     """An end that stops short of a pin's nearest rim by no more than two of its diameters."""
-    outer = max([radius for radius in pin.radii if radius < away], default=None)
-    if outer is None or away - outer > RIM_GAP_IN_DIAMETERS * 2.0 * pin.radius:
+    if away <= pin.radii[0]:
+        return None
+    outer = max([radius for radius in pin.radii if radius < away])
+    if away - outer > RIM_GAP_IN_DIAMETERS * 2.0 * pin.radii[0]:
         return None
     piece = strand.pieces[0] if end == 0 else strand.pieces[-1]
     return Miss(strand.number, pin.number, end, away - outer, _aim_offset(piece, strand.ends[end], pin.at))

@@ -97,8 +97,10 @@ def _ends(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
             continue
         strand = seen.strands[index]
         for end in range(len(strand.ends)):
+            if (index, end) in landed:
+                continue
             near = [touch for touch in seen.gaps.at(index, end) if touch.strand in body_of]
-            if (index, end) in landed or any(touch.meets for touch in near):
+            if any(touch.meets for touch in near):
                 continue
             joints = len(set(body.pins) & set(seen.shared))
             yield _free_end(seen, strand, end, near, misses[index, end], through[index], body_of, joints)

@@ -155,12 +155,13 @@ def find_pins(rings: Sequence[Ring], tolerance: Tolerance) -> PinSites:
     pins: list[PinSite] = []
     site_of_group: dict[int, int] = {}
     for number, group in enumerate(groups):
-        kept = sorted((ring for ring in group if id(ring) not in holds), key=lambda ring: ring.radius)
+        kept = [ring for ring in group if id(ring) not in holds] if holds else group
+        if len(kept) > 1:
+            kept.sort(key=lambda ring: ring.radius)
         if kept:
             site_of_group[number] = len(pins)
-            reasons = (frame_reason(ring.source) for ring in kept)
-            frame = next((reason for reason in reasons if reason is not None), None)
-            radii = tuple(ring.radius for ring in kept)
+            frame = next(filter(None, [frame_reason(ring.source) for ring in kept]), None)
+            radii = tuple([ring.radius for ring in kept])
             pins.append(PinSite(len(pins), kept[0].centre, radii, tuple(kept), frame))
     discs = [
         Disc(ring, tuple(sorted(site_of_group[held] for held in holds[id(ring)] if held in site_of_group)))
@@ -185,7 +186,7 @@ def _concentric(rings: Sequence[Ring], tolerance: Tolerance) -> Iterable[list[in
 
 def _rings_that_hold(groups: Sequence[Sequence[Ring]]) -> dict[int, list[int]]:
     """Rings (by id) that hold the smallest ring of other groups wholly, well off their centre: the groups they hold."""
-    smallest = [min(group, key=lambda ring: ring.radius) for group in groups]
+    smallest = [group[0] if len(group) == 1 else min(group, key=lambda ring: ring.radius) for group in groups]
     owners = [(number, ring) for number, group in enumerate(groups) for ring in group]
     if not owners:
         return {}

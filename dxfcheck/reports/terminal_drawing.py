@@ -7,6 +7,7 @@ from collections.abc import Sequence
 
 from dxfcheck.inspection import DrawingReport
 from dxfcheck.reports.caution import CAUTION
+from dxfcheck.reports.terminal_brief import MECHANISMS_IN_FULL, brief_mechanisms, few_of_each_rule
 from dxfcheck.reports.terminal_layout import Column, Line, count_of, fold, place, table
 from dxfcheck.reports.terminal_mechanism import mechanism_lines
 from dxfcheck.rules.finding import SEVERITIES, Finding
@@ -24,12 +25,16 @@ def drawing_lines(report: DrawingReport, width: int) -> list[Line]:
         return lines
     lines += map(Line, fold(how_measured(report), width, "  ", "  "))
     unit = unit_name(report)
-    for mechanism in report.mechanisms:
+    for mechanism in report.mechanisms[:MECHANISMS_IN_FULL]:
         lines += [Line(""), *mechanism_lines(mechanism, unit, width)]
+    if len(report.mechanisms) > MECHANISMS_IN_FULL:
+        lines += [Line(""), *brief_mechanisms(report.mechanisms[MECHANISMS_IN_FULL:], unit, width)]
     if report.findings:
         lines += [Line(""), Line("Findings", "bold")]
-        for finding in report.findings:
-            lines += _finding_lines(finding, width)
+        for item in few_of_each_rule(report.findings):
+            lines += (
+                map(Line, fold(item, width, "  ", INDENT)) if isinstance(item, str) else _finding_lines(item, width)
+            )
     return lines
 
 

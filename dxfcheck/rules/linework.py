@@ -8,7 +8,8 @@ from dxfcheck.reading.reading import Observation
 from dxfcheck.rules.finding import Finding, Severity
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
-from dxfcheck.rules.wording import length, listed, place
+from dxfcheck.rules.wording import length, place, plural
+from dxfcheck.settings import PLACES_NAMED
 
 __all__: list[str] = []
 
@@ -192,24 +193,27 @@ def duplicate_label(subject: RuleSubject) -> Iterator[Finding]:
     "note",
     "Pins without a label",
     family="linework",
-    looks_for="Pins of a mechanism with no text of one to four characters near them.",
+    looks_for="Pins with no text of one to four characters near them; one finding a drawing.",
     matters="They get names by place (P1, P2 ...), which change when the drawing changes.",
     remedy="Write a label within two ring diameters of the pin.",
 )
 def unlabelled_pins(subject: RuleSubject) -> Iterator[Finding]:
-    """Pins named by place in a mechanism that has labels."""
-    for linkage, _ in subject.mechanisms:
-        unnamed = [pin for pin in linkage.pins if not pin.labelled]
-        if not unnamed:
-            continue
-        where = listed([f"{pin.name} at {place(pin.at)}" for pin in unnamed])
-        yield Finding(
-            rule="unlabelled-pins",
-            severity="note",
-            message=f"{len(unnamed)} of {len(linkage.pins)} pins have no label and are named by place: {where}",
-            remedy="write a label within two ring diameters of each",
-            at=unnamed[0].at,
-            handles=tuple(handle for pin in unnamed for handle in pin.handles),
-            layer=unnamed[0].layer,
-            mechanism=linkage.name,
-        )
+    """Pins named by place; one finding a drawing."""
+    pins = [(linkage.name, pin) for linkage, _ in subject.mechanisms for pin in linkage.pins]
+    unnamed = [(mechanism, pin) for mechanism, pin in pins if not pin.labelled]
+    if not unnamed:
+        return
+    first = [pin for _, pin in unnamed[:PLACES_NAMED]]
+    more = f" and {len(unnamed) - len(first)} more" if len(unnamed) > len(first) else ""
+    where = ", ".join(f"{pin.name} at {place(pin.at)}" for pin in first) + more
+    mechanisms = {mechanism for mechanism, _ in unnamed}
+    yield Finding(
+        rule="unlabelled-pins",
+        severity="note",
+        message=f"{len(unnamed)} of {plural(len(pins), 'pin')} have no label and are named by place: {where}",
+        remedy="write a label within two ring diameters of each",
+        at=first[0].at,
+        handles=tuple(handle for pin in first for handle in pin.handles),
+        layer=first[0].layer,
+        mechanism=unnamed[0][0] if len(mechanisms) == 1 else None,
+    )

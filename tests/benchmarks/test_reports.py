@@ -9,6 +9,7 @@ from pytest_benchmark.fixture import BenchmarkFixture
 
 from dxfcheck.reports.json_report import json_text
 from dxfcheck.reports.terminal import TerminalReport
+from dxfcheck.reports.terminal_brief import MECHANISMS_IN_FULL
 from tests.reports.samples import tipper
 
 SHEET = replace(tipper(), mechanisms=tipper().mechanisms * 100)
@@ -20,7 +21,7 @@ def test_terminal_report(benchmark: BenchmarkFixture) -> None:
         TerminalReport(stream).drawing(SHEET)
         return stream.getvalue()
 
-    assert benchmark(report).count("mobility") == 100
+    assert benchmark(report).count("mobility  M =") == MECHANISMS_IN_FULL
 
 
 def test_json_report(benchmark: BenchmarkFixture) -> None:

@@ -1,0 +1,81 @@
+from __future__ import annotations
+
+import pytest
+
+from dxfcheck.reading.sorting import sort_primitives
+from tests.sketches import arc, dimension, fill, line, path, ring, sketch, text
+
+
+def test_each_kind_goes_to_its_place() -> None:
+    kinds = sort_primitives(
+        sketch(
+            line(0j, 1 + 0j),
+            ring(0j),
+            arc(0j, 1, 0, 90),
+            path(0j, 1j),
+            text("A", 0j),
+            fill(0j, 1 + 0j, 1j, solid=True),
+            dimension(5.0, 0j),
+        )
+    )
+    assert [index for index, _ in kinds.lines] == [0, 2, 3]
+    assert [index for index, _ in kinds.rings] == [1]
+    assert [index for index, _ in kinds.texts] == [4]
+    assert [index for index, _ in kinds.fills] == [5]
+    assert kinds.skipped[6].read_as == "note"
+    assert set(kinds.skipped) == {6}
+
+
+@pytest.mark.parametrize("linetype", ["CENTER", "CENTER2", "DASHDOT", "DASHDOTX2", "PHANTOM", "HIDDEN2", "DIVIDE"])
+def test_construction_linetypes_are_skipped_and_say_why(linetype: str) -> None:
+    kinds = sort_primitives(sketch(line(0j, 1 + 0j, linetype=linetype)))
+    assert kinds.lines == ()
+    assert kinds.skipped[0].read_as == "skipped"
+    assert linetype in kinds.skipped[0].why
+
+
+@pytest.mark.parametrize("linetype", ["CONTINUOUS", "DASHED", "DOT", "BORDER"])
+def test_other_linetypes_are_links_like_any(linetype: str) -> None:
+    assert len(sort_primitives(sketch(line(0j, 1 + 0j, linetype=linetype))).lines) == 1
+
+
+@pytest.mark.parametrize(
+    "layer", ["Defpoints", "DIM", "dimensions", "CENTER-1", "construction", "Title", "border_A3", "Notes", "TEXT-2"]
+)
+def test_construction_layers_are_skipped_without_regard_to_case(layer: str) -> None:
+    kinds = sort_primitives(sketch(line(0j, 1 + 0j, layer=layer), ring(0j, layer=layer)))
+    assert kinds.lines == kinds.rings == ()
+    assert all(layer in kinds.skipped[index].why for index in (0, 1))
+
+
+@pytest.mark.parametrize("layer", ["0", "LINKS", "MY-DIM", "UNTITLED", "Mittellinien"])
+def test_patterns_hold_from_the_start_of_a_name(layer: str) -> None:
+    assert len(sort_primitives(sketch(line(0j, 1 + 0j, layer=layer))).lines) == 1
+
+
+def test_texts_and_dimensions_are_read_on_any_layer() -> None:
+    kinds = sort_primitives(sketch(text("A", 0j, layer="TEXT"), dimension(3.0, layer="DIM")))
+    assert len(kinds.texts) == 1
+    assert kinds.skipped[1].read_as == "note"
+
+
+@pytest.mark.parametrize(
+    ("layer", "linetype"),
+    [("PITCH", "CONTINUOUS"), ("gears", "CONTINUOUS"), ("0", "CENTER2"), ("0", "DASHDOT")],
+)
+def test_rings_on_a_pitch_layer_or_in_a_chain_linetype_may_be_pitch_circles(layer: str, linetype: str) -> None:
+    kinds = sort_primitives(sketch(ring(0j, layer=layer, linetype=linetype)))
+    assert [index for index, _ in kinds.pitch_rings] == [0]
+    assert kinds.rings == ()
+
+
+def test_a_hidden_ring_is_neither_pin_nor_pitch_circle() -> None:
+    kinds = sort_primitives(sketch(ring(0j, linetype="HIDDEN")))
+    assert kinds.rings == kinds.pitch_rings == ()
+
+
+def test_frame_lines_are_named_with_their_reason() -> None:
+    kinds = sort_primitives(
+        sketch(line(0j, 1 + 0j, layer="Frame-1"), line(0j, 1j), line(0j, 2j, block="GESTELL_LINKS"))
+    )
+    assert kinds.frame_lines == {0: "layer Frame-1", 2: "block GESTELL_LINKS"}
