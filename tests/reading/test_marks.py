@@ -1,0 +1,114 @@
+from __future__ import annotations
+
+import pytest
+
+from tests.sketches import B, C, D, A, Drawn, arc, fates, line, links, path, ring, rods, tipper
+
+AS_DRAWN = ["frame", "A-B", "B-C", "C-D"]
+MIDDLE = (A + B) / 2
+
+
+def cross(at: complex, reach: float, tilt: complex = 1j) -> list[Drawn]:
+    return [
+        line(at - reach, at + reach, handle="mark 1"),
+        line(at - reach * tilt, at + reach * tilt, handle="mark 2"),
+    ]
+
+
+def why(*things: Drawn) -> set[tuple[str, str]]:
+    read = fates(*things)
+    return {(fate.read_as, fate.why) for handle, fate in read.items() if handle.startswith("mark")}
+
+
+@pytest.mark.parametrize("reach", [4.5, 7.9])
+def test_a_centre_cross_just_outside_its_ring_is_a_mark(reach: float) -> None:
+    drawn = [*tipper(), *cross(B, reach)]
+    assert why(*drawn) == {("skipped", "a centre cross")}
+    assert links(*drawn) == AS_DRAWN
+
+
+def test_lines_that_run_on_further_are_no_centre_cross() -> None:
+    assert why(*tipper(), *cross(B, 8.1)) == {("link", "part of a link")}
+
+
+def test_a_lone_line_through_a_ring_is_no_cross() -> None:
+    assert why(*tipper(), *cross(B, 5.0)[:1]) == {("link", "part of a link")}
+
+
+@pytest.mark.parametrize(("tilt", "marks"), [(0.8 + 0.6j, True), (0.95 + 0.3122j, False)], ids=["37 deg", "18 deg"])
+def test_the_lines_of_a_cross_stand_well_apart(tilt: complex, marks: bool) -> None:  # noqa: FBT001 - a table
+    assert (("skipped", "a centre cross") in why(*tipper(), *cross(B, 5.0, tilt))) is marks
+
+
+def test_a_centre_line_that_runs_on_to_another_ring_is_part_of_both_crosses() -> None:
+    axes = [
+        line(A - 5, D + 5, handle="mark 1"),
+        line(A - 5j, A + 5j, handle="mark 2"),
+        line(D - 5j, D + 5j, handle="mark 3"),
+    ]
+    assert why(*tipper(), *axes) == {("skipped", "a centre cross")}
+    assert links(*tipper(), *axes) == AS_DRAWN
+
+
+@pytest.mark.parametrize(
+    "marks",
+    [
+        pytest.param([line(B - 2, B + 2)], id="a stroke through the centre"),
+        pytest.param([line(B - 2 + 1j, B + 2 + 1j)], id="a stroke off the centre"),
+        pytest.param([line(B - 4, B + 4)], id="a diameter from rim to rim"),
+        pytest.param([arc(B, 2.0, 0, 250)], id="an arc"),
+        pytest.param([path(B - 1, B + 1, B + 1j, closed=True)], id="an outline"),
+    ],
+)
+def test_linework_wholly_inside_a_ring_is_a_mark(marks: list[Drawn]) -> None:
+    named = [mark._replace(handle=f"mark {number}") for number, mark in enumerate(marks)]
+    assert why(*tipper(), *named) == {("skipped", "a mark inside a ring")}
+    assert links(*tipper(), *named) == AS_DRAWN
+
+
+def arrow(tip: complex, barb: complex = -5 + 1j, other: complex = -5 - 1j) -> list[Drawn]:
+    """A shaft of 30 from the left with two barbs."""
+    return [
+        line(tip - 30, tip, handle="mark 1"),
+        line(tip, tip + barb, handle="mark 2"),
+        line(tip, tip + other, handle="mark 3"),
+    ]
+
+
+def test_an_arrow_that_points_at_a_link_is_a_mark() -> None:
+    assert why(*tipper(), *arrow(MIDDLE)) == {("skipped", "an arrow")}
+    assert links(*tipper(), *arrow(MIDDLE)) == AS_DRAWN
+
+
+@pytest.mark.parametrize(
+    ("barb", "other"),
+    [
+        pytest.param(-5 + 1j, -5 + 1.5j, id="both barbs on one side"),
+        pytest.param(5 + 1j, 5 - 1j, id="swept forward"),
+        pytest.param(-1 + 5j, -1 - 5j, id="too blunt"),
+        pytest.param(-25 + 4j, -25 - 4j, id="barbs as long as the shaft"),
+    ],
+)
+def test_what_is_no_arrow(barb: complex, other: complex) -> None:
+    assert ("skipped", "an arrow") not in why(*tipper(), *arrow(MIDDLE, barb, other))
+
+
+def test_a_pinned_tip_is_a_joint_and_no_arrowhead() -> None:
+    drawn = [*tipper(), ring(-30 + 50j, handle="ring E"), *arrow(-30 + 50j)]
+    assert ("skipped", "an arrow") not in why(*drawn)
+
+
+def test_a_speck_on_a_link_is_too_short_to_be_one() -> None:
+    assert why(*tipper(), line(B, B, handle="mark")) == {("skipped", "a speck, too short to be a link")}
+
+
+@pytest.mark.parametrize(("size", "speck"), [(0.003, True), (0.03, False)])
+def test_ten_tolerances_make_a_line(size: float, speck: bool) -> None:  # noqa: FBT001 - a table
+    read = why(*tipper(), line(MIDDLE, MIDDLE + size * 1j, handle="mark"))
+    assert (read == {("skipped", "a speck, too short to be a link")}) is speck
+
+
+def test_the_links_themselves_are_no_marks() -> None:
+    handles = [rod.handle for rod in rods()]
+    assert {fates(*tipper())[handle].read_as for handle in handles} == {"link"}
+    assert C != D
