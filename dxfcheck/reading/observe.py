@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from collections.abc import Collection, Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
 from dxfcheck.drawing.primitives import Segment
@@ -36,7 +36,9 @@ class Seen:
     body_names: dict[int, str]
     mechanisms: dict[int, str]
     pin_names: dict[int, str]
-    shared: Collection[int]
+    body_of: Mapping[int, int]
+    """The body of each strand that has one."""
+    shared: frozenset[int]
     """Sites where two or more bodies meet, the frame counted."""
     handles: Sequence[str]
     """Handle of each strand's top-level entity."""
@@ -45,11 +47,10 @@ class Seen:
 
 def observe_linework(seen: Seen) -> Iterator[Observation]:
     """All observations on ends and lines of bodies, in drawing order."""
-    body_of = {index: number for number, body in enumerate(seen.bodies.bodies) for index in body.strands}
-    yield from _ends(seen, body_of)
-    yield from _rods_that_miss(seen, body_of)
-    yield from _aims(seen, body_of)
-    yield from _doubles(seen, body_of)
+    yield from _ends(seen)
+    yield from _rods_that_miss(seen)
+    yield from _aims(seen)
+    yield from _doubles(seen)
     yield from _stacked(seen)
 
 
@@ -58,7 +59,6 @@ def _observation(  # noqa: PLR0913 (the fields of an observation)
     kind: str,
     strand: Strand,
     at: complex,
-    body_of: dict[int, int],
     *,
     amount: float | None = None,
     limit: float | None = None,
@@ -66,7 +66,7 @@ def _observation(  # noqa: PLR0913 (the fields of an observation)
     severity: str | None = None,
     also: Iterable[str] = (),
 ) -> Observation:
-    body = body_of.get(strand.number)
+    body = seen.body_of.get(strand.number)
     return Observation(
         kind=kind,
         at=at,
@@ -81,7 +81,7 @@ def _observation(  # noqa: PLR0913 (the fields of an observation)
     )
 
 
-def _ends(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
+def _ends(seen: Seen) -> Iterator[Observation]:
     """Each end of a moving body that neither lands on a pin nor meets other linework."""
     landed = {(each.strand, each.end) for each in seen.bodies.landings}
     through: defaultdict[int, list[int]] = defaultdict(list)
@@ -91,7 +91,7 @@ def _ends(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
     misses: defaultdict[tuple[int, int], list[Miss]] = defaultdict(list)
     for miss in seen.misses:
         misses[miss.strand, miss.end].append(miss)
-    for index, number in sorted(body_of.items()):
+    for index, number in sorted(seen.body_of.items()):
         body = seen.bodies.bodies[number]
         if body.frame or number not in seen.body_names:
             continue
@@ -99,65 +99,77 @@ def _ends(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
         for end in range(len(strand.ends)):
             if (index, end) in landed:
                 continue
-            near = [touch for touch in seen.gaps.at(index, end) if touch.strand in body_of]
+            near = [touch for touch in seen.gaps.at(index, end) if touch.strand in seen.body_of]
             if any(touch.meets for touch in near):
                 continue
-            joints = len(set(body.pins) & set(seen.shared))
-            yield _free_end(seen, strand, end, near, misses[index, end], through[index], body_of, joints)
+            yield _free_end(seen, strand, end, near, misses[index, end], through[index])
 
 
 def _free_end(
-    seen: Seen,
-    strand: Strand,
-    end: int,
-    near: Sequence[Touch],
-    misses: Sequence[Miss],
-    through: Sequence[int],
-    body_of: dict[int, int],
-    joints: int,
+    seen: Seen, strand: Strand, end: int, near: Sequence[Touch], misses: Sequence[Miss], through: Sequence[int]
 ) -> Observation:
-    point = strand.ends[end]
-    own = set(seen.bodies.bodies[body_of[strand.number]].pins)
-    for pin in (seen.sites.pins[index] for index in through):
-        past = abs(point - pin.at)
+    """What a free end comes nearest to: a pin it runs past, a pin or a line it stops short of, or nothing."""
+    found = (
+        _past_a_pin(seen, strand, end, through)
+        or _short_of_a_pin(seen, strand, end, misses)
+        or _short_of_a_line(seen, strand, end, near)
+    )
+    if found is not None:
+        return found
+    joints = len(seen.shared.intersection(seen.bodies.bodies[seen.body_of[strand.number]].pins))
+    return _observation(seen, "loose-end", strand, strand.ends[end], severity="warning" if joints < 2 else "note")
+
+
+def _past_a_pin(seen: Seen, strand: Strand, end: int, through: Sequence[int]) -> Observation | None:
+    for site in through:
+        pin = seen.sites.pins[site]
+        past = abs(strand.ends[end] - pin.at)
         limit = pin.radius + RIM_GAP_IN_DIAMETERS * 2.0 * pin.radius
         if past <= limit:
-            detail = f"runs {{amount}} past the centre of pin {_pin_name(seen, pin.number)} and is read as pinned there"
             return _observation(
-                seen, "near-miss", strand, point, body_of, amount=past, limit=limit, detail=detail, severity="warning"
+                seen,
+                "near-miss",
+                strand,
+                strand.ends[end],
+                amount=past,
+                limit=limit,
+                detail=f"runs {{amount}} past the centre of pin {_pin_name(seen, site)} and is read as pinned there",
+                severity="warning",
             )
+    return None
+
+
+def _short_of_a_pin(seen: Seen, strand: Strand, end: int, misses: Sequence[Miss]) -> Observation | None:
+    own = seen.bodies.bodies[seen.body_of[strand.number]].pins if strand.number in seen.body_of else ()
     aimed = [miss for miss in misses if miss.pin not in own and miss.offset <= seen.sites.pins[miss.pin].radii[-1]]
-    if aimed:
-        miss = min(aimed, key=lambda each: (each.gap, each.pin))
-        pin = seen.sites.pins[miss.pin]
-        detail = f"stops {{amount}} short of the rim of pin {_pin_name(seen, pin.number)} and is not joined to it"
-        return _observation(
-            seen,
-            "near-miss",
-            strand,
-            point,
-            body_of,
-            amount=miss.gap,
-            limit=seen.tolerance.rim(pin.radius),
-            detail=detail,
-        )
-    gaps = [touch for touch in near if not touch.meets]
-    if gaps:
-        touch = min(gaps, key=lambda each: (each.gap, each.strand))
-        detail = "stops {amount} short of the line it seems to be welded to and is not joined to it"
-        return _observation(
-            seen,
-            "near-miss",
-            strand,
-            point,
-            body_of,
-            amount=touch.gap,
-            limit=seen.tolerance.t,
-            detail=detail,
-            also=(seen.handles[touch.strand],),
-        )
-    severity = "warning" if joints < 2 else "note"
-    return _observation(seen, "loose-end", strand, point, body_of, severity=severity)
+    if not aimed:
+        return None
+    miss = min(aimed, key=lambda each: (each.gap, each.pin))
+    return _observation(
+        seen,
+        "near-miss",
+        strand,
+        strand.ends[end],
+        amount=miss.gap,
+        limit=seen.tolerance.rim(seen.sites.pins[miss.pin].radius),
+        detail=f"stops {{amount}} short of the rim of pin {_pin_name(seen, miss.pin)} and is not joined to it",
+    )
+
+
+def _short_of_a_line(seen: Seen, strand: Strand, end: int, near: Sequence[Touch]) -> Observation | None:
+    if not near:
+        return None
+    touch = min(near, key=lambda each: (each.gap, each.strand))
+    return _observation(
+        seen,
+        "near-miss",
+        strand,
+        strand.ends[end],
+        amount=touch.gap,
+        limit=seen.tolerance.t,
+        detail="stops {amount} short of the line it seems to be welded to and is not joined to it",
+        also=(seen.handles[touch.strand],),
+    )
 
 
 def _pin_name(seen: Seen, site: int) -> str:
@@ -165,34 +177,27 @@ def _pin_name(seen: Seen, site: int) -> str:
     return seen.pin_names.get(site, f"at ({at.real:g}, {at.imag:g})")
 
 
-def _rods_that_miss(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
+def _rods_that_miss(seen: Seen) -> Iterator[Observation]:
     """Lines of no body whose two ends both stop just short of rims they point at: a rod with no joint left."""
-    by_strand: defaultdict[int, dict[int, Miss]] = defaultdict(dict)
+    by_strand: defaultdict[int, defaultdict[int, list[Miss]]] = defaultdict(lambda: defaultdict(list))
     for miss in seen.misses:
-        pin = seen.sites.pins[miss.pin]
-        strand = seen.strands[miss.strand]
-        aimed = miss.offset <= pin.radius and miss.pin in seen.pin_names
-        if aimed and miss.strand not in body_of and isinstance(strand.primitive, Segment):
-            held = by_strand[miss.strand].get(miss.end)
-            if held is None or miss.gap < held.gap:
-                by_strand[miss.strand][miss.end] = miss
+        if miss.strand not in seen.body_of and miss.pin in seen.pin_names:
+            by_strand[miss.strand][miss.end].append(miss)
     for index, misses in sorted(by_strand.items()):
-        if len(misses) < 2 or misses[0].pin == misses[1].pin:
+        strand = seen.strands[index]
+        pins = [{miss.pin for miss in misses[end]} for end in (0, 1)]
+        if not isinstance(strand.primitive, Segment) or not all(pins) or pins[0] & pins[1]:
             continue
-        for miss in misses.values():
-            detail = f"stops {{amount}} short of the rim of pin {_pin_name(seen, miss.pin)} and is not joined to it"
-            strand = seen.strands[index]
-            limit = seen.tolerance.rim(seen.sites.pins[miss.pin].radius)
-            yield _observation(
-                seen, "near-miss", strand, strand.ends[miss.end], body_of, amount=miss.gap, limit=limit, detail=detail
-            )
+        both = [_short_of_a_pin(seen, strand, end, misses[end]) for end in (0, 1)]
+        if None not in both:
+            yield from filter(None, both)
 
 
-def _aims(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
+def _aims(seen: Seen) -> Iterator[Observation]:
     """Ends that land on a pin but point past its centre, and lines that run through a ring off its centre."""
     laid_over = set(seen.bodies.laid_over)
     for landing in seen.landings:
-        number = body_of.get(landing.strand)
+        number = seen.body_of.get(landing.strand)
         if number is None or seen.bodies.bodies[number].frame or number not in seen.body_names:
             continue
         strand, pin = seen.strands[landing.strand], seen.sites.pins[landing.pin]
@@ -207,7 +212,6 @@ def _aims(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
                     "off-centre-end",
                     strand,
                     point,
-                    body_of,
                     amount=landing.offset,
                     limit=limit,
                     detail=detail,
@@ -225,29 +229,28 @@ def _aims(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
                     "off-centre-end",
                     strand,
                     pin.at,
-                    body_of,
                     amount=landing.offset,
                     limit=seen.tolerance.t,
                     detail=detail,
                 )
 
 
-def _doubles(seen: Seen, body_of: dict[int, int]) -> Iterator[Observation]:
+def _doubles(seen: Seen) -> Iterator[Observation]:
     """Lines drawn twice: between the same two pins, or with the same two ends inside one body."""
     told: set[int] = set()
     for double in seen.bodies.doubles:
-        if double.repeated in body_of and body_of[double.repeated] in seen.body_names:
+        if double.repeated in seen.body_of and seen.body_of[double.repeated] in seen.body_names:
             told.add(double.repeated)
-            yield _double(seen, double.kept, double.repeated, body_of)
-    for index in sorted(body_of):
-        if body_of[index] not in seen.body_names or len(seen.strands[index].ends) != 2 or index in told:
+            yield _double(seen, double.kept, double.repeated)
+    for index in sorted(seen.body_of):
+        if seen.body_of[index] not in seen.body_names or len(seen.strands[index].ends) != 2 or index in told:
             continue
-        kept = _same_line_before(seen, index, body_of)
+        kept = _same_line_before(seen, index)
         if kept is not None:
-            yield _double(seen, kept, index, body_of)
+            yield _double(seen, kept, index)
 
 
-def _same_line_before(seen: Seen, index: int, body_of: dict[int, int]) -> int | None:
+def _same_line_before(seen: Seen, index: int) -> int | None:
     """An earlier straight line of the same body with both ends where this one has its own."""
     if seen.gaps.free(index, 0) or seen.gaps.free(index, 1):
         return None
@@ -256,16 +259,16 @@ def _same_line_before(seen: Seen, index: int, body_of: dict[int, int]) -> int | 
     for other in sorted(both[0] & both[1]):
         same = seen.strands[other]
         straight = isinstance(strand.primitive, Segment) and isinstance(same.primitive, Segment)
-        before = other < index and body_of.get(other) == body_of[index]
+        before = other < index and seen.body_of.get(other) == seen.body_of[index]
         if straight and before and abs(same.length - strand.length) <= 2 * seen.tolerance.t:
             return other
     return None
 
 
-def _double(seen: Seen, kept: int, repeated: int, body_of: dict[int, int]) -> Observation:
+def _double(seen: Seen, kept: int, repeated: int) -> Observation:
     strand = seen.strands[repeated]
     middle = (strand.ends[0] + strand.ends[1]) / 2
-    return _observation(seen, "double-line", strand, middle, body_of, also=(seen.handles[kept],))
+    return _observation(seen, "double-line", strand, middle, also=(seen.handles[kept],))
 
 
 def _stacked(seen: Seen) -> Iterator[Observation]:

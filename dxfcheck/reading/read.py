@@ -65,7 +65,8 @@ def _seen(sheet: Sheet, parts: Parts, model: Model) -> Seen:
         body_names={body: link for body, link, _ in owners},
         mechanisms={body: mechanism for body, _, mechanism in owners},
         pin_names=dict(model.names.names),
-        shared={site for site, count in bodies_at.items() if count > 1},
+        body_of={strand: number for number, body in enumerate(parts.bodies.bodies) for strand in body.strands},
+        shared=frozenset(site for site, count in bodies_at.items() if count > 1),
         handles=model.strand_handles,
         tolerance=sheet.tolerance,
     )
