@@ -11,7 +11,8 @@ from ezdxf.entities.insert import Insert
 
 from dxfcheck.drawing.blocks import Block, Blocks, Level, array_offsets, array_size, placement_of, scales_evenly
 from dxfcheck.drawing.cleaning import clean
-from dxfcheck.drawing.layers import CONTINUOUS, HIDDEN, INVISIBLE, LayerState, LayerStates
+from dxfcheck.drawing.fates import EXTERNAL, HIDDEN, INVISIBLE, OFF_PLANE, PAPER_SPACE
+from dxfcheck.drawing.layers import CONTINUOUS, LayerState, LayerStates
 from dxfcheck.drawing.linework import read_arc, read_circle, read_ellipse, read_line, read_lwpolyline, read_polyline
 from dxfcheck.drawing.marks import read_dimension, read_hatch, read_solid
 from dxfcheck.drawing.placement import FLIPPED, SHEET, Placement
@@ -20,7 +21,6 @@ from dxfcheck.drawing.primitives import BlockUse, Entity, Fate, Notice, Primitiv
 from dxfcheck.drawing.shapes import (
     LIBRARY_FAULTS,
     NOT_A_NUMBER,
-    OFF_PLANE,
     Given,
     NotRead,
     Reader,
@@ -61,7 +61,6 @@ _OBJECT_COORDINATES = frozenset(
 )
 """Kinds whose points lie in the coordinate system of their extrusion (DXF reference, from memory; as in ezdxf)."""
 _POLYLINE_3D = 8
-_PAPER = Fate("skipped", "paper space")
 _TOO_MUCH = Fate("unread", "the block reference holds too much to expand")
 _TOP = Level(SHEET, None, CONTINUOUS, (), ())
 
@@ -135,7 +134,9 @@ class _Walk:
         """Enter an entity of a paper layout in the account; nothing of it is read."""
         given = vars(entity.dxf)
         layer = clean(given["layer"] if "layer" in given else _layer_name(entity))
-        self.out.entities.append(Entity(clean(given.get("handle") or ""), clean(entity.dxftype()), layer, _PAPER, None))
+        self.out.entities.append(
+            Entity(clean(given.get("handle") or ""), clean(entity.dxftype()), layer, PAPER_SPACE, None)
+        )
 
     def note_mirrored(self) -> None:
         """One notice for all entities drawn from behind the sheet."""
@@ -300,7 +301,7 @@ class _Walk:
             return None, Fate("unread", "the block is missing")
         if block.external:
             self.pending["outside-reference", f"block {shown} stands for another file"] = None
-            return block, Fate("unread", "an external reference is not followed")
+            return block, EXTERNAL
         return block, None
 
 

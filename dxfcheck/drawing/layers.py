@@ -8,16 +8,12 @@ from ezdxf.document import Drawing
 from ezdxf.entities.layer import Layer
 
 from dxfcheck.drawing.cleaning import clean
+from dxfcheck.drawing.fates import LAYER_FROZEN, LAYER_OFF
 from dxfcheck.drawing.primitives import Fate
 
-__all__ = ["CONTINUOUS", "HIDDEN", "INVISIBLE", "LayerState", "LayerStates"]
+__all__ = ["CONTINUOUS", "LayerState", "LayerStates"]
 
 CONTINUOUS = "CONTINUOUS"
-_FROZEN = Fate("skipped", "layer is frozen")
-_OFF = Fate("skipped", "layer is off")
-INVISIBLE = Fate("skipped", "invisible")
-HIDDEN = frozenset({_FROZEN, _OFF, INVISIBLE})
-"""Fates of what the drawing holds but does not show."""
 
 
 class LayerState(NamedTuple):
@@ -49,6 +45,6 @@ def _state(name: str, layer: Layer | None) -> LayerState:
     if layer is None:
         return LayerState(clean(name), name == "0", None, frozen=False, linetype=CONTINUOUS)
     frozen = layer.is_frozen()
-    hidden = _FROZEN if frozen else _OFF if layer.is_off() else None
+    hidden = LAYER_FROZEN if frozen else LAYER_OFF if layer.is_off() else None
     linetype = clean(str(layer.dxf.get("linetype", CONTINUOUS))).upper()
     return LayerState(clean(name), name == "0", hidden, frozen, linetype or CONTINUOUS)

@@ -124,7 +124,9 @@ def _content(path: Path, shown: str) -> bytes:
 
 
 def _one_line(fault: BaseException) -> str:
-    """What a fault says, in one clean line; its kind where it says nothing."""
+    """What a fault says, in one clean line; those that say nothing to a drafter are put into words."""
+    if isinstance(fault, StopIteration | EOFError):
+        return "it breaks off in the middle"
     said = fault.strerror if isinstance(fault, OSError) and fault.strerror else str(fault)
     return clean(" ".join(said.split()).rstrip(".")) or type(fault).__name__
 

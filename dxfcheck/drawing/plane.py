@@ -10,8 +10,8 @@ from typing import NamedTuple
 
 from dxfcheck.drawing.curves import FULL_TURN
 from dxfcheck.drawing.extract import Extraction, Heights
+from dxfcheck.drawing.fates import OFF_PLANE
 from dxfcheck.drawing.primitives import Arc, Entity, Fill, Notice, Path, Primitive, Ring, Segment
-from dxfcheck.drawing.shapes import OFF_PLANE
 from dxfcheck.geometry import Point
 from dxfcheck.settings import FAR_OF_DIAGONAL, SHAPE_OF_DIAGONAL
 

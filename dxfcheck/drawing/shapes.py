@@ -10,6 +10,7 @@ from typing import Any
 from ezdxf.entities.dxfentity import DXFEntity
 from ezdxf.lldxf.const import DXFError
 
+from dxfcheck.drawing.fates import OFF_PLANE
 from dxfcheck.drawing.placement import Placement
 from dxfcheck.drawing.primitives import Fate, Primitive, Source
 from dxfcheck.settings import COORDINATE_LIMIT, TILT_RADIANS
@@ -17,7 +18,6 @@ from dxfcheck.settings import COORDINATE_LIMIT, TILT_RADIANS
 __all__ = [
     "LIBRARY_FAULTS",
     "NOT_A_NUMBER",
-    "OFF_PLANE",
     "SQUARE_LIMIT",
     "Given",
     "NotRead",
@@ -55,7 +55,6 @@ Reader = Callable[[DXFEntity, Given, Source, Placement], Shapes]
 
 SQUARE_LIMIT = COORDINATE_LIMIT * COORDINATE_LIMIT
 NOT_A_NUMBER = Fate("unread", "a coordinate is no number")
-OFF_PLANE = Fate("unread", "lies off the plane of the sheet")
 
 
 class NotRead(Exception):

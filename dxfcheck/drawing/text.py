@@ -16,7 +16,7 @@ from ezdxf.lldxf.encoding import decode_dxf_unicode
 from ezdxf.tools.text import plain_mtext, plain_text
 
 from dxfcheck.drawing.cleaning import clean_lines
-from dxfcheck.drawing.layers import INVISIBLE
+from dxfcheck.drawing.fates import INVISIBLE
 from dxfcheck.drawing.placement import Placement
 from dxfcheck.drawing.primitives import Fate, Source, Text
 from dxfcheck.drawing.shapes import Given, NotRead, Shapes, faces_away, require_numbers

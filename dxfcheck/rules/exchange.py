@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Iterator, Sequence
 
+from dxfcheck.drawing.fates import EXTERNAL, HIDDEN, OFF_PLANE, PAPER_SPACE
 from dxfcheck.drawing.primitives import Entity, Notice
 from dxfcheck.geometry import Point
 from dxfcheck.rules.finding import Finding, Severity
@@ -74,9 +75,7 @@ def damaged_file(subject: RuleSubject) -> Iterator[Finding]:
 )
 def empty_model_space(subject: RuleSubject) -> Iterator[Finding]:
     """No entity outside paper layouts."""
-    paper = [
-        entity for entity in subject.sketch.entities if entity.fate is not None and entity.fate.why == "paper space"
-    ]
+    paper = [entity for entity in subject.sketch.entities if entity.fate == PAPER_SPACE]
     if len(paper) == len(subject.sketch.entities):
         held = f"; {plural(len(paper), 'entity')} on paper layouts {'is' if len(paper) == 1 else 'are'} not read"
         yield Finding(
@@ -227,7 +226,7 @@ def hidden_linework(subject: RuleSubject) -> Iterator[Finding]:
         )
 
 
-HIDDEN_REASONS = frozenset({"layer is off", "layer is frozen", "invisible"})
+HIDDEN_REASONS = frozenset(fate.why for fate in HIDDEN)
 
 
 @rule(
@@ -246,7 +245,7 @@ def unread_entity(subject: RuleSubject) -> Iterator[Finding]:
     boxes = list(_boxes(subject))
     unread: defaultdict[tuple[bool, str, str], list[Entity]] = defaultdict(list)
     for entity in subject.sketch.entities:
-        if entity.fate is not None and entity.fate.read_as == "unread" and entity.fate.why not in TOLD_BY_OTHER_RULES:
+        if entity.fate is not None and entity.fate.read_as == "unread" and entity.fate not in TOLD_BY_OTHER_RULES:
             among = entity.at is not None and any(_inside(entity.at, *box) for box in boxes)
             unread[among, entity.type, entity.fate.why].append(entity)
     for notice in _notices(subject, "unread-part", "block-cycle", "block-missing"):
@@ -268,7 +267,7 @@ def unread_entity(subject: RuleSubject) -> Iterator[Finding]:
         )
 
 
-TOLD_BY_OTHER_RULES = frozenset({"lies off the plane of the sheet", "an external reference is not followed"})
+TOLD_BY_OTHER_RULES = frozenset({OFF_PLANE, EXTERNAL})
 
 
 def _boxes(subject: RuleSubject) -> Iterator[tuple[Point, Point]]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from dxfcheck.analysis.results import Analysis
+from dxfcheck.drawing.fates import PAPER_SPACE
 from dxfcheck.linkage import Linkage
 from dxfcheck.rules.finding import Finding, Severity
 from dxfcheck.rules.registry import rule
@@ -39,7 +40,8 @@ def _about(linkage: Linkage, name: str, severity: Severity, message: str, remedy
 )
 def no_linkage(subject: RuleSubject) -> Iterator[Finding]:
     """Drawings without a linkage."""
-    if any(seen.kind == "no-linkage" for seen in subject.reading.observations):
+    drawn = any(entity.fate != PAPER_SPACE for entity in subject.sketch.entities)
+    if drawn and any(seen.kind == "no-linkage" for seen in subject.reading.observations):
         yield Finding(
             rule="no-linkage",
             severity="note",
