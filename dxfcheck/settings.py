@@ -116,8 +116,8 @@ DISC_OFFSET_OF_RADIUS = 0.25
 """A ring that holds another pin at least this part of its radius off its centre is a disc; nearer, the two rings were
 meant to be on one centre."""
 
-STACKED_OF_RADIUS = 1.0
-"""Two pins whose centres lie nearer than this part of the greater ring's radius stand on one another."""
+STACKED_OF_RADIUS = 1.5
+"""Two pins whose centres lie nearer than this many times the greater ring's radius stand on one another."""
 
 LABEL_LENGTH = 4
 """A text of at most this many characters may name a pin."""
@@ -132,6 +132,9 @@ NOTE_REACH_IN_HEIGHTS = 8.0
 NOTE_CLEARLY_NEARER = 0.5
 """... and only if it lies at most this part of the distance to the next nearest link away."""
 
+ROUND_LOOP_LIKENESS = 3.0
+"""The lines of such a loop differ in length by no more than this factor."""
+
 ROUND_LOOP_PIECES = 10
 """A closed loop of at least this many short lines on one circle is a ring."""
 
@@ -143,9 +146,6 @@ ARROW_BARB_OF_SHAFT = 0.6
 
 CHORD_ANGLE_DEGREES = 7.5
 """Arcs are replaced by chords of at most this angle when looking for neighbours (never when measuring)."""
-
-ARC_REACH_IN_SHAPES = 4.0
-"""However large an arc, an end meets it only within this many shape tolerances."""
 
 # --- drawing: how a file is turned into plain shapes ---
 
@@ -239,8 +239,8 @@ ASSUMED_TIE = 1e-6
 NAMED_NOTE_REACH_IN_HEIGHTS = 40.0
 """A drive note whose name fits links of several mechanisms means the clearly nearest within so many text heights."""
 
-LINE_OFF_CENTRE_OF_RADIUS = 0.25
-"""A line that runs through a ring this part of the radius off its centre was probably meant to be pinned there."""
+LINE_OFF_CENTRE_OF_RADIUS = 1.0
+"""A line that runs through a ring this part of the radius off its centre may have been meant to be pinned there."""
 
 EMPTY_PIN_LIKENESS = 3.0
 """A ring without a link is taken for a forgotten pin within so many radii of a linkage and this factor of its size."""
@@ -253,3 +253,12 @@ COORDINATE_LIMIT = 1e60
 
 AMONG_LINKS_OF_DIAGONAL = 0.02
 """What lies within the box round a mechanism's pins, widened by this part of the diagonal, lies among its links."""
+
+CORNER_OF_LINE = 0.5
+"""The edges of a filled corner are at most this part of the lines it welds long."""
+
+ARC_REACH_IN_SHAPES = 4.0
+"""However large an arc, an end meets it only within this many shape tolerances."""
+
+ARROW_HEAD_DEGREES = 10.0
+"""A closed arrow head is in line with its shaft within this angle."""

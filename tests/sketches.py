@@ -96,7 +96,8 @@ def path(*points: complex, closed: bool = False, curved: bool = False, layer: st
 def rectangle(centre: complex, length: float, width: float, *, handle: str = "") -> Drawn:
     """A closed polyline of four corners, its length along +x."""
     half, up = length / 2, width / 2 * 1j
-    return path(centre - half - up, centre + half - up, centre + half + up, centre - half + up, closed=True)
+    corners = (centre - half - up, centre + half - up, centre + half + up, centre - half + up)
+    return path(*corners, closed=True, handle=handle)
 
 
 def obround(one: complex, other: complex, radius: float, *, handle: str = "") -> Drawn:

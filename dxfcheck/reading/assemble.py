@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from typing import NamedTuple
 
 from dxfcheck.linkage import Joint, Link, Linkage, Pin
-from dxfcheck.reading.bodies import Body
+from dxfcheck.reading.body import Body
 from dxfcheck.reading.linework import Strand
 from dxfcheck.reading.pins import PinSite
 from dxfcheck.reading.tolerance import Tolerance

@@ -3,41 +3,18 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from collections.abc import Collection, Iterable, Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from collections.abc import Set as AbstractSet
 from dataclasses import dataclass
 
-from dxfcheck.drawing.primitives import Segment
-from dxfcheck.geometry import Point, cross, distance_to_segment
-from dxfcheck.reading.frame import pins_at_corners
+from dxfcheck.reading.body import Body
+from dxfcheck.reading.covers import corner_pins, corner_welds, cover_bodies
+from dxfcheck.reading.doubles import DoubleLine, find_doubles
 from dxfcheck.reading.landing import Landing
-from dxfcheck.reading.pins import Disc
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.unions import Unions
 
-__all__ = ["Bodies", "Body", "DoubleLine", "make_bodies"]
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Body:
-    """One rigid body of the drawing: its strands, its pins (indices of sites) and whether it is the frame.
-
-    ``fills`` and ``discs`` are indices of the solid fills and discs that are part of it.
-    """
-
-    strands: tuple[int, ...]
-    pins: tuple[int, ...]
-    frame: bool
-    discs: tuple[int, ...] = ()
-    fills: tuple[int, ...] = ()
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class DoubleLine:
-    """A line drawn twice between the same two pins; ``kept`` stays, ``repeated`` is taken into it."""
-
-    kept: int
-    repeated: int
+__all__ = ["Bodies", "make_bodies"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -67,14 +44,21 @@ def make_bodies(
     strands known to be one part whatever their ends do (the four of an obround).
     """
     counted = [each for each in landings if each.strand in active and _counts(each, frame)]
+    pins_of_fill = corner_pins(sheet)
     unions = _weld(sheet, active, counted, frame, groups)
-    doubles = list(_doubles(sheet, counted, unions, frame))
+    for group in corner_welds(sheet, active, pins_of_fill):
+        for other in group[1:]:
+            unions.join(group[0], other)
+    doubles = find_doubles(sheet, counted, frame)
+    for double in doubles:
+        if double.same:
+            unions.join(double.kept, double.repeated)
     members = {index: unions.of(index) for index in active}
     laid_over = set(_laid_over(counted, members))
     counted = [each for each in counted if (each.strand, each.pin) not in laid_over]
     bodies = _gather(sheet, active, members, counted, frame)
     return Bodies(
-        bodies=tuple(_with_fills_and_discs(sheet, bodies)),
+        bodies=tuple(cover_bodies(sheet, bodies, pins_of_fill)),
         doubles=tuple(doubles),
         laid_over=tuple(sorted(laid_over)),
         landings=tuple(counted),
@@ -82,7 +66,8 @@ def make_bodies(
 
 
 def _counts(landing: Landing, frame: Mapping[int, str]) -> bool:
-    return landing.how != "across" and (landing.how != "loose" or landing.strand in frame)
+    """Frame linework holds every pin it runs through or touches; links only those they land on."""
+    return landing.how not in {"across", "loose"} or landing.strand in frame
 
 
 def _weld(
@@ -98,6 +83,8 @@ def _weld(
         for other in group[1:]:
             unions.join(group[0], other)
     at_pin = {(landing.strand, landing.end) for landing in landings if landing.end is not None}
+    # Two bars on one pin touch one another with their arcs and sides, but turn on one another.
+    bar_of = {index: number for number, group in enumerate(groups) for index in group}
     frame_strands = sorted(active & frame.keys())
     for index in frame_strands[1:]:
         unions.join(frame_strands[0], index)
@@ -106,40 +93,10 @@ def _weld(
             if (index, end) in at_pin:
                 continue
             for touch in sheet.touching.at(index, end):
-                if touch.meets and touch.strand in active:
+                other_bar = bar_of.get(touch.strand, bar_of.get(index)) != bar_of.get(index, bar_of.get(touch.strand))
+                if touch.meets and touch.strand in active and not other_bar:
                     unions.join(index, touch.strand)
     return unions
-
-
-def _doubles(
-    sheet: Sheet, landings: Iterable[Landing], unions: Unions, frame: Mapping[int, str]
-) -> Iterator[DoubleLine]:
-    """Straight lines that lie on one another between the same two pins; each is joined to the one it repeats."""
-    ends: defaultdict[int, dict[int, int]] = defaultdict(dict)
-    for landing in landings:
-        straight = isinstance(sheet.strands[landing.strand].primitive, Segment)
-        if landing.end is not None and straight and landing.strand not in frame:
-            ends[landing.strand][landing.end] = landing.pin
-    between: defaultdict[tuple[int, ...], list[int]] = defaultdict(list)
-    for index, pins in sorted(ends.items()):
-        if len(pins) == 2:
-            between[tuple(sorted(pins.values()))].append(index)
-    for strands in between.values():
-        for position, repeated in enumerate(strands):
-            kept = next((each for each in strands[:position] if _lie_together(sheet, each, repeated)), None)
-            if kept is not None:
-                unions.join(kept, repeated)
-                yield DoubleLine(kept=kept, repeated=repeated)
-
-
-def _lie_together(sheet: Sheet, one: int, other: int) -> bool:
-    """Whether the shorter of two lines lies on the longer, within t to the side."""
-    first, second = sorted((sheet.strands[one], sheet.strands[other]), key=lambda strand: strand.length)
-    start, end = second.ends
-    along = end - start
-    if along == 0:
-        return False
-    return all(abs(cross(along, point - start)) / abs(along) <= sheet.tolerance.t for point in first.ends)
 
 
 def _laid_over(landings: Sequence[Landing], body_of: Mapping[int, int]) -> Iterator[tuple[int, int]]:
@@ -177,6 +134,8 @@ def _gather(
     frame_roots = {members[index] for index in frame if index in members}
     frame_pins = {pin.number for pin in sheet.pins if pin.frame is not None}
     frame_pins.update(pin for root in frame_roots for pin in pins[root])
+    # A line from one frame pivot to another is the frame drawn as a link, not a link that turns on nothing.
+    frame_roots.update(root for root in strands if len(pins[root]) > 1 and pins[root] <= frame_pins)
     moving = [
         Body(strands=tuple(each), pins=tuple(sorted(pins[root])), frame=False)
         for root, each in strands.items()
@@ -186,58 +145,3 @@ def _gather(
         return moving
     fixed = tuple(sorted(index for root in frame_roots for index in strands[root]))
     return [Body(strands=fixed, pins=tuple(sorted(frame_pins)), frame=True), *moving]
-
-
-def _with_fills_and_discs(sheet: Sheet, bodies: Sequence[Body]) -> list[Body]:
-    """Join the bodies that a solid fill covers or a disc carries into one, and add those that have no linework."""
-    parts = [*bodies]
-    for number, fill in enumerate(sheet.fills):
-        if not fill.solid:
-            continue
-        corners = {pin for outline in fill.outlines for pin in pins_at_corners(outline, sheet.pins, sheet.tolerance)}
-        if len(corners) >= 2:
-            edges = [
-                edge for outline in fill.outlines for edge in zip(outline, [*outline[1:], *outline[:1]], strict=True)
-            ]
-            own = [body for body in parts if not body.frame and _drawn_along(sheet, body, corners, edges)]
-            parts = _merged(parts, own, corners, fills=(number,))
-    for number, disc in enumerate(sheet.sites.discs):
-        on_rim = [
-            body for body in parts if not body.frame and any(_ends_on(sheet, index, disc) for index in body.strands)
-        ]
-        if disc.holds or on_rim:
-            parts = _merged(parts, on_rim, set(disc.holds), discs=(number,))
-    return parts
-
-
-def _drawn_along(sheet: Sheet, body: Body, corners: Collection[int], edges: Sequence[tuple[Point, Point]]) -> bool:
-    """Whether all of a body's pins are corners of a fill and all its strands run along the fill's edges."""
-    if not set(body.pins) <= set(corners):
-        return False
-    radius = max(sheet.pins[pin].radii[-1] for pin in corners)
-    within = max(sheet.tolerance.close(radius), sheet.tolerance.rim(radius))
-    points = [point for index in body.strands for point in (*sheet.strands[index].ends, *sheet.strands[index].corners)]
-    return all(min(distance_to_segment(point, *edge) for edge in edges) <= within for point in points)
-
-
-def _ends_on(sheet: Sheet, index: int, disc: Disc) -> bool:
-    within = sheet.tolerance.rim(disc.ring.radius)
-    return any(abs(abs(end - disc.ring.centre) - disc.ring.radius) <= within for end in sheet.strands[index].ends)
-
-
-def _merged(
-    parts: Sequence[Body],
-    own: Sequence[Body],
-    pins: Collection[int],
-    *,
-    fills: tuple[int, ...] = (),
-    discs: tuple[int, ...] = (),
-) -> list[Body]:
-    joined = Body(
-        strands=tuple(sorted(index for body in own for index in body.strands)),
-        pins=tuple(sorted({*pins, *(pin for body in own for pin in body.pins)})),
-        frame=False,
-        fills=fills + tuple(each for body in own for each in body.fills),
-        discs=discs + tuple(each for body in own for each in body.discs),
-    )
-    return [*(body for body in parts if body not in own), joined]

@@ -62,7 +62,7 @@ def _linework(fates: dict[int, Fate], kinds: Sorted, sheet: Sheet, parts: Parts,
     by_strand.update({index: Fate("skipped", why) for index, why in parts.marks.items()})
     by_strand.update({index: Fate("frame", why) for index, why in parts.symbols.strokes.items()})
     by_strand.update({index: Fate("frame", why) for index, why in parts.frame.items()})
-    by_strand.update(dict.fromkeys(parts.outlines.borders, Fate("skipped", "an outline that encloses whole links")))
+    by_strand.update(dict.fromkeys(parts.borders, Fate("skipped", "an outline that encloses whole links")))
     for joint in parts.unread:
         by_strand.update(dict.fromkeys(joint.strands, Fate(joint.read_as, f"{joint.what}, not read by this version")))
     by_strand.update(dict.fromkeys(sheet.ring_strands, Fate("pin", "part of a ring")))

@@ -15,6 +15,7 @@ from dxfcheck.geometry import Point, angle_between_lines, cross, parameter_on_li
 from dxfcheck.reading.landing import Landing
 from dxfcheck.reading.linework import Strand, distance_to_piece
 from dxfcheck.reading.nearness import near_pairs
+from dxfcheck.reading.outlines import inside_outline
 from dxfcheck.reading.pins import PinSite
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.tolerance import Tolerance
@@ -26,7 +27,7 @@ from dxfcheck.settings import (
     STROKE_SHORT_OF_BASE,
 )
 
-__all__ = ["FrameSymbols", "find_frame_symbols", "pins_at_corners"]
+__all__ = ["FrameSymbols", "find_frame_symbols"]
 
 STROKES_OF_A_SYMBOL = 2
 
@@ -66,8 +67,12 @@ def find_frame_symbols(sheet: Sheet, relevant: Collection[int], landings: Sequen
     reasons = {base.strand: "base line of a frame symbol with hatch strokes" for base in bases}
     hatched = _bases_along_hatches(strands, relevant, sheet.fills, sheet.pins, tolerance)
     reasons.update({base.strand: "base line with a hatch along it" for base in hatched if base.strand not in reasons})
-    for leg in _legs(strands, [*bases, *hatched], touching, landings):
-        reasons.setdefault(leg, "leg of a frame symbol")
+    lines = [*bases, *hatched]
+    legs = [
+        *_legs(strands, lines, touching, landings),
+        *_polyline_legs(strands, lines, landings, sheet.pins, tolerance),
+    ]
+    reasons.update(dict.fromkeys((leg for leg in legs if leg not in reasons), "leg of a frame symbol"))
     return FrameSymbols(frame=reasons, strokes=dict.fromkeys(strokes, "hatch stroke of a frame symbol"))
 
 
@@ -234,7 +239,7 @@ def _bases_along_hatches(
         for fill in fills
         if not fill.solid
         for outline in fill.outlines
-        if len(pins_at_corners(outline, pins, tolerance)) < 2
+        if _pins_in(outline, pins, tolerance) < 2
         for start, end in zip(outline, [*outline[1:], *outline[:1]], strict=True)
         if abs(end - start) > tolerance.close(abs(end - start))
     ]
@@ -268,13 +273,17 @@ def _lies_along(edge: tuple[Point, Point], base: Segment, tolerance: Tolerance) 
     return shared >= min(1.0, high - low) / 2
 
 
-def pins_at_corners(outline: Sequence[Point], pins: Sequence[PinSite], tolerance: Tolerance) -> list[int]:
-    """Indices of the pins whose rings hold a corner of an outline."""
-    return [
-        pin.number
-        for pin in pins
-        if any(abs(corner - pin.at) <= pin.radii[-1] + tolerance.rim(pin.radii[-1]) for corner in outline)
-    ]
+def _pins_in(outline: Sequence[Point], pins: Sequence[PinSite], tolerance: Tolerance) -> int:
+    """How many pins an outline has at its corners or inside it."""
+    left, right = min(point.real for point in outline), max(point.real for point in outline)
+    low, high = min(point.imag for point in outline), max(point.imag for point in outline)
+    found = 0
+    for pin in pins:
+        reach = pin.radii[-1] + tolerance.rim(pin.radii[-1])
+        near = left - reach <= pin.at.real <= right + reach and low - reach <= pin.at.imag <= high + reach
+        if near and (inside_outline(pin.at, outline) or any(abs(corner - pin.at) <= reach for corner in outline)):
+            found += 1
+    return found
 
 
 def _legs(
@@ -283,7 +292,7 @@ def _legs(
     touching: Touches,
     landings: Sequence[Landing],
 ) -> Iterator[int]:
-    """Lines from a base to a pin: sides of the triangle between them, whatever angle they meet the ring at."""
+    """Lines from a base to a pin: the sides of a triangle, whatever angle they meet the ring at."""
     base_strands = {base.strand for base in bases}
     landed = {(landing.strand, landing.end) for landing in landings if landing.how != "loose"}
     for landing in landings:
@@ -295,3 +304,32 @@ def _legs(
         foot = touching.at(strand.number, 1 - landing.end)
         if any(touch.strand in base_strands for touch in foot):
             yield strand.number
+
+
+def _polyline_legs(
+    strands: Sequence[Strand],
+    bases: Collection[_Base],
+    landings: Sequence[Landing],
+    pins: Sequence[PinSite],
+    tolerance: Tolerance,
+) -> Iterator[int]:
+    """Triangles of one polyline that land on a pin and have corners on a base, other than at their pins."""
+    base_strands = {base.strand for base in bases}
+    paths = [strands[number] for number in sorted({landing.strand for landing in landings} - base_strands)]
+    at_pin = {(landing.strand, landing.pin) for landing in landings if landing.how == "corner"}
+    rings: defaultdict[int, list[PinSite]] = defaultdict(list)
+    for number, pin in at_pin:
+        rings[number].append(pins[pin])
+    corners = [
+        (path.number, corner, tolerance.close(path.length))
+        for path in paths
+        for corner in path.corners
+        if not any(abs(corner - pin.at) <= pin.radii[-1] for pin in rings[path.number])
+    ]
+    if corners and bases:
+        places = np.array([corner for _, corner, _ in corners], dtype=np.complex128)
+        reach = np.array([within for _, _, within in corners])
+        starts = np.array([_piece(strands, base).start for base in bases], dtype=np.complex128)
+        ends = np.array([_piece(strands, base).end for base in bases], dtype=np.complex128)
+        on_base, _ = near_pairs(places, reach, starts, ends)
+        yield from sorted({corners[each][0] for each in on_base.tolist()})

@@ -27,6 +27,10 @@ shape tolerance, which counts only where it is frame (a belt meets a ring like t
 the ring but off its centre, which is never a landing, only a thing to report."""
 
 
+FIRMNESS: tuple[How, ...] = ("end", "corner", "through", "beside", "loose", "across")
+"""Of several pieces of a strand at one pin, the firmest landing counts."""
+
+
 class Landing(NamedTuple):
     """A strand on a pin. ``end`` is 0 or 1 for an end, else None; ``offset`` how far its aim passes the centre."""
 
@@ -128,11 +132,8 @@ def _land_inside(pin: PinSite, strand: Strand, rims: _Rims) -> Landing | None:
             return Landing(strand.number, pin.number, "corner", None, away)
         if rims.loose(away):
             return Landing(strand.number, pin.number, "loose", None, away)
-    for piece in strand.pieces:
-        landing = _land_on(pin, strand, piece, rims)
-        if landing is not None:
-            return landing
-    return None
+    found = filter(None, (_land_on(pin, strand, piece, rims) for piece in strand.pieces))
+    return min(found, key=lambda landing: FIRMNESS.index(landing.how), default=None)
 
 
 def _land_end(pin: PinSite, strand: Strand, end: int, away: float, rims: _Rims) -> Landing | None:

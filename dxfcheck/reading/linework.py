@@ -23,6 +23,7 @@ from dxfcheck.settings import CHORD_ANGLE_DEGREES
 __all__ = [
     "Linework",
     "Strand",
+    "arc_middle",
     "distance_to_piece",
     "make_linework",
     "piece_length",
@@ -91,6 +92,11 @@ def distance_to_piece(point: Point, piece: Segment | Arc) -> float:
     if turn <= piece.sweep:
         return abs(abs(out) - piece.radius)
     return min(abs(point - piece.start), abs(point - piece.end))
+
+
+def arc_middle(arc: Arc) -> Point:
+    """The point half way along an arc."""
+    return arc.centre + cmath.rect(arc.radius, arc.start_angle + arc.sweep / 2.0)
 
 
 def make_linework(primitives: Iterable[Segment | Arc | Path], frame: Collection[int]) -> Linework:

@@ -7,16 +7,14 @@ from collections import defaultdict
 from collections.abc import Iterator, Mapping, Sequence
 
 from dxfcheck.drawing.primitives import Segment
-from dxfcheck.geometry import Point, angle_between_lines, cross, dot, unit
+from dxfcheck.geometry import Point, angle_between_lines, cross, dot
+from dxfcheck.reading.arrows import find_arrows
 from dxfcheck.reading.landing import Landing
 from dxfcheck.reading.linework import Strand
 from dxfcheck.reading.pins import PinSite, PinSites
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.tolerance import Tolerance
-from dxfcheck.reading.touches import Touches
 from dxfcheck.settings import (
-    ARROW_BARB_DEGREES,
-    ARROW_BARB_OF_SHAFT,
     CROSS_ANGLE_DEGREES,
     CROSS_OVERHANG_IN_RADII,
     SHORT_OF_COINCIDENCE,
@@ -36,8 +34,7 @@ def find_marks(sheet: Sheet, among: Sequence[int], landings: Sequence[Landing]) 
         marks.setdefault(index, "a mark inside a ring")
     for index in _centre_crosses(strands, among, sites, landings, tolerance):
         marks.setdefault(index, "a centre cross")
-    landed = {(landing.strand, landing.end) for landing in landings}
-    for index in _arrows(strands, among, sheet.touching, landed):
+    for index in find_arrows(sheet, landings):
         marks.setdefault(index, "an arrow")
     return marks
 
@@ -114,46 +111,3 @@ def _just_outside(line: Strand, rings: Sequence[tuple[Point, float]]) -> bool:
 def _cross_at(one: Strand, other: Strand) -> bool:
     along, across = one.ends[1] - one.ends[0], other.ends[1] - other.ends[0]
     return angle_between_lines(along, across) >= math.radians(CROSS_ANGLE_DEGREES)
-
-
-def _arrows(
-    strands: Sequence[Strand], among: Sequence[int], touching: Touches, landed: set[tuple[int, int | None]]
-) -> Iterator[int]:
-    """Shafts with two short barbs swept back evenly from one of their ends, the barbs' far ends free."""
-    for strand in (strands[index] for index in among):
-        if not isinstance(strand.primitive, Segment):
-            continue
-        for end in (0, 1):
-            if (strand.number, end) in landed or touching.count(strand.number, end) < 2:
-                continue
-            barbs = list(_barbs(strand, end, strands, touching))
-            sides = {cross(side, barb) > 0 for side, barb in _sides(strand, end, barbs, strands)}
-            if len(barbs) == 2 and len(sides) == 2:
-                yield strand.number
-                yield from barbs
-
-
-def _barbs(shaft: Strand, end: int, strands: Sequence[Strand], touching: Touches) -> Iterator[int]:
-    tip = shaft.ends[end]
-    back = unit(shaft.ends[1 - end] - tip) if shaft.length else 0j
-    low, high = ARROW_BARB_DEGREES
-    for touch in touching.at(shaft.number, end):
-        other = strands[touch.strand]
-        if (
-            not touch.meets
-            or not isinstance(other.primitive, Segment)
-            or other.length > ARROW_BARB_OF_SHAFT * shaft.length
-        ):
-            continue
-        near = min((0, 1), key=lambda each: abs(other.ends[each] - tip))
-        swept = other.ends[1 - near] - other.ends[near]
-        free = not touching.met(other.number, 1 - near)
-        if free and dot(swept, back) > 0 and low <= math.degrees(angle_between_lines(swept, back)) <= high:
-            yield other.number
-
-
-def _sides(shaft: Strand, end: int, barbs: Sequence[int], strands: Sequence[Strand]) -> Iterator[tuple[Point, Point]]:
-    tip = shaft.ends[end]
-    for index in barbs:
-        far = max(strands[index].ends, key=lambda point: abs(point - tip))
-        yield shaft.ends[1 - end] - tip, far - tip

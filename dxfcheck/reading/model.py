@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from collections import defaultdict
 from collections.abc import Sequence
 from dataclasses import dataclass
@@ -11,9 +10,10 @@ from dxfcheck.drawing.primitives import Arc, Sketch
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Linkage
 from dxfcheck.reading.assemble import Assembled, Assembly, Named, assemble, find_assemblies
-from dxfcheck.reading.bodies import Body
+from dxfcheck.reading.body import Body
 from dxfcheck.reading.drives import Driven, drive_linkages
 from dxfcheck.reading.labels import PinNames, name_pins, natural_key
+from dxfcheck.reading.linework import arc_middle
 from dxfcheck.reading.parts import Parts
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.sorting import Sorted
@@ -150,13 +150,8 @@ def _drawn_pieces(body: int | None, bodies: Sequence[Body], sheet: Sheet) -> lis
     found: list[tuple[Point, Point]] = []
     for piece in pieces:
         if isinstance(piece, Arc):
-            middle = piece.centre + (piece.start - piece.centre) * _half_turn(piece)
+            middle = arc_middle(piece)
             found.extend(((piece.start, middle), (middle, piece.end)))
         else:
             found.append((piece.start, piece.end))
     return found
-
-
-def _half_turn(arc: Arc) -> Point:
-    """The rotation that takes an arc's start to its middle."""
-    return complex(math.cos(arc.sweep / 2), math.sin(arc.sweep / 2))

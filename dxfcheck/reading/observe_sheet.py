@@ -110,7 +110,7 @@ def _floating(sheet: Sheet, parts: Parts, model: Model) -> Iterator[Observation]
     linked = {body for assembled in model.assembled for body in assembled.bodies if body is not None}
     layers = {strands[index].primitive.source.layer for body in linked for index in bodies[body].strands}
     owned = {index for body in bodies for index in body.strands}
-    set_apart = {*parts.marks, *parts.symbols.strokes, *parts.outlines.borders, *sheet.ring_strands}
+    set_apart = {*parts.marks, *parts.symbols.strokes, *parts.borders, *sheet.ring_strands}
     set_apart.update(index for joint in parts.unread for index in joint.strands)
     loose = [
         strand

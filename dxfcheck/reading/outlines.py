@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-import math
+from collections import defaultdict
 from collections.abc import Collection, Sequence
 from dataclasses import dataclass
 
@@ -11,10 +11,11 @@ import numpy as np
 from dxfcheck.drawing.primitives import Segment
 from dxfcheck.geometry import Point
 from dxfcheck.reading.landing import Landing
-from dxfcheck.reading.linework import Strand
+from dxfcheck.reading.linework import Strand, arc_middle
 from dxfcheck.reading.pins import PinSite
+from dxfcheck.reading.shapes import Rectangle
 
-__all__ = ["Outlines", "find_outlines", "inside_outline", "outline_points"]
+__all__ = ["Outlines", "find_outlines", "inside_outline", "loose_borders", "outline_points"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -26,27 +27,61 @@ class Outlines:
 
 
 def find_outlines(
-    strands: Sequence[Strand], landings: Sequence[Landing], pins: Sequence[PinSite], frame: Collection[int]
+    strands: Sequence[Strand],
+    apart: Collection[int],
+    landings: Sequence[Landing],
+    pins: Sequence[PinSite],
+    frame: Collection[int],
 ) -> Outlines:
-    """Look into every closed strand with no pin at its corners or on its sides."""
-    on_pins = {landing.strand for landing in landings if landing.how != "across"}
-    closed = [strand for strand in strands if strand.closed and strand.number not in on_pins]
-    if not closed or not pins:
-        return Outlines(borders=frozenset(), held=())
-    linked = [strands[index] for index in sorted(on_pins) if not strands[index].closed and index not in frame]
-    first_ends = np.array([strand.ends[0] for strand in linked], dtype=np.complex128)
+    """Look into every closed strand; ``apart`` are strands used up otherwise (as rings, as the sides of bars)."""
+    pins_of: defaultdict[int, set[int]] = defaultdict(set)
+    for landing in landings:
+        if landing.how != "across":
+            pins_of[landing.strand].add(landing.pin)
+    closed = {
+        strand.number: outline_points(strand) for strand in strands if strand.closed and strand.number not in apart
+    }
     places = np.array([pin.at for pin in pins], dtype=np.complex128)
-    borders: set[int] = set()
     held: list[Landing] = []
-    for strand in closed:
-        outline = outline_points(strand)
-        inside = _inside_box(first_ends, outline)
-        if any(_encloses(outline, linked[index]) for index in inside):
-            borders.add(strand.number)
-            continue
-        within = [index for index in _inside_box(places, outline) if inside_outline(pins[index].at, outline)]
-        held.extend(Landing(strand.number, index, "corner", None, 0.0) for index in within)
-    return Outlines(borders=frozenset(borders), held=tuple(held))
+    for number, outline in closed.items():
+        if not pins_of[number]:
+            within = [pin for pin in _inside_box(places, outline) if inside_outline(pins[pin].at, outline)]
+            held.extend(Landing(number, pin, "corner", None, 0.0) for pin in within)
+            pins_of[number].update(within)
+    links = [strands[number] for number in sorted(pins_of) if len(pins_of[number]) > 1 and number not in frame]
+    starts = np.array([_first_point(strand) for strand in links], dtype=np.complex128)
+    on_pins = {landing.strand for landing in landings if landing.how != "across"}
+    borders = frozenset(
+        number
+        for number, outline in closed.items()
+        if number not in on_pins
+        and any(
+            links[each].number != number and _encloses(outline, links[each]) for each in _inside_box(starts, outline)
+        )
+    )
+    return Outlines(borders=borders, held=tuple(landing for landing in held if landing.strand not in borders))
+
+
+def _first_point(strand: Strand) -> Point:
+    return strand.ends[0] if strand.ends else strand.pieces[0].start
+
+
+def loose_borders(
+    rectangles: Sequence[Rectangle], landings: Sequence[Landing], pins: Sequence[PinSite], frame: Collection[int]
+) -> frozenset[int]:
+    """The lines of rectangles of four loose lines that enclose whole links and end on no pin: sheet borders."""
+    pins_of: defaultdict[int, set[int]] = defaultdict(set)
+    for landing in landings:
+        if landing.how != "across":
+            pins_of[landing.strand].add(landing.pin)
+    links = [held for number, held in pins_of.items() if len(held) > 1 and number not in frame]
+    return frozenset(
+        line
+        for rectangle in rectangles
+        if len(rectangle.strands) == 4 and not any(pins_of.get(line) for line in rectangle.strands)
+        if any(all(inside_outline(pins[pin].at, rectangle.corners) for pin in held) for held in links)
+        for line in rectangle.strands
+    )
 
 
 def _inside_box(points: np.typing.NDArray[np.complex128], outline: Sequence[Point]) -> list[int]:
@@ -60,26 +95,18 @@ def _inside_box(points: np.typing.NDArray[np.complex128], outline: Sequence[Poin
 
 
 def _encloses(outline: Sequence[Point], strand: Strand) -> bool:
-    return all(inside_outline(point, outline) for point in (*strand.ends, *strand.corners))
+    return all(inside_outline(point, outline) for piece in strand.pieces for point in (piece.start, piece.end))
 
 
 def outline_points(strand: Strand) -> list[Point]:
     """The outline of a closed strand as a polygon; arcs by their ends and middles, in the order of its pieces."""
     points: list[Point] = []
     for piece in strand.pieces:
-        if isinstance(piece, Segment):
-            run = [piece.start, piece.end]
-        else:
-            middle = piece.centre + (piece.start - piece.centre) * _turn(piece.sweep / 2)
-            run = [piece.start, middle, piece.end]
+        run = [piece.start, *([] if isinstance(piece, Segment) else [arc_middle(piece)]), piece.end]
         if points and abs(run[-1] - points[-1]) < abs(run[0] - points[-1]):
             run.reverse()
         points.extend(run)
     return points
-
-
-def _turn(angle: float) -> Point:
-    return complex(math.cos(angle), math.sin(angle))
 
 
 def inside_outline(point: Point, outline: Sequence[Point]) -> bool:

@@ -17,7 +17,8 @@ from dxfcheck.reading.bodies import Bodies, make_bodies
 from dxfcheck.reading.frame import FrameSymbols, find_frame_symbols
 from dxfcheck.reading.landing import Landing
 from dxfcheck.reading.marks import find_marks
-from dxfcheck.reading.outlines import Outlines, find_outlines
+from dxfcheck.reading.nearness import near_pairs
+from dxfcheck.reading.outlines import find_outlines, loose_borders
 from dxfcheck.reading.shapes import find_obrounds, find_rectangles
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.sorting import Sorted
@@ -28,10 +29,10 @@ __all__ = ["Parts", "find_parts"]
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Parts:
-    """What the linework was read as: marks, outlines, frame, joints not read, bodies."""
+    """What the linework was read as: marks, borders round whole links, frame, joints not read, bodies."""
 
     marks: Mapping[int, str]
-    outlines: Outlines
+    borders: frozenset[int]
     symbols: FrameSymbols
     frame: Mapping[int, str]
     unread: tuple[UnreadJoint, ...]
@@ -47,19 +48,21 @@ def find_parts(kinds: Sorted, sheet: Sheet) -> Parts:
         for number, (index, _) in enumerate(kinds.lines)
         if index in kinds.frame_lines
     }
-    free = [strand for strand in strands if strand.number not in sheet.ring_strands]
-    outlines = find_outlines(free, sheet.landings.landings, pins, by_layer)
     obrounds = find_obrounds(strands, sheet.touching) if pins else []
     rectangles = find_rectangles(sheet.linework, sheet.touching, pins, tolerance) if pins else []
     bars = list(bars_of(obrounds, pins, tolerance))
+    in_bars = {strand for bar, _ in bars for strand in bar.strands}
+    of_bars = [Landing(bar.strands[0], site, "corner", None, 0.0) for bar, sites in bars for site in sites]
+    known = [*sheet.landings.landings, *of_bars]
+    outlines = find_outlines(strands, in_bars | sheet.ring_strands, known, pins, by_layer)
     unread = (
-        *blocks_of(rectangles, pins),
+        *blocks_of([each for each in rectangles if by_layer.keys().isdisjoint(each.strands)], pins),
         *slots_of(obrounds, pins),
         *pitch_circles_of(kinds.pitch_rings, pins, tolerance),
     )
-    landings = [*sheet.landings.landings, *outlines.held]
-    landings.extend(Landing(bar.strands[0], site, "corner", None, 0.0) for bar, sites in bars for site in sites)
-    apart = {*outlines.borders, *sheet.ring_strands, *(strand for joint in unread for strand in joint.strands)}
+    landings = [*known, *outlines.held]
+    borders = outlines.borders | loose_borders(rectangles, known, pins, by_layer)
+    apart = {*borders, *sheet.ring_strands, *(strand for joint in unread for strand in joint.strands)}
     landings = [landing for landing in landings if landing.strand not in apart]
     reached = _reached(landings, [disc.ring for disc in sheet.sites.discs], sheet, apart)
     marks = find_marks(sheet, reached, landings)
@@ -71,7 +74,7 @@ def find_parts(kinds: Sorted, sheet: Sheet) -> Parts:
     bodies = make_bodies(sheet, active, landings, known_frame, [bar.strands for bar, _ in bars])
     return Parts(
         marks=marks,
-        outlines=outlines,
+        borders=borders,
         symbols=symbols,
         frame=frame,
         unread=unread,
@@ -98,8 +101,20 @@ def _reached(landings: Iterable[Landing], discs: Sequence[Ring], sheet: Sheet, a
     seen: set[int] = set(apart)
     reached = _spread(waiting, beside, seen)
     for _ in range(FRINGES):
-        reached.extend(_spread([near for number in reached for near in close.of(number)], beside, seen))
+        nearby = [near for number in reached for near in close.of(number)]
+        nearby.extend(_under_corners(sheet, reached))
+        reached.extend(_spread(nearby, beside, seen))
     return sorted(reached)
+
+
+def _under_corners(sheet: Sheet, reached: Sequence[int]) -> list[int]:
+    """Lines that corners of reached polylines lie on: the base line under a triangle drawn in one piece."""
+    paths = [sheet.strands[number] for number in reached if sheet.strands[number].corners]
+    corners = np.array([corner for path in paths for corner in path.corners], dtype=np.complex128)
+    reach = np.array([sheet.tolerance.close(path.length) for path in paths for _ in path.corners])
+    _, pieces = near_pairs(corners, reach, sheet.linework.piece_starts, sheet.linework.piece_ends)
+    found: list[int] = np.unique(sheet.linework.piece_strand[pieces]).tolist()
+    return found
 
 
 FRINGES = 2

@@ -17,7 +17,12 @@ from dxfcheck.reading.roles import frame_reason
 from dxfcheck.reading.tolerance import Tolerance
 from dxfcheck.reading.touches import Touches
 from dxfcheck.reading.unions import Unions
-from dxfcheck.settings import DISC_OFFSET_OF_RADIUS, ROUND_LOOP_PIECES, STACKED_OF_RADIUS
+from dxfcheck.settings import (
+    DISC_OFFSET_OF_RADIUS,
+    ROUND_LOOP_LIKENESS,
+    ROUND_LOOP_PIECES,
+    STACKED_OF_RADIUS,
+)
 
 __all__ = ["Disc", "PinSite", "PinSites", "find_pins", "rings_of_arcs", "rings_of_lines"]
 
@@ -41,7 +46,10 @@ class PinSite(NamedTuple):
 
 
 class Disc(NamedTuple):
-    """A ring that holds other pins off its centre: a crank plate, an eccentric; ``holds`` are indices of pin sites."""
+    """A ring that holds other pins off its centre: a crank plate, an eccentric.
+
+    ``holds`` are indices of pin sites, the one on its own centre among them.
+    """
 
     ring: Ring
     holds: tuple[int, ...]
@@ -107,16 +115,22 @@ def rings_of_lines(linework: Linework, touching: Touches, tolerance: Tolerance) 
 
 
 def _round_neighbours(linework: Linework, touching: Touches) -> dict[int, tuple[int, int]]:
-    """The one neighbour at each end of those lines that meet just one line there, turning no more than a ring's do."""
+    """The one neighbour at each end of a line that is about as long and turns no more than the sides of a ring do.
+
+    A link that ends on the loop, or a base line that touches it, is none.
+    """
     along = linework.line_directions()
     ends, targets, _, meets = touching.as_pairs()
     ends, targets = ends[meets], targets[meets]
-    count = np.bincount(ends, minlength=2 * along.size)
     own, other = along[ends // 2], along[targets]
     with np.errstate(divide="ignore", invalid="ignore"):
         turn = np.abs(np.angle(own / other))
+        longer = np.abs(own) / np.abs(other)
     sharpest = 1.5 * math.tau / ROUND_LOOP_PIECES
-    gentle = (np.minimum(turn, math.pi - turn) <= sharpest) & (count[ends] == 1)
+    alike = (longer <= ROUND_LOOP_LIKENESS) & (longer >= 1.0 / ROUND_LOOP_LIKENESS)
+    gentle = (np.minimum(turn, math.pi - turn) <= sharpest) & alike
+    count = np.bincount(ends[gentle], minlength=2 * along.size)
+    gentle &= count[ends] == 1
     neighbour = np.full(2 * along.size, -1, dtype=np.int64)
     neighbour[ends[gentle]] = targets[gentle]
     pairs = neighbour.reshape(-1, 2)
@@ -164,8 +178,8 @@ def find_pins(rings: Sequence[Ring], tolerance: Tolerance) -> PinSites:
             radii = tuple([ring.radius for ring in kept])
             pins.append(PinSite(len(pins), kept[0].centre, radii, tuple(kept), frame))
     discs = [
-        Disc(ring, tuple(sorted(site_of_group[held] for held in holds[id(ring)] if held in site_of_group)))
-        for group in groups
+        Disc(ring, tuple(sorted(site_of_group[held] for held in (number, *holds[id(ring)]) if held in site_of_group)))
+        for number, group in enumerate(groups)
         for ring in group
         if id(ring) in holds
     ]

@@ -9,10 +9,12 @@ from dxfcheck.reading.account import make_account
 from dxfcheck.reading.evidence import linkage_evidence
 from dxfcheck.reading.fates import fates_of
 from dxfcheck.reading.model import Model, make_model
-from dxfcheck.reading.observe import Seen, observe_linework
+from dxfcheck.reading.observe_ends import observe_ends
+from dxfcheck.reading.observe_lines import observe_lines
 from dxfcheck.reading.observe_sheet import observe_sheet
 from dxfcheck.reading.parts import Parts, find_parts
 from dxfcheck.reading.reading import Reading
+from dxfcheck.reading.seen import Seen
 from dxfcheck.reading.sheet import Sheet, lay_out
 from dxfcheck.reading.sorting import sort_primitives
 from dxfcheck.reading.tolerance import tolerance_for
@@ -32,9 +34,11 @@ def read_linkages(sketch: Sketch, settings: Settings, *, with_evidence: bool = T
     sheet = lay_out(kinds, tolerance)
     parts = find_parts(kinds, sheet)
     model = make_model(sketch, settings, kinds, sheet, parts)
+    seen = _seen(sheet, parts, model)
     observations = (
         *observe_sheet(sketch, sheet, parts, model),
-        *observe_linework(_seen(sheet, parts, model)),
+        *observe_ends(seen),
+        *observe_lines(seen),
         *model.driven.observations,
     )
     return Reading(
@@ -54,7 +58,8 @@ def _seen(sheet: Sheet, parts: Parts, model: Model) -> Seen:
         for body, link in zip(each.bodies, each.linkage.links, strict=True)
         if body is not None
     ]
-    drawn = sorted(strand for body, _, _ in owners for strand in parts.bodies.bodies[body].strands)
+    drawn = sorted(strand for body in parts.bodies.bodies if not body.frame for strand in body.strands)
+    shapes = (strand for joint in parts.unread for strand in joint.strands)
     return Seen(
         strands=sheet.strands,
         gaps=find_touches(sheet.linework, sheet.tolerance, sheet.tolerance.missing, drawn),
@@ -67,6 +72,7 @@ def _seen(sheet: Sheet, parts: Parts, model: Model) -> Seen:
         pin_names=dict(model.names.names),
         body_of={strand: number for number, body in enumerate(parts.bodies.bodies) for strand in body.strands},
         shared=frozenset(site for site, count in bodies_at.items() if count > 1),
+        idle=frozenset({*parts.marks, *parts.symbols.strokes, *parts.borders, *sheet.ring_strands, *shapes}),
         handles=model.strand_handles,
         tolerance=sheet.tolerance,
     )

@@ -36,6 +36,14 @@ class Tolerance(NamedTuple):
         """
         return max(self.t, min(self.shape, SHAPE_OF_SIZE * size))
 
+    def arc(self, radius: float, size: float) -> float:
+        """How far from an arc an end of a line of this length may lie and still meet it.
+
+        2 % of the radius, but on no account much of the line itself: corner and hatch strokes beside a wide curved
+        link are not welded to it.
+        """
+        return max(self.t, min(self.rim(radius), ARC_REACH_IN_SHAPES * self.shape, SHAPE_OF_SIZE * size))
+
     def missing(self, size: float) -> float:
         """How far an end of a line of this length may stop short of what it was meant to meet."""
         return max(self.t, min(self.gap, GAP_OF_SIZE * size))
@@ -43,10 +51,6 @@ class Tolerance(NamedTuple):
     def rim(self, radius: float) -> float:
         """How far from a rim of this radius an end may lie and still be on it."""
         return max(self.t, RIM_OF_RADIUS * radius)
-
-    def arc(self, radius: float) -> float:
-        """How far from an arc of this radius an end may lie and still meet it."""
-        return min(self.rim(radius), max(self.t, ARC_REACH_IN_SHAPES * self.shape))
 
 
 def tolerance_for(diagonal: float, settings: Settings) -> Tolerance:

@@ -85,8 +85,8 @@ def find_touches(
 ) -> Touches:
     """What lies near each end (of the strands ``among``, or of all); ``within`` gives the reach for a strand's length.
 
-    The reach of a large arc is bounded (Tolerance.arc), or a wide curved link would catch ends that have nothing to
-    do with it. Cost near-linear in the number of strands.
+    An end meets an arc within Tolerance.arc, which is bounded by its own line's length, or a wide curved link would
+    catch ends that have nothing to do with it. Cost near-linear in the number of strands.
     """
     strands = linework.strands
     looked = strands if among is None else [strands[number] for number in among]
@@ -132,7 +132,8 @@ def _on_arcs(
     }
     sagitta = 1.0 - math.cos(math.radians(CHORD_ANGLE_DEGREES) / 2.0)
     radius = max(arc.radius for each in arcs.values() for arc in each)
-    widest = max(float(reach.max()), tolerance.arc(radius)) + sagitta * radius
+    lengths = [linework.strands[number].length for number in (numbers // 2).tolist()]
+    widest = max(float(reach.max()), tolerance.arc(radius, max(lengths))) + sagitta * radius
     which, chord = near_pairs(points, np.full(points.size, widest), linework.chord_starts, linework.chord_ends)
     found = []
     for place, target in sorted(set(zip(which.tolist(), linework.chord_strand[chord].tolist(), strict=True))):
@@ -141,6 +142,7 @@ def _on_arcs(
             continue
         point = complex(points[place])
         gap, arc = min(((distance_to_piece(point, arc), arc) for arc in arcs[target]), key=lambda pair: pair[0])
-        if gap <= max(float(reach[place]), tolerance.arc(arc.radius)):
-            found.append((number, Touch(target, gap, gap <= tolerance.arc(arc.radius))))
+        meets = gap <= tolerance.arc(arc.radius, lengths[place])
+        if meets or gap <= reach[place]:
+            found.append((number, Touch(target, gap, meets)))
     return found

@@ -75,7 +75,8 @@ def off_centre_end(subject: RuleSubject) -> Iterator[Finding]:
     """Ends and lines that pass the centre of the pin they are on."""
     for seen in _observed(subject, "off-centre-end"):
         amount = length(seen.amount or 0.0, subject.sketch.unit)
-        subject_text = _of_link(seen) if "points" in seen.detail else f"link {seen.subject}"
+        line = f"link {seen.subject}" if seen.subject else "a frame line"
+        subject_text = _of_link(seen) if "points" in seen.detail else line
         message = f"{subject_text} {seen.detail.format(amount=amount)}"
         yield _finding(seen, "warning", message, "draw the line on the pin's centre, or move the ring onto the line")
 
@@ -108,15 +109,18 @@ def loose_end(subject: RuleSubject) -> Iterator[Finding]:
     "warning",
     "A line drawn twice",
     family="linework",
-    looks_for="Lines that lie on one another between the same two pins, or with the same two ends in one link.",
-    matters="Read as two links, they would make the count one less than it is; they are read as one, but the next "
-    "program may not do so.",
+    looks_for="Linework that lies on other linework between the same pins, or with the same two ends in one link. It "
+    "is read once. Where it lies only nearly on the other, by less than the pin's radius, they are read as two links.",
+    matters="Read as two links, they make the count one less than it is; the next program may read them so.",
     remedy="Delete one of the two.",
 )
 def double_line(subject: RuleSubject) -> Iterator[Finding]:
     """Repeated lines of links."""
     for seen in _observed(subject, "double-line"):
         message = f"a line of link {seen.subject} is drawn twice; it is read once"
+        if seen.amount is not None:
+            apart = length(seen.amount, subject.sketch.unit)
+            message = f"link {seen.subject} lies within {apart} of another between the same pins; read as two links"
         yield _finding(seen, "warning", message, f"delete one of the two ({', '.join(seen.handles)})")
 
 

@@ -127,6 +127,13 @@ def test_strokes_of_one_symbol_are_parallel_and_on_one_side() -> None:
     assert fixed(*PLAIN, *TRIANGLE, one, above._replace(handle="above")) == ["D"]
 
 
+@pytest.mark.parametrize(("angle", "fixes"), [(47.9, True), (48.1, False)])
+def test_strokes_are_parallel_within_three_degrees(angle: float, fixes: bool) -> None:  # noqa: FBT001
+    one = strokes(A - 12j - 6, count=1)
+    other = [stroke._replace(handle="other") for stroke in strokes(A - 12j + 6, count=1, angle=angle)]
+    assert ("A" in fixed(*PLAIN, *TRIANGLE, *one, *other)) is fixes
+
+
 def test_strokes_may_differ_in_length_as_a_clipped_hatch_does() -> None:
     clipped = [line(A - 12j + x, A - 12j + x - reach * (1 + 1j), handle="") for x, reach in ((-8, 2), (0, 4), (8, 3))]
     assert fixed(*PLAIN, *TRIANGLE, *clipped) == ["A", "D"]

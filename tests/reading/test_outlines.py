@@ -3,7 +3,7 @@ from __future__ import annotations
 import pytest
 
 from dxfcheck.reading.outlines import inside_outline
-from tests.sketches import A, B, C, D, Drawn, labels, links, obround, path, pins, read_as, ring, rod, rods, tipper
+from tests.sketches import A, B, C, D, Drawn, labels, links, obround, path, pins, read_as, ring, rod, tipper
 
 E = 90 + 110j
 WITHOUT_COUPLER = (*pins(), rod(A, B), rod(C, D), *labels())
@@ -81,7 +81,3 @@ NOTCHED = [0j, 10 + 0j, 10 + 10j, 5 + 2j, 10j]
 )
 def test_what_lies_inside_an_outline(outline: list[complex], point: complex, inside: bool) -> None:  # noqa: FBT001
     assert inside_outline(point, outline) is inside
-
-
-def test_the_links_of_the_builder_are_lines_between_pins() -> None:
-    assert len(rods()) == 3

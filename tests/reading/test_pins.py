@@ -41,7 +41,8 @@ def test_rings_further_apart_than_t_are_two_pins_stacked_on_one_another() -> Non
 
 
 @pytest.mark.parametrize(
-    ("apart", "stacked"), [pytest.param(3.9, 1, id="within the greater radius"), pytest.param(4.1, 0, id="beyond")]
+    ("apart", "stacked"),
+    [pytest.param(5.9, 1, id="within one and a half times the greater radius"), pytest.param(6.1, 0, id="beyond")],
 )
 def test_how_near_two_pins_stand_on_one_another(apart: float, stacked: int) -> None:
     assert len(pins((0j, 4.0), (complex(apart, 0), 3.0)).stacked) == stacked
@@ -53,6 +54,12 @@ def test_a_ring_that_holds_another_pin_off_its_centre_is_a_disc() -> None:
     assert disc.ring.radius == 30.0
     assert [sites.pins[index].at for index in disc.holds] == [20 + 0j, -20 + 0j]
     assert [pin.at for pin in sites.pins] == [20 + 0j, -20 + 0j, 60 + 0j]
+
+
+@pytest.mark.parametrize(("off", "discs", "stacked"), [(7.4, 0, 1), (7.6, 1, 0)])
+def test_rings_nearly_on_one_centre_were_meant_to_be_and_make_no_disc(off: float, discs: int, stacked: int) -> None:
+    sites = pins((0j, 30.0), (complex(off, 0), 10.0))
+    assert (len(sites.discs), len(sites.stacked)) == (discs, stacked)
 
 
 def test_a_ring_that_holds_another_in_part_is_no_disc() -> None:

@@ -89,7 +89,12 @@ def test_lines_that_cross_like_a_hash_are_no_rectangle() -> None:
 def drawn_in_four(one: complex, other: complex, radius: float) -> list[Drawn]:
     """An obround along +x of two lines and two half arcs."""
     up = radius * 1j
-    return [line(one - up, other - up), arc(other, radius, 270, 180), line(other + up, one + up), arc(one, radius, 90, 180)]
+    return [
+        line(one - up, other - up),
+        arc(other, radius, 270, 180),
+        line(other + up, one + up),
+        arc(one, radius, 90, 180),
+    ]
 
 
 def test_an_obround_of_one_polyline_and_one_of_four_pieces() -> None:

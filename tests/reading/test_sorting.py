@@ -44,7 +44,7 @@ def test_other_linetypes_are_links_like_any(linetype: str) -> None:
 )
 def test_construction_layers_are_skipped_without_regard_to_case(layer: str) -> None:
     kinds = sort_primitives(sketch(line(0j, 1 + 0j, layer=layer), ring(0j, layer=layer)))
-    assert kinds.lines == kinds.rings == ()
+    assert (kinds.lines, kinds.rings) == ((), ())
     assert all(layer in kinds.skipped[index].why for index in (0, 1))
 
 

@@ -64,4 +64,8 @@ def test_how_far_short_an_end_may_stop_and_be_told_of(length: float, within: flo
     ],
 )
 def test_how_near_an_arc_an_end_must_be_to_meet_it(radius: float, within: float) -> None:
-    assert SHEET.arc(radius) == pytest.approx(within)
+    assert SHEET.arc(radius, 1000.0) == pytest.approx(within)
+
+
+def test_a_short_stroke_meets_an_arc_only_within_a_small_part_of_itself() -> None:
+    assert SHEET.arc(50.0, 10.0) == pytest.approx(0.3)

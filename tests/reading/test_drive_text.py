@@ -1,0 +1,207 @@
+from __future__ import annotations
+
+import math
+
+import pytest
+
+from dxfcheck.errors import OptionInvalid
+from dxfcheck.reading.drive_text import find_statement, parse_drive
+
+RPM = math.tau / 60
+
+
+@pytest.mark.parametrize(
+    ("note", "rate"),
+    [
+        ("ω = 10 rad/s", 10.0),
+        ("ω=10rad/s", 10.0),
+        ("Ω = 10 rad/s", 10.0),
+        ("omega = 10 rad/s", 10.0),
+        ("w = 10 rad/sec", 10.0),
+        ("n = 60 r/min", 60 * RPM),
+        ("n = 120 rpm", 120 * RPM),
+        ("N = 120 RPM", 120 * RPM),
+        ("n = 120 rev/min", 120 * RPM),
+        ("n = 120 1/min", 120 * RPM),
+        ("n = 120 min-1", 120 * RPM),
+        ("n = 120 min^-1", 120 * RPM),
+        ("n = 120 min⁻¹", 120 * RPM),
+        ("n = 120 U/min", 120 * RPM),
+        ("ω = 90 deg/s", math.pi / 2),
+        ("ω = 90°/s", math.pi / 2),
+        ("ω = 3 1/s", 3.0),
+        ("ω = 3 s⁻¹", 3.0),
+        ("n = 3 1/s", 3 * math.tau),
+        ("n = 3 s-1", 3 * math.tau),
+        ("input: n = 30 rpm (see sheet 2)", 30 * RPM),
+        ("ω\n= 10 rad/s", 10.0),
+    ],
+)
+def test_a_turning_speed_as_people_write_it(note: str, rate: float) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert (statement.kind, statement.name, statement.doubt) == ("turn", None, None)
+    assert statement.rate == pytest.approx(rate)
+
+
+@pytest.mark.parametrize(
+    ("number", "value"),
+    [
+        ("1.5", 1.5),
+        ("1,5", 1.5),
+        (".5", 0.5),
+        (",5", 0.5),
+        ("5.", 5.0),
+        ("3e2", 300.0),
+        ("2.5E-1", 0.25),
+        ("+3", 3.0),
+        ("-3", -3.0),
+        ("- 3", -3.0),
+        ("−3", -3.0),
+        ("0", 0.0),
+    ],
+)
+def test_numbers_with_decimal_comma_exponent_and_either_minus(number: str, value: float) -> None:
+    statement = find_statement(f"ω = {number} rad/s")
+    assert statement is not None
+    assert statement.rate == pytest.approx(value)
+
+
+@pytest.mark.parametrize("word", ["cw", "CW", "clockwise", "Clockwise", "↻", "(cw)", ", cw"])
+def test_clockwise_is_negative(word: str) -> None:
+    statement = find_statement(f"n = 120 rpm {word}")
+    assert statement is not None
+    assert statement.rate == pytest.approx(-120 * RPM)
+
+
+@pytest.mark.parametrize(
+    "word", ["", "ccw", "CCW", "counter-clockwise", "counterclockwise", "anticlockwise", "acw", "↺", "(ccw)"]
+)
+def test_counter_clockwise_is_positive_and_meant_where_nothing_is_said(word: str) -> None:
+    statement = find_statement(f"n = 120 rpm {word}")
+    assert statement is not None
+    assert statement.rate == pytest.approx(120 * RPM)
+
+
+@pytest.mark.parametrize(
+    ("note", "name"),
+    [
+        ("ω_AB = 4 rad/s ccw", "AB"),
+        ("ωAB = 4 rad/s", "AB"),
+        ("ω AB = 4 rad/s", "AB"),
+        ("ω_{AB} = 4 rad/s", "AB"),
+        ("ω(AB) = 4 rad/s", "AB"),
+        ("ω_A-B = 4 rad/s", "A-B"),
+        ("ω_A–B = 4 rad/s", "A-B"),
+        ("ω_O2A' = 4 rad/s", "O2A'"),
+        ("n_2 = 4 rpm", "2"),
+        ("n2 = 4 rpm", "2"),
+    ],
+)
+def test_a_link_is_named_by_its_subscript(note: str, name: str) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert statement.name == name
+
+
+@pytest.mark.parametrize(
+    ("note", "rate"),
+    [
+        ("v = 0.2 m/s", 0.2),
+        ("v = 20 mm/s", 0.02),
+        ("v = 20 cm/s", 0.2),
+        ("v = 3 m/min", 0.05),
+        ("v = 10 in/s", 0.254),
+        ("v = 1 ft/s", 0.3048),
+    ],
+)
+def test_a_sliding_speed_comes_in_metres_a_second(note: str, rate: float) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert statement.kind == "slide"
+    assert statement.rate == pytest.approx(rate)
+
+
+@pytest.mark.parametrize(
+    ("note", "doubt"),
+    [
+        ("ω = -4 rad/s cw", "minus sign"),
+        ("n = −60 rpm ccw", "minus sign"),
+        ("v = 3 rad/s", "does not go with that unit"),
+        ("ω = 3 m/s", "does not go with that unit"),
+        ("n = 3 mm/s", "does not go with that unit"),
+        ("v = 20 mm/s cw", "has no sense"),
+        ("ω = 1e999 rad/s", "finite"),
+    ],
+)
+def test_a_note_that_contradicts_itself_is_in_doubt(note: str, doubt: str) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert statement.doubt is not None
+    assert doubt in statement.doubt
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "",
+        "A",
+        "AB = 120",
+        "AB = 120 mm",
+        "scale 1:2",
+        "n = 12",
+        "ω = rad/s",
+        "tension = 3 rpm",
+        "α = 3 rad/s2",
+        "ω = 10 rad/s²",
+        "M8 x 20",
+        "n rpm",
+        "= 3 rpm",
+        "\ufffd\ufffd",
+    ],
+)
+def test_texts_that_state_no_drive(text: str) -> None:
+    assert find_statement(text) is None
+
+
+def test_the_statement_keeps_its_text_on_one_line() -> None:
+    statement = find_statement("ω_AB\n  = 4  rad/s")
+    assert statement is not None
+    assert statement.text == "ω_AB = 4 rad/s"
+
+
+@pytest.mark.parametrize(
+    ("option", "name", "rate"),
+    [
+        ("A-B = 10 rad/s ccw", "A-B", 10.0),
+        ("AB=10 rad/s", "AB", 10.0),
+        ("A−B = 120 rpm cw", "A-B", -120 * RPM),
+        ("B-C-E = 1,5 rad/s", "B-C-E", 1.5),
+        ("A-B (2) = 3 1/s", "A-B (2)", 3.0),
+    ],
+)
+def test_an_option_names_a_link_and_a_speed(option: str, name: str, rate: float) -> None:
+    statement = parse_drive(option)
+    assert (statement.name, statement.kind) == (name, "turn")
+    assert statement.rate == pytest.approx(rate)
+
+
+@pytest.mark.parametrize(
+    ("option", "reason"),
+    [
+        ("A-B", "names no link"),
+        ("= 3 rad/s", "names no link"),
+        ("", "names no link"),
+        ("A-B = 3", "no speed with a unit"),
+        ("A-B = fast", "no speed with a unit"),
+        ("A-B = 3 rad/s junk", "no speed with a unit"),
+        ("A-B = 3 rad/s = 4 rad/s", "no speed with a unit"),
+        ("A-B = -3 rad/s cw", "minus sign"),
+        ("A-B = 1e999 rad/s", "finite"),
+    ],
+)
+def test_an_option_that_cannot_be_used_says_why_and_shows_how(option: str, reason: str) -> None:
+    with pytest.raises(OptionInvalid, match=reason) as caught:
+        parse_drive(option)
+    assert repr(option) in str(caught.value)
+    assert "write for instance" in str(caught.value)
