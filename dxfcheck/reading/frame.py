@@ -19,7 +19,7 @@ from dxfcheck.reading.outlines import inside_outline
 from dxfcheck.reading.pins import PinSite
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.tolerance import Tolerance
-from dxfcheck.reading.touches import Touch, Touches
+from dxfcheck.reading.touches import Touch
 from dxfcheck.settings import (
     STROKE_ANGLES_DEGREES,
     STROKE_OF_BASE,
@@ -48,31 +48,36 @@ class _Base(NamedTuple):
 
 
 class _Stroke(NamedTuple):
-    """A line that may be a hatch stroke of a base: on which side, and in which direction away from it."""
+    """A line that may be a hatch stroke of a base: on which side, and in which direction away from it.
+
+    One whose far end lies on a pin is not ``firm``: it counts only beside others that are.
+    """
 
     strand: int
     base: _Base
     side: bool
     direction: Point
+    firm: bool
 
 
 def find_frame_symbols(sheet: Sheet, relevant: Collection[int], landings: Sequence[Landing]) -> FrameSymbols:
     """Frame symbols among the linework that hangs together with pins (``relevant`` strands)."""
-    strands, touching, tolerance = sheet.strands, sheet.touching, sheet.tolerance
+    strands, tolerance = sheet.strands, sheet.tolerance
     landed = {(landing.strand, landing.end) for landing in landings}
-    standing = _strokes_on_bases(strands, relevant, touching, landed, tolerance)
+    standing = _strokes_on_bases(sheet, relevant, landed)
     bases, strokes = _accept(strands, standing, {})
-    loose = _loose_strokes(strands, relevant, strokes, touching, landed)
+    loose = _loose_strokes(sheet, relevant, bases, strokes, landed)
     bases, strokes = _accept(strands, loose, strokes, bases)
     reasons = {base.strand: "base line of a frame symbol with hatch strokes" for base in bases}
     hatched = _bases_along_hatches(strands, relevant, sheet.fills, sheet.pins, tolerance)
     reasons.update({base.strand: "base line with a hatch along it" for base in hatched if base.strand not in reasons})
     lines = [*bases, *hatched]
     legs = [
-        *_legs(strands, lines, touching, landings),
+        *_legs(sheet, lines, landings),
         *_polyline_legs(strands, lines, landings, sheet.pins, tolerance),
     ]
-    reasons.update(dict.fromkeys((leg for leg in legs if leg not in reasons), "leg of a frame symbol"))
+    new = (leg for leg in legs if leg not in reasons and leg not in strokes)
+    reasons.update(dict.fromkeys(new, "leg of a frame symbol"))
     return FrameSymbols(frame=reasons, strokes=dict.fromkeys(strokes, "hatch stroke of a frame symbol"))
 
 
@@ -82,7 +87,7 @@ def _piece(strands: Sequence[Strand], base: _Base) -> Segment:
     return piece
 
 
-def _as_stroke(strands: Sequence[Strand], index: int, base: _Base, near: int) -> _Stroke | None:
+def _as_stroke(strands: Sequence[Strand], index: int, base: _Base, near: int, *, firm: bool) -> _Stroke | None:
     """A line as a stroke of a base by its angle and length, its end ``near`` being the one at the base."""
     line, piece = strands[index], _piece(strands, base)
     along = piece.end - piece.start
@@ -91,34 +96,37 @@ def _as_stroke(strands: Sequence[Strand], index: int, base: _Base, near: int) ->
     fits = low <= math.degrees(angle_between_lines(direction, along)) <= high
     if not fits or abs(direction) > STROKE_OF_BASE * abs(along):
         return None
-    return _Stroke(index, base, cross(along, direction) > 0, direction)
+    return _Stroke(index, base, cross(along, direction) > 0, direction, firm)
 
 
 def _strokes_on_bases(
-    strands: Sequence[Strand],
-    candidates: Iterable[int],
-    touching: Touches,
-    landed: Collection[tuple[int, int | None]],
-    tolerance: Tolerance,
+    sheet: Sheet, candidates: Iterable[int], landed: Collection[tuple[int, int | None]]
 ) -> Iterator[_Stroke]:
     """Lines with one end on another line and the other end free.
 
-    A stroke may well begin inside the ring of a pin, where its base runs through the pin; it never ends on one.
+    A stroke may well begin inside the ring of a pin, where its base runs through the pin, or even end there.
     """
+    strands = sheet.strands
     for index in candidates:
         strand = strands[index]
         if not isinstance(strand.primitive, Segment):
             continue
-        ends = [end for end in (0, 1) if (index, 1 - end) not in landed]
-        closing = [_closest(touching.at(index, end), tolerance) for end in (0, 1)] if ends else []
-        for end in ends:
-            if closing[1 - end]:
+        closing = [_closest(_near(sheet, index, end), sheet.tolerance) for end in (0, 1)]
+        for end in (0, 1):
+            firm = (index, 1 - end) not in landed
+            if firm and closing[1 - end]:
                 continue
             for target in closing[end]:
                 base = _base_at(strands[target], strand.ends[end])
-                stroke = _as_stroke(strands, index, base, end) if base else None
+                stroke = _as_stroke(strands, index, base, end, firm=firm) if base else None
                 if stroke is not None:
                     yield stroke
+
+
+def _near(sheet: Sheet, strand: int, end: int) -> Sequence[Touch]:
+    """What lies near an end, but for the arcs and lines that rings are made of: a stroke may stop beside a ring."""
+    near = sheet.touching.at(strand, end)
+    return [touch for touch in near if touch.strand not in sheet.ring_strands] if near and sheet.ring_strands else near
 
 
 def _closest(near: Sequence[Touch], tolerance: Tolerance) -> list[int]:
@@ -154,8 +162,9 @@ def _accept(
         if base.strand in taken:
             continue
         together = own[base] + [stroke for stroke in by_base[base] if stroke.strand not in taken]
-        group = max((_parallel_to(stroke, together) for stroke in together), key=len, default=[])
-        if len(group) >= STROKES_OF_A_SYMBOL:
+        firm = [stroke for stroke in together if stroke.firm]
+        group = max((_parallel_to(stroke, together) for stroke in firm), key=len, default=[])
+        if sum(stroke.firm for stroke in group) >= STROKES_OF_A_SYMBOL:
             taken.update({stroke.strand: stroke for stroke in group})
             if not own[base]:
                 accepted.append(base)
@@ -176,18 +185,16 @@ def _parallel_to(stroke: _Stroke, others: Iterable[_Stroke]) -> list[_Stroke]:
 
 
 def _loose_strokes(
-    strands: Sequence[Strand],
+    sheet: Sheet,
     relevant: Collection[int],
+    known: Collection[_Base],
     strokes: Collection[int],
-    touching: Touches,
     landed: Collection[tuple[int, int | None]],
 ) -> Iterator[_Stroke]:
-    """Free lines that stop a little short of a base, as clipped hatches do."""
-    free = [
-        strand
-        for strand in strands
-        if isinstance(strand.primitive, Segment) and touching.free(strand.number, 0) and touching.free(strand.number, 1)
-    ]
+    """Free lines that stop a little short of a base, as clipped hatches do; a known base comes before the nearest."""
+    strands = sheet.strands
+    lines = (strand for strand in strands if isinstance(strand.primitive, Segment))
+    free = [line for line in lines if not _near(sheet, line.number, 0) and not _near(sheet, line.number, 1)]
     bases = [
         _Base(index, number)
         for index in sorted(relevant)
@@ -201,17 +208,17 @@ def _loose_strokes(
     reach = np.array([STROKE_SHORT_OF_BASE * strand.length for strand in free for _ in (0, 1)])
     starts = np.array([_piece(strands, base).start for base in bases], dtype=np.complex128)
     ends = np.array([_piece(strands, base).end for base in bases], dtype=np.complex128)
-    nearest: dict[int, tuple[float, _Stroke]] = {}
+    nearest: dict[int, tuple[bool, float, _Stroke]] = {}
     for point, piece in zip(*(each.tolist() for each in near_pairs(points, reach, starts, ends)), strict=True):
         strand, near, base = free[point // 2], point % 2, bases[piece]
-        stroke = _as_stroke(strands, strand.number, base, near)
+        stroke = _as_stroke(strands, strand.number, base, near, firm=True)
         if (strand.number, 1 - near) in landed:
             continue
         if stroke is not None and _stops_short(strand, near, _piece(strands, base)):
             gap = abs(_height(strand.ends[near], _piece(strands, base)))
-            if strand.number not in nearest or gap < nearest[strand.number][0]:
-                nearest[strand.number] = (gap, stroke)
-    yield from (stroke for _, stroke in nearest.values())
+            found = (base not in known, gap, stroke)
+            nearest[strand.number] = min(found, nearest.get(strand.number, found), key=lambda each: each[:2])
+    yield from (stroke for _, _, stroke in nearest.values())
 
 
 def _height(point: Point, base: Segment) -> float:
@@ -286,22 +293,17 @@ def _pins_in(outline: Sequence[Point], pins: Sequence[PinSite], tolerance: Toler
     return found
 
 
-def _legs(
-    strands: Sequence[Strand],
-    bases: Collection[_Base],
-    touching: Touches,
-    landings: Sequence[Landing],
-) -> Iterator[int]:
+def _legs(sheet: Sheet, bases: Collection[_Base], landings: Sequence[Landing]) -> Iterator[int]:
     """Lines from a base to a pin: the sides of a triangle, whatever angle they meet the ring at."""
     base_strands = {base.strand for base in bases}
     landed = {(landing.strand, landing.end) for landing in landings if landing.how != "loose"}
     for landing in landings:
-        strand = strands[landing.strand]
+        strand = sheet.strands[landing.strand]
         if landing.end is None or strand.number in base_strands:
             continue
         if (strand.number, 1 - landing.end) in landed:
             continue  # a link between two pins, one of which sits on the base line itself
-        foot = touching.at(strand.number, 1 - landing.end)
+        foot = sheet.touching.at(strand.number, 1 - landing.end)
         if any(touch.strand in base_strands for touch in foot):
             yield strand.number
 

@@ -64,7 +64,8 @@ def find_parts(kinds: Sorted, sheet: Sheet) -> Parts:
     borders = outlines.borders | loose_borders(rectangles, known, pins, by_layer)
     apart = {*borders, *sheet.ring_strands, *(strand for joint in unread for strand in joint.strands)}
     landings = [landing for landing in landings if landing.strand not in apart]
-    reached = _reached(landings, [disc.ring for disc in sheet.sites.discs], sheet, apart)
+    touched = [each.strand for each in landings if each.how != "across" or each.strand in by_layer]
+    reached = _reached(touched, [disc.ring for disc in sheet.sites.discs], sheet, apart)
     marks = find_marks(sheet, reached, landings)
     plain = [index for index in reached if index not in marks]
     symbols = find_frame_symbols(sheet, plain, landings)
@@ -83,14 +84,14 @@ def find_parts(kinds: Sorted, sheet: Sheet) -> Parts:
     )
 
 
-def _reached(landings: Iterable[Landing], discs: Sequence[Ring], sheet: Sheet, apart: Collection[int]) -> list[int]:
+def _reached(touched: Iterable[int], discs: Sequence[Ring], sheet: Sheet, apart: Collection[int]) -> list[int]:
     """Strands that hang together with a pin or a disc: all others are other linework.
 
     Linework hangs together where ends meet. Twice, what is close enough to belong to a frame symbol is taken in as
     well: the base under a leg, then the strokes under the base.
     """
     beside, close = _neighbours(sheet)
-    waiting = [landing.strand for landing in landings if landing.how != "across"]
+    waiting = list(touched)
     for ring in discs:
         within = sheet.tolerance.rim(ring.radius)
         waiting.extend(

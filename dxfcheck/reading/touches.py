@@ -107,6 +107,10 @@ def find_touches(
     new = np.ones(ends.size, dtype=np.bool_)
     new[1:] = (ends[1:] != ends[:-1]) | (targets[1:] != targets[:-1])
     ends, targets, gaps, meets = ends[new], targets[new], gaps[new], meets[new]
+    # An end that meets something exactly does not meet an arc beside it as well, by the wider reach of arcs.
+    exact = np.zeros(2 * len(strands), dtype=np.bool_)
+    exact[ends[gaps <= tolerance.t]] = True
+    meets &= (gaps <= tolerance.t) | ~exact[ends]
     first = np.searchsorted(ends, np.arange(2 * len(strands) + 1))
     return Touches(first.tolist(), targets.tolist(), gaps.tolist(), meets.tolist())
 
