@@ -262,3 +262,6 @@ ARC_REACH_IN_SHAPES = 4.0
 
 ARROW_HEAD_DEGREES = 10.0
 """A closed arrow head is in line with its shaft within this angle."""
+
+STRAY_DIAGONALS = 100.0
+"""A sheet counts as no more than this many times as large as the box round its rings."""

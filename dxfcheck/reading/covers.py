@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from collections.abc import Collection, Iterator, Sequence
+from collections.abc import Collection, Iterable, Iterator, Sequence
 from itertools import count
 
 import numpy as np
@@ -13,6 +13,7 @@ from dxfcheck.geometry import Point, cross, distance_to_segment, parameter_on_li
 from dxfcheck.reading.body import Body
 from dxfcheck.reading.linework import Strand
 from dxfcheck.reading.nearness import near_pairs
+from dxfcheck.reading.outlines import pins_inside
 from dxfcheck.reading.pins import Disc
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.settings import CORNER_OF_LINE
@@ -24,7 +25,7 @@ HALF_WAY = 0.5
 
 
 def corner_pins(sheet: Sheet) -> list[set[int]]:
-    """For each fill, the pins whose rings hold one of its corners."""
+    """For each fill, the pins whose rings hold one of its corners; for a solid one with none there, those inside."""
     found: list[set[int]] = [set() for _ in sheet.fills]
     corners = [(number, corner) for number, fill in enumerate(sheet.fills) for line in fill.outlines for corner in line]
     if corners and sheet.pins:
@@ -33,6 +34,9 @@ def corner_pins(sheet: Sheet) -> list[set[int]]:
         reach = np.array([pin.radii[-1] + sheet.tolerance.rim(pin.radii[-1]) for pin in sheet.pins])
         for pin, place in zip(*(each.tolist() for each in near_pairs(centres, reach, places, places)), strict=True):
             found[corners[place][0]].add(pin)
+        for number, fill in enumerate(sheet.fills):
+            if fill.solid and not found[number]:
+                found[number].update(pin for outline in fill.outlines for pin in pins_inside(outline, centres))
     return found
 
 
@@ -71,33 +75,51 @@ def _runs_along(edge: Edge, line: Strand, within: float) -> bool:
 
 def cover_bodies(sheet: Sheet, bodies: Sequence[Body], pins_of_fill: Sequence[Collection[int]]) -> list[Body]:
     """Join the bodies that a solid fill covers or a disc carries into one, and add those that have no linework."""
-    parts = dict(enumerate(bodies))
-    at_pin: defaultdict[int, set[int]] = defaultdict(set)
-    for number, body in parts.items():
-        for pin in body.pins:
-            at_pin[pin].add(number)
-    fresh = count(len(bodies))
-
-    def join(own: Collection[int], made: Body) -> None:
-        for number in own:
-            del parts[number]
-        number = next(fresh)
-        parts[number] = made
-        for pin in made.pins:
-            at_pin[pin] = {each for each in at_pin[pin] if each in parts} | {number}
-
+    pool = _Pool(bodies)
     for number, fill in enumerate(sheet.fills):
         pins = pins_of_fill[number]
         if fill.solid and len(pins) > 1:
             edges = list(_edges(fill.outlines))
-            near = sorted({body for pin in pins for body in at_pin[pin]})
-            own = [body for body in near if not parts[body].frame and _drawn_along(sheet, parts[body], pins, edges)]
-            join(own, _joined([parts[body] for body in own], pins, fills=(number,)))
+            own = [body for body in pool.on(pins) if _drawn_along(sheet, pool.parts[body], pins, edges)]
+            pool.join(own, pins, fills=(number,))
     for number, disc in enumerate(sheet.sites.discs):
-        own = [body for body, part in parts.items() if not part.frame and _belongs_to(sheet, part, disc)]
-        if disc.holds or own:
-            join(own, _joined([parts[body] for body in own], disc.holds, discs=(number,)))
-    return list(parts.values())
+        own = [body for body, part in pool.parts.items() if not part.frame and _belongs_to(sheet, part, disc)]
+        if (disc.holds or own) and not _is_bubble([pool.parts[body] for body in own], disc):
+            pool.join(own, disc.holds, discs=(number,))
+    return list(pool.parts.values())
+
+
+class _Pool:
+    """Bodies by number, some of which are being made into one."""
+
+    def __init__(self, bodies: Sequence[Body]) -> None:
+        self.parts = dict(enumerate(bodies))
+        self._fresh = count(len(bodies))
+        self._at_pin: defaultdict[int, set[int]] = defaultdict(set)
+        for number, body in self.parts.items():
+            for pin in body.pins:
+                self._at_pin[pin].add(number)
+
+    def on(self, pins: Iterable[int]) -> list[int]:
+        """The moving bodies on some pins."""
+        return sorted({body for pin in pins for body in self._at_pin[pin] if not self.parts[body].frame})
+
+    def join(
+        self, own: Iterable[int], pins: Iterable[int], *, fills: tuple[int, ...] = (), discs: tuple[int, ...] = ()
+    ) -> None:
+        """Make one body of some, with further pins."""
+        parts = [self.parts.pop(number) for number in own]
+        made = Body(
+            strands=tuple(sorted(index for body in parts for index in body.strands)),
+            pins=tuple(sorted({*pins, *(pin for body in parts for pin in body.pins)})),
+            frame=False,
+            fills=fills + tuple(each for body in parts for each in body.fills),
+            discs=discs + tuple(each for body in parts for each in body.discs),
+        )
+        number = next(self._fresh)
+        self.parts[number] = made
+        for pin in made.pins:
+            self._at_pin[pin] = {each for each in self._at_pin[pin] if each in self.parts} | {number}
 
 
 def _edges(outlines: Sequence[Sequence[Point]]) -> Iterator[Edge]:
@@ -115,6 +137,11 @@ def _drawn_along(sheet: Sheet, body: Body, pins: Collection[int], edges: Sequenc
     return all(min(distance_to_segment(point, *edge) for edge in edges) <= within for point in points)
 
 
+def _is_bubble(inside: Sequence[Body], disc: Disc) -> bool:
+    """Whether a ring is drawn round a whole linkage: two or more links between pins lie inside it."""
+    return sum(len(body.pins) > 1 and set(body.pins) <= set(disc.holds) for body in inside) > 1
+
+
 def _belongs_to(sheet: Sheet, body: Body, disc: Disc) -> bool:
     """Whether a body is drawn on a disc: it ends on its rim, or lies inside with no pin that the disc does not hold."""
     ring = disc.ring
@@ -125,15 +152,3 @@ def _belongs_to(sheet: Sheet, body: Body, disc: Disc) -> bool:
         return True
     inside = all(away <= ring.radius for away in (*ends, *corners))
     return bool(ends or corners) and inside and set(body.pins) <= set(disc.holds)
-
-
-def _joined(
-    own: Sequence[Body], pins: Collection[int], *, fills: tuple[int, ...] = (), discs: tuple[int, ...] = ()
-) -> Body:
-    return Body(
-        strands=tuple(sorted(index for body in own for index in body.strands)),
-        pins=tuple(sorted({*pins, *(pin for body in own for pin in body.pins)})),
-        frame=False,
-        fills=fills + tuple(each for body in own for each in body.fills),
-        discs=discs + tuple(each for body in own for each in body.discs),
-    )

@@ -13,7 +13,7 @@ import numpy as np
 from dxfcheck.drawing.primitives import Text
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.reading.drive_text import DriveStatement, find_statement, parse_drive
+from dxfcheck.reading.drive_text import DriveStatement, find_statements, parse_drive
 from dxfcheck.reading.reading import Evidence, Observation
 from dxfcheck.reading.text_places import texts_near
 from dxfcheck.settings import (
@@ -60,18 +60,18 @@ def drive_linkages(
     """Give every grounded linkage its drives. ``handles`` are those of the texts, as a drafter would look for them."""
     observations: list[Observation] = []
     stated: list[_Stated] = []
-    statements = [(number, find_statement(text.content)) for number, text in enumerate(texts)]
-    notes = {number: statement for number, statement in statements if statement is not None}
+    notes = [(number, each) for number, text in enumerate(texts) for each in find_statements(text.content)]
     names = _index_names(linkages if settings.drives or notes else ())
     for option in settings.drives:
         outcome = _from_option(option, names, linkages)
         (stated if isinstance(outcome, _Stated) else observations).append(outcome)  # type: ignore[arg-type]
     by_option = {each.place for each in stated}
-    near = _near_links([texts[number] for number in notes], shapes)
-    for (number, statement), links in zip(notes.items(), near, strict=True):
+    near = _near_links([texts[number] for number, _ in notes], shapes)
+    for (number, statement), links in zip(notes, near, strict=True):
         noted = _from_note(statement, texts[number], handles[number], links, names, linkages)
         if isinstance(noted, Observation):
-            observations.append(noted)
+            if statement.explicit or links:
+                observations.append(noted)
         elif noted.place not in by_option:
             stated.append(noted)
     of_linkage: defaultdict[int, list[Drive]] = defaultdict(list)
@@ -81,7 +81,12 @@ def drive_linkages(
         replace(linkage, drives=_drives_of(linkage, of_linkage[number])) for number, linkage in enumerate(linkages)
     )
     evidence = tuple(_evidence(driven))
-    return Driven(linkages=driven, evidence=evidence, observations=tuple(observations), notes=frozenset(notes))
+    return Driven(
+        linkages=driven,
+        evidence=evidence,
+        observations=tuple(observations),
+        notes=frozenset(number for number, _ in notes),
+    )
 
 
 def _drives_of(linkage: Linkage, stated: Sequence[Drive]) -> tuple[Drive, ...]:

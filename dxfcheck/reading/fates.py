@@ -2,7 +2,10 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from dxfcheck.drawing.primitives import Fate, Ring, Sketch
+from dxfcheck.reading.body import Body
 from dxfcheck.reading.model import Model
 from dxfcheck.reading.parts import Parts
 from dxfcheck.reading.sheet import Sheet
@@ -18,7 +21,7 @@ def fates_of(sketch: Sketch, kinds: Sorted, sheet: Sheet, parts: Parts, model: M
     fates = dict(kinds.skipped)
     _texts(fates, kinds, model)
     _linework(fates, kinds, sheet, parts, model)
-    _rings(fates, sheet, model)
+    _rings(fates, sheet, parts.bodies.bodies, model)
     for index, fill in kinds.fills:
         fates[index] = Fate("skipped", "solid fill, no part of a link" if fill.solid else "pattern hatch")
     for body in parts.bodies.bodies:
@@ -71,7 +74,7 @@ def _linework(fates: dict[int, Fate], kinds: Sorted, sheet: Sheet, parts: Parts,
         fates[index] = fate if fate.why else Fate("frame", "welded to the frame")
 
 
-def _rings(fates: dict[int, Fate], sheet: Sheet, model: Model) -> None:
+def _rings(fates: dict[int, Fate], sheet: Sheet, bodies: Sequence[Body], model: Model) -> None:
     in_linkage = {site for each in model.assembled for site in each.sites}
     carrying = set(model.names.names)
 
@@ -88,5 +91,7 @@ def _rings(fates: dict[int, Fate], sheet: Sheet, model: Model) -> None:
             fate = Fate("other linework", "a ring with no link on it")
         for ring in pin.rings:
             settle(ring, fate)
-    for disc in sheet.sites.discs:
-        settle(disc.ring, Fate("disc", "a ring that holds other pins off its centre"))
+    plates = {number for body in bodies for number in body.discs}
+    for number, disc in enumerate(sheet.sites.discs):
+        plate = Fate("disc", "a ring that holds other pins off its centre")
+        settle(disc.ring, plate if number in plates else Fate("skipped", "a ring drawn round whole links"))

@@ -15,7 +15,7 @@ from dxfcheck.reading.linework import Strand, arc_middle
 from dxfcheck.reading.pins import PinSite
 from dxfcheck.reading.shapes import Rectangle
 
-__all__ = ["Outlines", "find_outlines", "inside_outline", "loose_borders", "outline_points"]
+__all__ = ["Outlines", "find_outlines", "inside_outline", "loose_borders", "outline_points", "pins_inside"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -45,7 +45,7 @@ def find_outlines(
     held: list[Landing] = []
     for number, outline in closed.items():
         if not pins_of[number]:
-            within = [pin for pin in _inside_box(places, outline) if inside_outline(pins[pin].at, outline)]
+            within = pins_inside(outline, places)
             held.extend(Landing(number, pin, "corner", None, 0.0) for pin in within)
             pins_of[number].update(within)
     links = [strands[number] for number in sorted(pins_of) if len(pins_of[number]) > 1 and number not in frame]
@@ -60,6 +60,11 @@ def find_outlines(
         )
     )
     return Outlines(borders=borders, held=tuple(landing for landing in held if landing.strand not in borders))
+
+
+def pins_inside(outline: Sequence[Point], places: np.typing.NDArray[np.complex128]) -> list[int]:
+    """Which of the places (P,) lie inside an outline."""
+    return [number for number in _inside_box(places, outline) if inside_outline(complex(places[number]), outline)]
 
 
 def _first_point(strand: Strand) -> Point:

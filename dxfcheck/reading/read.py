@@ -29,8 +29,8 @@ def read_linkages(sketch: Sketch, settings: Settings, *, with_evidence: bool = T
 
     Without evidence it takes a tenth less time.
     """
-    tolerance = tolerance_for(sketch.diagonal, settings)
     kinds = sort_primitives(sketch)
+    tolerance = tolerance_for(sketch.diagonal, settings, [ring for _, ring in kinds.rings])
     sheet = lay_out(kinds, tolerance)
     parts = find_parts(kinds, sheet)
     model = make_model(sketch, settings, kinds, sheet, parts)

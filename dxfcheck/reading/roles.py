@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import unicodedata
 from fnmatch import fnmatchcase
 from functools import cache
 
@@ -20,7 +21,8 @@ __all__ = ["construction_reason", "frame_reason", "is_label_layer", "is_pitch"]
 
 @cache
 def _matches(name: str, patterns: tuple[str, ...]) -> bool:
-    upper = name.upper()
+    plain = unicodedata.normalize("NFKD", name)
+    upper = "".join(letter for letter in plain if not unicodedata.combining(letter)).upper()
     return any(fnmatchcase(upper, pattern) for pattern in patterns)
 
 

@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
+import math
+from collections.abc import Sequence
 from typing import NamedTuple
 
+from dxfcheck.drawing.primitives import Ring
 from dxfcheck.settings import (
     ARC_REACH_IN_SHAPES,
     COINCIDENCE_OF_DIAGONAL,
@@ -11,6 +14,7 @@ from dxfcheck.settings import (
     RIM_OF_RADIUS,
     SHAPE_OF_DIAGONAL,
     SHAPE_OF_SIZE,
+    STRAY_DIAGONALS,
     WELD_GAP_OF_DIAGONAL,
     Settings,
 )
@@ -53,7 +57,15 @@ class Tolerance(NamedTuple):
         return max(self.t, RIM_OF_RADIUS * radius)
 
 
-def tolerance_for(diagonal: float, settings: Settings) -> Tolerance:
-    """The tolerances for a sketch of this diagonal; a tolerance set by the user replaces t."""
+def tolerance_for(diagonal: float, settings: Settings, rings: Sequence[Ring] = ()) -> Tolerance:
+    """The tolerances for a sketch of this diagonal; a tolerance set by the user replaces t.
+
+    A stray line a kilometre off must not make every end of a small linkage meet every other: the diagonal counts only
+    up to STRAY_DIAGONALS of that of the box round the rings.
+    """
+    if len(rings) > 1:
+        across = [ring.centre.real for ring in rings]
+        up = [ring.centre.imag for ring in rings]
+        diagonal = min(diagonal, STRAY_DIAGONALS * math.hypot(max(across) - min(across), max(up) - min(up)) or diagonal)
     t = settings.tolerance if settings.tolerance is not None else COINCIDENCE_OF_DIAGONAL * diagonal
     return Tolerance(t, max(t, SHAPE_OF_DIAGONAL * diagonal), max(t, WELD_GAP_OF_DIAGONAL * diagonal))

@@ -243,10 +243,13 @@ HIDDEN_REASONS = frozenset(fate.why for fate in HIDDEN)
 def unread_entity(subject: RuleSubject) -> Iterator[Finding]:
     """Entities left unread, a finding a type and reason and whether they lie among the links."""
     boxes = list(_boxes(subject))
+    link_layers = {link.layer for linkage, _ in subject.mechanisms for link in linkage.links}
     unread: defaultdict[tuple[bool, str, str], list[Entity]] = defaultdict(list)
     for entity in subject.sketch.entities:
         if entity.fate is not None and entity.fate.read_as == "unread" and entity.fate not in TOLD_BY_OTHER_RULES:
-            among = entity.at is not None and any(_inside(entity.at, *box) for box in boxes)
+            among = (
+                any(_inside(entity.at, *box) for box in boxes) if entity.at is not None else entity.layer in link_layers
+            )
             unread[among, entity.type, entity.fate.why].append(entity)
     for notice in _notices(subject, "unread-part", "block-cycle", "block-missing"):
         if notice.entity is not None and subject.sketch.entities[notice.entity].fate is None:
@@ -254,7 +257,8 @@ def unread_entity(subject: RuleSubject) -> Iterator[Finding]:
             unread[among, "parts of a block reference", notice.detail].append(subject.sketch.entities[notice.entity])
     for (among, kind, why), entities in unread.items():
         what = f"{len(entities)} {kind}" if kind.isupper() else kind
-        where = "among the links" if among else "elsewhere on the sheet"
+        placed = any(entity.at is not None for entity in entities)
+        where = ("among the links" if placed else "on a layer of links") if among else "elsewhere on the sheet"
         layers = listed(list(dict.fromkeys(entity.layer for entity in entities)), 3)
         yield Finding(
             rule="unread-entity",

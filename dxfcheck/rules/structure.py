@@ -110,10 +110,11 @@ def floating_group(subject: RuleSubject) -> Iterator[Finding]:
     for seen in subject.reading.observations:
         if seen.kind == "floating-group":
             count = int(seen.amount or 0)
+            hang = "hangs" if count == 1 else "hang"
             yield Finding(
                 rule="floating-group",
                 severity="warning",
-                message=f"{plural(count, 'piece')} of linework on link layers hang on no linkage: {seen.detail}",
+                message=f"{plural(count, 'piece')} of linework on link layers {hang} on no linkage: {seen.detail}",
                 remedy="join them to their pins, or move them to a layer of their own",
                 at=seen.at,
                 handles=seen.handles,

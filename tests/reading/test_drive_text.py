@@ -5,9 +5,16 @@ import math
 import pytest
 
 from dxfcheck.errors import OptionInvalid
-from dxfcheck.reading.drive_text import find_statement, parse_drive
+from dxfcheck.reading.drive_text import DriveStatement, find_statements, parse_drive
 
 RPM = math.tau / 60
+
+
+def find_statement(note: str) -> DriveStatement | None:
+    """The one statement of a note."""
+    found = find_statements(note)
+    assert len(found) <= 1
+    return found[0] if found else None
 
 
 @pytest.mark.parametrize(
@@ -151,12 +158,10 @@ def test_a_note_that_contradicts_itself_is_in_doubt(note: str, doubt: str) -> No
         "scale 1:2",
         "n = 12",
         "ω = rad/s",
-        "tension = 3 rpm",
         "α = 3 rad/s2",
         "ω = 10 rad/s²",
         "M8 x 20",
         "n rpm",
-        "= 3 rpm",
         "\ufffd\ufffd",
     ],
 )
@@ -205,3 +210,39 @@ def test_an_option_that_cannot_be_used_says_why_and_shows_how(option: str, reaso
         parse_drive(option)
     assert repr(option) in str(caught.value)
     assert "write for instance" in str(caught.value)
+
+
+def test_several_drives_in_one_note() -> None:
+    assert [each.name for each in find_statements("ω_AB = 3 rad/s, ω_CD = 99 rad/s")] == ["AB", "CD"]
+
+
+@pytest.mark.parametrize("number", ["1,500", "12,000"])
+def test_a_comma_before_three_digits_is_a_doubt(number: str) -> None:
+    statement = find_statement(f"n = {number} rpm")
+    assert statement is not None
+    assert statement.doubt is not None
+    assert "thousands" in statement.doubt
+
+
+@pytest.mark.parametrize(
+    ("note", "rate"), [("n = 1 200 rpm", 1200 * RPM), ("ω = – 3 rad/s", -3.0), ("n = 0,125 rpm", 0.125 * RPM)]
+)
+def test_thousands_apart_dashes_for_minus_and_small_decimals(note: str, rate: float) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert statement.doubt is None
+    assert statement.rate == pytest.approx(rate)
+
+
+def test_a_speed_without_a_unit_is_a_drive_that_is_not_understood() -> None:
+    statement = find_statement("ω = 10")
+    assert statement is not None
+    assert statement.doubt is not None
+
+
+@pytest.mark.parametrize("note", ["60 rpm", "Crank speed = 60 rpm", "Motor: 60 rpm"])
+def test_a_mere_speed_is_a_drive_only_beside_a_link(note: str) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert (statement.name, statement.explicit) == (None, False)
+    assert statement.rate == pytest.approx(60 * RPM)
