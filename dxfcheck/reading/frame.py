@@ -60,13 +60,16 @@ class _Stroke(NamedTuple):
     firm: bool
 
 
-def find_frame_symbols(sheet: Sheet, relevant: Collection[int], landings: Sequence[Landing]) -> FrameSymbols:
-    """Frame symbols among the linework that hangs together with pins (``relevant`` strands)."""
+def find_frame_symbols(
+    sheet: Sheet, relevant: Collection[int], marks: Collection[int], landings: Sequence[Landing]
+) -> FrameSymbols:
+    """Frame symbols among the linework that hangs together with pins (``relevant`` strands, no ``marks``)."""
     strands, tolerance = sheet.strands, sheet.tolerance
+    ignored = sheet.ring_strands.union(marks)
     landed = {(landing.strand, landing.end) for landing in landings}
-    standing = _strokes_on_bases(sheet, relevant, landed)
+    standing = _strokes_on_bases(sheet, relevant, ignored, landed)
     bases, strokes = _accept(strands, standing, {})
-    loose = _loose_strokes(sheet, relevant, bases, strokes, landed)
+    loose = _loose_strokes(sheet, relevant, ignored, bases, strokes, landed)
     bases, strokes = _accept(strands, loose, strokes, bases)
     reasons = {base.strand: "base line of a frame symbol with hatch strokes" for base in bases}
     hatched = _bases_along_hatches(strands, relevant, sheet.fills, sheet.pins, tolerance)
@@ -100,7 +103,7 @@ def _as_stroke(strands: Sequence[Strand], index: int, base: _Base, near: int, *,
 
 
 def _strokes_on_bases(
-    sheet: Sheet, candidates: Iterable[int], landed: Collection[tuple[int, int | None]]
+    sheet: Sheet, candidates: Iterable[int], ignored: Collection[int], landed: Collection[tuple[int, int | None]]
 ) -> Iterator[_Stroke]:
     """Lines with one end on another line and the other end free.
 
@@ -111,7 +114,7 @@ def _strokes_on_bases(
         strand = strands[index]
         if not isinstance(strand.primitive, Segment):
             continue
-        closing = [_closest(_near(sheet, index, end), sheet.tolerance) for end in (0, 1)]
+        closing = [_closest(_near(sheet, ignored, index, end), sheet.tolerance) for end in (0, 1)]
         for end in (0, 1):
             firm = (index, 1 - end) not in landed
             if firm and closing[1 - end]:
@@ -123,10 +126,10 @@ def _strokes_on_bases(
                     yield stroke
 
 
-def _near(sheet: Sheet, strand: int, end: int) -> Sequence[Touch]:
-    """What lies near an end, but for the arcs and lines that rings are made of: a stroke may stop beside a ring."""
+def _near(sheet: Sheet, ignored: Collection[int], strand: int, end: int) -> Sequence[Touch]:
+    """What lies near an end, but for marks and what rings are made of: a stroke may stop beside a ring or a cross."""
     near = sheet.touching.at(strand, end)
-    return [touch for touch in near if touch.strand not in sheet.ring_strands] if near and sheet.ring_strands else near
+    return [touch for touch in near if touch.strand not in ignored] if near and ignored else near
 
 
 def _closest(near: Sequence[Touch], tolerance: Tolerance) -> list[int]:
@@ -187,6 +190,7 @@ def _parallel_to(stroke: _Stroke, others: Iterable[_Stroke]) -> list[_Stroke]:
 def _loose_strokes(
     sheet: Sheet,
     relevant: Collection[int],
+    ignored: Collection[int],
     known: Collection[_Base],
     strokes: Collection[int],
     landed: Collection[tuple[int, int | None]],
@@ -194,7 +198,11 @@ def _loose_strokes(
     """Free lines that stop a little short of a base, as clipped hatches do; a known base comes before the nearest."""
     strands = sheet.strands
     lines = (strand for strand in strands if isinstance(strand.primitive, Segment))
-    free = [line for line in lines if not _near(sheet, line.number, 0) and not _near(sheet, line.number, 1)]
+    free = [
+        line
+        for line in lines
+        if not _near(sheet, ignored, line.number, 0) and not _near(sheet, ignored, line.number, 1)
+    ]
     bases = [
         _Base(index, number)
         for index in sorted(relevant)

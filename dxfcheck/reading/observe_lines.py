@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import defaultdict
 from collections.abc import Iterator
 
 from dxfcheck.drawing.primitives import Segment
@@ -23,11 +24,17 @@ def observe_lines(seen: Seen) -> Iterator[Observation]:
 def _aims(seen: Seen) -> Iterator[Observation]:
     """Ends that land on a pin but point past its centre, and lines that run through a ring off its centre."""
     laid_over = set(seen.bodies.laid_over)
+    held: defaultdict[int, set[int]] = defaultdict(set)
+    for landing in seen.bodies.landings:
+        if landing.how != "across":
+            held[seen.body_of[landing.strand]].add(landing.pin)
     for landing in seen.landings:
         number = seen.body_of.get(landing.strand)
         if number is None or landing.pin not in seen.pin_names:
             continue
         frame = seen.bodies.bodies[number].frame
+        if landing.how == "across" and landing.pin in held[number]:
+            continue  # a stroke at a corner, or a leg: its body lands on that pin by other linework
         if landing.how == "end" and not frame and number in seen.body_names:
             yield from _end_off_centre(seen, landing)
         elif landing.how == "across" and (landing.strand, landing.pin) not in laid_over:

@@ -68,7 +68,7 @@ def find_parts(kinds: Sorted, sheet: Sheet) -> Parts:
     reached = _reached(touched, [disc.ring for disc in sheet.sites.discs], sheet, apart)
     marks = find_marks(sheet, reached, landings)
     plain = [index for index in reached if index not in marks]
-    symbols = find_frame_symbols(sheet, plain, landings)
+    symbols = find_frame_symbols(sheet, plain, marks, landings)
     frame = {**by_layer, **symbols.frame}
     active = {index for index in plain if index not in symbols.strokes}
     known_frame = {index: why for index, why in frame.items() if index in active}
