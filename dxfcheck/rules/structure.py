@@ -155,7 +155,7 @@ def over_constrained(subject: RuleSubject) -> Iterator[Finding]:
     """Mechanisms with a negative count and no freedom."""
     for linkage, analysis in subject.mechanisms:
         mobility = analysis.mobility
-        if mobility.at_pose == 0 and mobility.count < 0:
+        if linkage.grounded and mobility.at_pose == 0 and mobility.count < 0:
             message = (
                 f"{linkage.name} is over-constrained: the count is {mobility.count}, "
                 f"{plural(-mobility.count, 'constraint')} more than hold it still"
@@ -179,7 +179,7 @@ def special_geometry(subject: RuleSubject) -> Iterator[Finding]:
     """Freedom at the pose beyond the count."""
     for linkage, analysis in subject.mechanisms:
         mobility = analysis.mobility
-        if mobility.at_pose > max(mobility.count, 0):
+        if linkage.grounded and mobility.at_pose > max(mobility.count, 0):
             message = (
                 f"{linkage.name} has {plural(mobility.at_pose, 'freedom')} at the drawn pose where the count gives "
                 f"{mobility.count}: it moves by its special lengths, or only for an instant"
