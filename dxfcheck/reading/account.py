@@ -26,6 +26,7 @@ RANK = (
     "unread",
 )
 """What a block reference counts as when its parts were read differently: the first of these among them."""
+_PLACE = {word: place for place, word in enumerate(RANK)}
 
 
 def make_account(sketch: Sketch, fates: Mapping[int, Fate]) -> tuple[AccountLine, ...]:
@@ -37,7 +38,7 @@ def make_account(sketch: Sketch, fates: Mapping[int, Fate]) -> tuple[AccountLine
     for index, primitive in enumerate(sketch.primitives):
         fate = fates[index]
         known = of_entity.get(primitive.source.entity)
-        if known is None or RANK.index(fate.read_as) < RANK.index(known.read_as):
+        if known is None or _PLACE[fate.read_as] < _PLACE[known.read_as]:
             of_entity[primitive.source.entity] = fate
     counts: Counter[tuple[str, str, str, str]] = Counter()
     for number, entity in enumerate(sketch.entities):

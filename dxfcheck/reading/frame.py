@@ -94,10 +94,11 @@ def _as_stroke(strands: Sequence[Strand], index: int, base: _Base, near: int, *,
     """A line as a stroke of a base by its angle and length, its end ``near`` being the one at the base."""
     line, piece = strands[index], _piece(strands, base)
     along = piece.end - piece.start
+    if line.length > STROKE_OF_BASE * abs(along):
+        return None
     direction = line.ends[1 - near] - line.ends[near]
     low, high = STROKE_ANGLES_DEGREES
-    fits = low <= math.degrees(angle_between_lines(direction, along)) <= high
-    if not fits or abs(direction) > STROKE_OF_BASE * abs(along):
+    if not low <= math.degrees(angle_between_lines(direction, along)) <= high:
         return None
     return _Stroke(index, base, cross(along, direction) > 0, direction, firm)
 
@@ -110,9 +111,10 @@ def _strokes_on_bases(
     A stroke may well begin inside the ring of a pin, where its base runs through the pin, or even end there.
     """
     strands = sheet.strands
+    links = {index for index, end in landed if end == 0 and (index, 1) in landed}
     for index in candidates:
         strand = strands[index]
-        if not isinstance(strand.primitive, Segment):
+        if not isinstance(strand.primitive, Segment) or index in links:
             continue
         closing = [_closest(_near(sheet, ignored, index, end), sheet.tolerance) for end in (0, 1)]
         for end in (0, 1):
@@ -134,12 +136,16 @@ def _near(sheet: Sheet, ignored: Collection[int], strand: int, end: int) -> Sequ
 
 def _closest(near: Sequence[Touch], tolerance: Tolerance) -> list[int]:
     """The strands that an end closes on: of several within the shape tolerance, those it is nearest to."""
-    nearest = min((touch.gap for touch in near), default=0.0) + tolerance.t
+    if len(near) < 2:
+        return [touch.strand for touch in near]
+    nearest = min([touch.gap for touch in near]) + tolerance.t
     return [touch.strand for touch in near if touch.gap <= nearest]
 
 
 def _base_at(strand: Strand, point: Point) -> _Base | None:
-    number = min(range(len(strand.pieces)), key=lambda each: distance_to_piece(point, strand.pieces[each]))
+    number = 0
+    if len(strand.pieces) > 1:
+        number = min(range(len(strand.pieces)), key=lambda each: distance_to_piece(point, strand.pieces[each]))
     return _Base(strand.number, number) if isinstance(strand.pieces[number], Segment) else None
 
 
