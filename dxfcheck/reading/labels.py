@@ -35,8 +35,17 @@ def natural_key(name: str) -> tuple[tuple[int, int | str], ...]:
     return tuple((0, int(part)) if part.isdecimal() else (1, part) for part in parts)
 
 
-def name_pins(pins: Sequence[PinSite], used: Collection[int], texts: Sequence[Text], tolerance: Tolerance) -> PinNames:
-    """Names for the pins that carry a link (``used``): the nearest label, else P1, P2 ... by x, then y."""
+def name_pins(
+    pins: Sequence[PinSite],
+    used: Collection[int],
+    first: Collection[int],
+    texts: Sequence[Text],
+    tolerance: Tolerance,
+) -> PinNames:
+    """Names for the pins that carry a link (``used``): the nearest label, else P1, P2 ... by x, then y.
+
+    Those of linkages (``first``) are numbered before the holes of other parts.
+    """
     candidates = [index for index, text in enumerate(texts) if _may_be_label(text)]
     labels: dict[int, int] = {}
     taken: set[int] = set()
@@ -48,9 +57,12 @@ def name_pins(pins: Sequence[PinSite], used: Collection[int], texts: Sequence[Te
     step = max(tolerance.t, np.finfo(np.float64).tiny)
     spoken = set(names.values())
     number = 0
-    for pin in sorted(
-        used, key=lambda each: (round(pins[each].at.real / step), round(pins[each].at.imag / step), each)
-    ):
+
+    def place(pin: int) -> tuple[bool, int, int, int]:
+        at = pins[pin].at
+        return pin not in first, round(at.real / step), round(at.imag / step), pin
+
+    for pin in sorted(used, key=place):
         if pin in names:
             continue
         number += 1

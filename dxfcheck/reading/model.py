@@ -52,9 +52,10 @@ def make_model(sketch: Sketch, settings: Settings, kinds: Sorted, sheet: Sheet, 
     bodies = parts.bodies.bodies
     used = {site for body in bodies if not body.frame for site in body.pins}
     texts = [text for _, text in kinds.texts]
-    names = name_pins(sheet.pins, used, texts, sheet.tolerance)
+    drawn = frozenset(site for body in bodies if body.frame for site in body.pins)
+    first = {site for assembly in find_assemblies(bodies, drawn) if assembly.linkage for site in assembly.sites}
+    names = name_pins(sheet.pins, used, first, texts, sheet.tolerance)
     stated = {site for site, name in names.names.items() if name in settings.frame_pins}
-    drawn = {site for body in bodies if body.frame for site in body.pins}
     fixed = frozenset(stated | drawn)
     refused, stray, good = [], [], []
     for assembly in find_assemblies(bodies, fixed):

@@ -48,16 +48,19 @@ def find_parts(kinds: Sorted, sheet: Sheet) -> Parts:
         for number, (index, _) in enumerate(kinds.lines)
         if index in kinds.frame_lines
     }
+    # A ring that no line lands on is a hole of some part: what is drawn round it is no block and no slot.
+    carrying = {landing.pin for landing in sheet.landings.landings}
+    used = [pin for pin in pins if pin.number in carrying]
     obrounds = find_obrounds(strands, sheet.touching) if pins else []
-    rectangles = find_rectangles(sheet.linework, sheet.touching, pins, tolerance) if pins else []
+    rectangles = find_rectangles(sheet.linework, sheet.touching, used, tolerance) if used else []
     bars = list(bars_of(obrounds, pins, tolerance))
     in_bars = {strand for bar, _ in bars for strand in bar.strands}
     of_bars = [Landing(bar.strands[0], site, "corner", None, 0.0) for bar, sites in bars for site in sites]
     known = [*sheet.landings.landings, *of_bars]
     outlines = find_outlines(strands, in_bars | sheet.ring_strands, known, pins, by_layer)
     unread = (
-        *blocks_of([each for each in rectangles if by_layer.keys().isdisjoint(each.strands)], pins),
-        *slots_of(obrounds, pins),
+        *blocks_of([each for each in rectangles if by_layer.keys().isdisjoint(each.strands)], used),
+        *slots_of(obrounds, used),
         *pitch_circles_of(kinds.pitch_rings, pins, tolerance),
     )
     landings = [*known, *outlines.held]

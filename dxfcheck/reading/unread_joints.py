@@ -8,8 +8,8 @@ from typing import NamedTuple
 import numpy as np
 
 from dxfcheck.drawing.primitives import Ring
-from dxfcheck.reading.nearness import near_pairs
-from dxfcheck.reading.outlines import inside_outline
+from dxfcheck.reading.nearness import ComplexArray, near_pairs
+from dxfcheck.reading.outlines import pins_inside
 from dxfcheck.reading.pins import PinSite
 from dxfcheck.reading.shapes import Obround, Rectangle
 from dxfcheck.reading.tolerance import Tolerance
@@ -33,8 +33,9 @@ class UnreadJoint(NamedTuple):
 
 def blocks_of(rectangles: Sequence[Rectangle], pins: Sequence[PinSite]) -> Iterator[UnreadJoint]:
     """Rectangles that hold exactly one pin: blocks of slides."""
+    places = np.array([pin.at for pin in pins], dtype=np.complex128)
     for rectangle in rectangles:
-        inside = [pin for pin in pins if inside_outline(pin.at, rectangle.corners)]
+        inside = [pins[number] for number in pins_inside(rectangle.corners, places)]
         if len(inside) == 1:
             yield UnreadJoint(
                 inside[0].number, "slide", "a rectangle round the pin (a sliding block)", rectangle.strands
@@ -43,8 +44,9 @@ def blocks_of(rectangles: Sequence[Rectangle], pins: Sequence[PinSite]) -> Itera
 
 def slots_of(obrounds: Sequence[Obround], pins: Sequence[PinSite]) -> Iterator[UnreadJoint]:
     """Obrounds that hold one pin: slots."""
+    places = np.array([pin.at for pin in pins], dtype=np.complex128)
     for obround in obrounds:
-        inside = [pin for pin in pins if obround.holds(pin)]
+        inside = _pins_in(obround, pins, places)
         if len(inside) == 1:
             yield UnreadJoint(inside[0].number, "slot", "an obround round the pin (a slot)", obround.strands)
 
@@ -53,10 +55,19 @@ def bars_of(
     obrounds: Sequence[Obround], pins: Sequence[PinSite], tolerance: Tolerance
 ) -> Iterator[tuple[Obround, tuple[int, int]]]:
     """Obrounds with a pin at each end and none between: bars, with the two sites."""
+    places = np.array([pin.at for pin in pins], dtype=np.complex128)
     for obround in obrounds:
-        inside = [pin for pin in pins if obround.holds(pin)]
+        inside = _pins_in(obround, pins, places)
         if len(inside) == 2 and all(obround.ends_at(pin, tolerance) for pin in inside):
             yield obround, (inside[0].number, inside[1].number)
+
+
+def _pins_in(obround: Obround, pins: Sequence[PinSite], places: ComplexArray) -> list[PinSite]:
+    """The pins on the centre line of an obround."""
+    middle = (obround.centres[0] + obround.centres[1]) / 2
+    reach = abs(obround.centres[1] - obround.centres[0]) / 2 + obround.radius
+    near = np.nonzero(np.abs(places - middle) <= reach)[0].tolist()
+    return [pins[number] for number in near if obround.holds(pins[number])]
 
 
 def pitch_circles_of(
