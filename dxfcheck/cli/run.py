@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import sys
 from collections.abc import Callable, Iterator, Sequence
 from contextlib import contextmanager
@@ -30,6 +31,8 @@ def run_drawings(request: Request) -> int:
     if request.json is not None and request.json != STANDARD_OUTPUT:
         refuse_target(Path(request.json))
     targets = find_targets(request.paths)
+    if len(targets) > 1:
+        gc.enable()  # the process starts without (see __main__): one drawing leaves nothing worth collecting, many do
     outcomes: list[Outcome] = []
     terminal = None if request.json == STANDARD_OUTPUT else TerminalReport(sys.stdout)
     try:
