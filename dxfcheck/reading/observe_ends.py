@@ -47,7 +47,7 @@ def _ends(seen: Seen) -> Iterator[Observation]:
                 continue
             found = _free_end(seen, strand, end, near, misses[index, end], through[index])
             # An arm that hangs on no linkage is told of as a whole; only what it may have missed is told of its ends.
-            if number in seen.body_names or found.kind == "near-miss":
+            if number in seen.body_names or (found.kind == "near-miss" and number not in seen.refused):
                 yield found
 
 

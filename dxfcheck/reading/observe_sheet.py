@@ -48,7 +48,7 @@ def _without_frame(linkages: Sequence[Linkage]) -> Iterator[Observation]:
 
 
 def _refused(model: Model, sheet: Sheet) -> Iterator[Observation]:
-    for _, joint in model.refused:
+    for joint in dict.fromkeys(joint for _, joint in model.refused):
         pin = sheet.pins[joint.site]
         handles = dict.fromkeys(model.strand_handles[index] for index in joint.strands)
         yield Observation(

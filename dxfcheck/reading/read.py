@@ -72,6 +72,7 @@ def _seen(sheet: Sheet, parts: Parts, model: Model) -> Seen:
         pin_names=dict(model.names.names),
         body_of={strand: number for number, body in enumerate(parts.bodies.bodies) for strand in body.strands},
         shared=frozenset(site for site, count in bodies_at.items() if count > 1),
+        refused=frozenset(body for assembly, _ in model.refused for body in assembly.bodies),
         idle=frozenset({*parts.marks, *parts.symbols.strokes, *parts.borders, *sheet.ring_strands, *shapes}),
         handles=model.strand_handles,
         tolerance=sheet.tolerance,

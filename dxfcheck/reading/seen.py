@@ -37,6 +37,8 @@ class Seen:
     """The body of each strand that has one."""
     shared: frozenset[int]
     """Sites where two or more bodies meet, the frame counted."""
+    refused: frozenset[int]
+    """Bodies of mechanisms that are left out for a joint that is not read."""
     idle: frozenset[int]
     """Strands that are marks, strokes, borders or parts of joints that are not read: they are meant to meet nothing."""
     handles: Sequence[str]
