@@ -42,7 +42,7 @@ def find_doubles(sheet: Sheet, landings: Iterable[Landing], frame: Mapping[int, 
         if len(pins) < 2:
             continue
         kept = [other for other in by_pin[min(pins)] if pins <= pins_of[other]]
-        double = _nearest(sheet, kept, index, min(sheet.pins[pin].radius for pin in pins))
+        double = _nearest(sheet, kept, index, min(sheet.pins[pin].radius for pin in pins)) if kept else None
         if double is not None:
             found.append(double)
         if double is None or not double.same:

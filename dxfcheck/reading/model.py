@@ -53,12 +53,13 @@ def make_model(sketch: Sketch, settings: Settings, kinds: Sorted, sheet: Sheet, 
     used = {site for body in bodies if not body.frame for site in body.pins}
     texts = [text for _, text in kinds.texts]
     drawn = frozenset(site for body in bodies if body.frame for site in body.pins)
-    first = {site for assembly in find_assemblies(bodies, drawn) if assembly.linkage for site in assembly.sites}
+    assemblies = find_assemblies(bodies, drawn)
+    first = {site for assembly in assemblies if assembly.linkage for site in assembly.sites}
     names = name_pins(sheet.pins, used, first, texts, sheet.tolerance)
     stated = {site for site, name in names.names.items() if name in settings.frame_pins}
     fixed = frozenset(stated | drawn)
     refused, stray, good = [], [], []
-    for assembly in find_assemblies(bodies, fixed):
+    for assembly in find_assemblies(bodies, fixed) if stated else assemblies:
         obstacle = _obstacle(assembly, bodies, sheet, parts)
         if obstacle is not None:
             refused.append((assembly, obstacle))
