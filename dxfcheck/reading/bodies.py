@@ -93,8 +93,8 @@ def _weld(
             if (index, end) in at_pin:
                 continue
             for touch in sheet.touching.at(index, end):
-                other_bar = bar_of.get(touch.strand, bar_of.get(index)) != bar_of.get(index, bar_of.get(touch.strand))
-                if touch.meets and touch.strand in active and not other_bar:
+                bars = {bar_of[strand] for strand in (index, touch.strand) if strand in bar_of}
+                if touch.meets and touch.strand in active and len(bars) < 2:
                     unions.join(index, touch.strand)
     return unions
 

@@ -24,6 +24,8 @@ HOW = {
     "loose": "meets {} as frame",
 }
 
+LAID_OVER = "lies over {} without being pinned there, as it shares another pin with a link that ends there"
+
 
 def linkage_evidence(model: Model, sheet: Sheet, parts: Parts) -> Iterator[Evidence]:
     """Evidence for every linkage: its frame, pins, links and joints, in that order."""
@@ -90,6 +92,14 @@ def _links(
             HOW[landing.how].format(model.names.names[landing.pin])
             for index in body.strands
             for landing in by_strand.get(index, ())
+        )
+        own = set(body.strands)
+        how.update(
+            dict.fromkeys(
+                LAID_OVER.format(model.names.names[pin])
+                for strand, pin in parts.bodies.laid_over
+                if strand in own and pin in model.names.names
+            )
         )
         welded = sum(kinds.values()) > 1
         why = f"{' and '.join(drawn)}{' welded together' if welded else ''}: {', '.join(how)}".rstrip(": ")

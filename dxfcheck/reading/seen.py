@@ -20,7 +20,7 @@ __all__ = ["Seen", "about_strand", "pin_name"]
 class Seen:
     """The results of the earlier steps that the observations are made on.
 
-    ``names`` and ``mechanism`` name the body (by index) a strand belongs to; ``pin_names`` the sites.
+    ``body_names`` and ``mechanisms`` are the names of bodies' links and mechanisms, ``pin_names`` those of sites.
     """
 
     strands: Sequence[Strand]
