@@ -118,3 +118,18 @@ def test_where_a_drive_comes_from(extra: list[Drawn], settings: Settings | None,
     drive = evidence(*tipper(), *extra, settings=settings)["drive", "A-B"]
     assert drive.rule == rule
     assert why in drive.why
+
+
+def test_a_link_laid_over_a_pivot_says_that_it_is_not_pinned_there() -> None:
+    """A folded dead centre: the coupler runs back over the crank's pivot."""
+    drawn = (
+        ring(0j, 2, layer="FRAME"),
+        ring(30 + 0j, 2),
+        ring(-60 + 0j, 2),
+        ring(-80 + 50j, 2, layer="FRAME"),
+        line(0j, 30 + 0j),
+        line(30 + 0j, -60 + 0j),
+        line(-60 + 0j, -80 + 50j),
+    )
+    found = [each.why for each in read(*drawn).evidence if each.subject == "link"]
+    assert sum("without being pinned there" in why for why in found) == 1
