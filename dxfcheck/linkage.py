@@ -5,7 +5,7 @@ Glossary
     frame       the fixed link
     pin         a place where links turn on one another; k links at one pin are k - 1 full joints
     joint       one connection of two links: 'pin' and 'slide' are full joints (two freedoms removed),
-                'pin in slot' and 'rolling' half joints (one removed)
+                'pin in slot' and 'rolling' half joints (one removed), unless the rolling contact is ``full``
     drive       a stated input motion
     mechanism   one assembly of moving links that hang together otherwise than through the frame, with its own frame
 
@@ -61,7 +61,9 @@ class Joint:
     """A connection of links ``first`` and ``second`` (indices); ``pin`` is an index into Linkage.pins or None.
 
     ``at`` is its place. ``direction`` is a unit vector: the slide's or slot's direction, the common tangent of a
-    rolling contact, None for a pin.
+    rolling contact, None for a pin. A ``full`` rolling contact is one that nothing else holds together (a wheel that
+    rolls on the frame without an arm): it holds its two links as a pin at the contact does, and removes two freedoms
+    (Fabien, Analytical System Dynamics, p. 70: one freedom in pure rolling). It means nothing for other kinds.
     """
 
     kind: JointKind
@@ -71,6 +73,7 @@ class Joint:
     pin: int | None = None
     direction: Point | None = None
     handles: tuple[str, ...] = ()
+    full: bool = False
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -29,6 +29,30 @@ def four_bar_rates(a: complex, b: complex, c: complex, d: complex, crank: float)
     return coupler, rocker
 
 
+def slotted_lever(pivot: complex, pin: complex, velocity: complex) -> tuple[float, float]:
+    """Rate of a slotted lever about its pivot, and the speed along the slot, away from the pivot, of the pin in it.
+
+    With d = pin - pivot, velocity / d has the rate at which d grows in its real part, that at which it turns in its
+    imaginary one: the components along and across the lever (Norton, Design of Machinery, sec. 6.7; from memory).
+    """
+    relative = velocity / (pin - pivot)
+    return relative.imag, relative.real * abs(pin - pivot)
+
+
+def willis(sun: float, ring: float, arm_rate: float, ring_rate: float) -> float:
+    """Rate of the sun of a planetary train: (sun - arm) / (ring - arm) = - ring teeth / sun teeth (R. Willis)."""
+    return arm_rate - (ring_rate - arm_rate) * ring / sun
+
+
+def lift_rate(arm: float, foot: float, reach: float, angle: float) -> float:
+    """How fast a table on crossed arms rises to a unit rate of its telescope, from the base to a pin of one arm.
+
+    h = arm sin t and e^2 = foot^2 + reach^2 - 2 foot reach cos t (law of cosines), both differentiated.
+    """
+    length = math.sqrt(foot**2 + reach**2 - 2.0 * foot * reach * math.cos(angle))
+    return arm * math.cos(angle) * length / (foot * reach * math.sin(angle))
+
+
 def slider_crank(
     crank: float, rod: float, offset: float, angle: float, rate: float
 ) -> tuple[complex, complex, float, float]:

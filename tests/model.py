@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
+from typing import Literal
 
 from dxfcheck.analysis import analyse
 from dxfcheck.analysis.results import Analysis
@@ -10,8 +11,8 @@ from dxfcheck.linkage import Drive, Joint, JointKind, Link, Linkage, Pin
 
 FRAME = "ground"
 
-Other = tuple[JointKind, complex, str, str, complex]
-"""kind, place, first link, second link, direction (of any length)."""
+Other = tuple[JointKind | Literal["full rolling"], complex, str, str, complex]
+"""kind, place, first link, second link, direction (of any length); 'full rolling' is held by nothing else."""
 
 
 def linkage(
@@ -49,7 +50,14 @@ def linkage(
         for link in pin.links[1:]
     ]
     joints += [
-        Joint(kind=kind, first=number[first], second=number[second], at=at, direction=direction / abs(direction))
+        Joint(
+            kind="rolling" if kind == "full rolling" else kind,
+            first=number[first],
+            second=number[second],
+            at=at,
+            direction=direction / abs(direction),
+            full=kind == "full rolling",
+        )
         for kind, at, first, second, direction in others
     ]
     links = [
@@ -99,3 +107,21 @@ class Solved:
         value = self.analysis.joints[joint].rubbing_speed
         assert value is not None, f"rubbing at {pin} is not settled"
         return value
+
+    def slide(self, first: str, second: str) -> float:
+        """Speed of the second link against the first along the direction of the slide or slot between them."""
+        ends = (self._links[first], self._links[second])
+        joint = next(
+            number
+            for number, joint in enumerate(self.model.joints)
+            if (joint.first, joint.second) == ends and joint.kind in ("slide", "pin in slot")
+        )
+        value = self.analysis.joints[joint].slide_speed
+        assert value is not None, f"the slide between {first} and {second} is not settled"
+        return value
+
+    @property
+    def counts(self) -> tuple[int, int, int, int, int]:
+        """Count, links, full joints, half joints, freedom at the pose."""
+        mobility = self.analysis.mobility
+        return mobility.count, mobility.links, mobility.full_joints, mobility.half_joints, mobility.at_pose

@@ -6,8 +6,10 @@ the same in metres, millimetres or inches. The link's velocity at a point p is v
 
 A constraint says that the relative velocity of two links at a joint has no component along a direction, or that they
 do not turn on one another: pin 2 rows, slide 2, pin in slot 1 (across the slot), rolling 1 (along the tangent: the
-distance of the centres is held by the links that carry them). Source: any text on planar kinematics, e.g. J.J. Uicker,
-G.R. Pennock & J.E. Shigley, Theory of Machines and Mechanisms, ch. 3 (from memory).
+distance of the centres is held by the links that carry them; where nothing carries them the contact holds as a pin).
+Where along its guide a slide was drawn is arbitrary: no scale and no row depends on it.
+Source: any text on planar kinematics, e.g. J.J. Uicker, G.R. Pennock & J.E. Shigley, Theory of Machines and
+Mechanisms, ch. 3 (from memory).
 """
 
 from __future__ import annotations
@@ -56,12 +58,16 @@ class Freedom(NamedTuple):
 
 
 def bodies_of(linkage: Linkage) -> list[Body]:
-    """Centre and size of every link, by the joints it has; a link with one joint takes the mechanism's size."""
+    """Centre and size of every link, by the joints it has; a link with one place of joints takes the mechanism's size.
+
+    Slides do not count: they hold alike wherever along the guide, or beside it, they are drawn.
+    """
     places: list[list[Point]] = [[] for _ in linkage.links]
     for joint in linkage.joints:
-        places[joint.first].append(joint.at)
-        places[joint.second].append(joint.at)
-    bodies = [_body_at(at) for at in places]
+        if joint.kind != "slide":
+            places[joint.first].append(joint.at)
+            places[joint.second].append(joint.at)
+    bodies = [_body_at(at or [pin.at for pin in linkage.pins]) if len(at) != 1 else Body(at[0], 0.0) for at in places]
     whole = max([body.size for body in bodies]) or _extent([pin.at for pin in linkage.pins]) or 1.0
     floor = LINK_SIZE_FLOOR * whole
     return [body if body.size > floor else Body(body.centre, floor if body.size else whole) for body in bodies]
@@ -88,8 +94,8 @@ def constraint_matrix(linkage: Linkage, topology: Topology, bodies: list[Body]) 
     """All constraint rows over the unknowns (w, vx, vy) of the moving links in the order of the linkage."""
     rows, cells = _layout(topology)
     values: list[float] = []
-    for joint in linkage.joints:
-        fill = _ROWS[joint.kind]
+    for joint, place in zip(linkage.joints, topology.joints, strict=True):
+        fill = _ROWS[place.acts_as]
         for link, sign in ((joint.first, -1.0), (joint.second, 1.0)):
             if link != topology.frame:
                 values += fill(joint, bodies[link], sign, bodies)
@@ -154,20 +160,22 @@ def _pin_cells(joint: Joint, body: Body, sign: float, _: list[Body]) -> tuple[fl
 
 
 def _slide_cells(joint: Joint, body: Body, sign: float, bodies: list[Body]) -> tuple[float, ...]:
-    least = min(bodies[joint.first].size, bodies[joint.second].size)
-    return (sign * least / body.size, *_cells_along(joint, body, sign, 1j * _direction(joint)))
+    """No turn, and nothing across the slide: stated at the smaller link's centre, as it holds at any place."""
+    first, second = bodies[joint.first], bodies[joint.second]
+    smaller = first if first.size < second.size else second
+    return (sign * smaller.size / body.size, *_cells_along(smaller.centre, body, sign, 1j * _direction(joint)))
 
 
 def _slot_cells(joint: Joint, body: Body, sign: float, _: list[Body]) -> tuple[float, ...]:
-    return _cells_along(joint, body, sign, 1j * _direction(joint))
+    return _cells_along(joint.at, body, sign, 1j * _direction(joint))
 
 
 def _rolling_cells(joint: Joint, body: Body, sign: float, _: list[Body]) -> tuple[float, ...]:
-    return _cells_along(joint, body, sign, _direction(joint))
+    return _cells_along(joint.at, body, sign, _direction(joint))
 
 
-def _cells_along(joint: Joint, body: Body, sign: float, along: Point) -> tuple[float, ...]:
-    arm = (joint.at - body.centre) / body.size
+def _cells_along(place: Point, body: Body, sign: float, along: Point) -> tuple[float, ...]:
+    arm = (place - body.centre) / body.size
     turning = arm.real * along.imag - arm.imag * along.real
     return (sign * turning, sign * along.real, sign * along.imag)
 
@@ -205,8 +213,8 @@ def _layout(topology: Topology) -> tuple[int, NDArray[np.intp]]:
         for link in (joint.first, joint.second):
             if link != topology.frame:
                 start = row * columns + 3 * (link - (link > topology.frame))
-                cells += [start + down * columns + right for down, right in _CELLS[joint.kind]]
-        row += 1 + max(down for down, _ in _CELLS[joint.kind])
+                cells += [start + down * columns + right for down, right in _CELLS[joint.acts_as]]
+        row += 1 + max(down for down, _ in _CELLS[joint.acts_as])
     places = np.array(cells, dtype=np.intp)
     places.setflags(write=False)
     return row, places

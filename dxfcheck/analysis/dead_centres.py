@@ -5,7 +5,10 @@ drive a neighbour a
     where a turns on the frame and b's line runs through a's fixed pin: the two are in line (a crank and its coupler,
     a toggle folded or stretched);
     where a slides on the frame and b stands square to the slide.
-The driven link is a in both cases. Where b's neighbour is a binary link too and neither is held by the frame, the two
+A pin in a slot, or in a block that slides on another link, pushes square to the slot alone: its line is the slot's
+normal through the pin, for the link with the slot as well as for the one with the pin (a crank square to its slotted
+lever, a yoke at the end of its stroke).
+The driven link is a in all cases. Where b's neighbour is a binary link too and neither is held by the frame, the two
 in line cannot drive one another from outside, and no driven link is named. Source: Norton, Design of Machinery, ch. 3,
 toggle positions, and ch. 4, transmission angle (from memory).
 """
@@ -13,6 +16,7 @@ toggle positions, and ch. 4, transmission angle (from memory).
 from __future__ import annotations
 
 import math
+from collections.abc import Iterator
 from functools import lru_cache
 from itertools import permutations
 from typing import NamedTuple
@@ -25,19 +29,24 @@ from dxfcheck.settings import DEAD_CENTRE_RADIANS
 
 __all__ = ["dead_centres"]
 
+_Pins = tuple[tuple[tuple[int, ...], bool], ...]
+"""The links of every pin, and whether it is fixed."""
+
 
 class _Pair(NamedTuple):
     """A rod and its neighbour at a knee: what follows from the joints alone.
 
-    ``far`` is the rod's other pin. The neighbour's line runs to the pin ``end``, or is square to the slide ``joint``.
+    ``far`` is the rod's other pin; where there is none, the link pushes square to the slot or slide ``across``. The
+    neighbour's line runs to the pin ``end``, or is square to the slide ``joint``.
     """
 
     knee: int
-    far: int
+    far: int | None
     links: tuple[int, int]
     driven: int | None
-    end: int | None
-    joint: int | None
+    end: int | None = None
+    joint: int | None = None
+    across: int | None = None
 
 
 def dead_centres(linkage: Linkage, within: float = DEAD_CENTRE_RADIANS) -> tuple[DeadCentre, ...]:
@@ -49,17 +58,17 @@ def dead_centres(linkage: Linkage, within: float = DEAD_CENTRE_RADIANS) -> tuple
     found = []
     for pair in _pairs_of(topology_of(linkage), tuple([(pin.links, pin.fixed) for pin in pins])):
         at = pins[pair.knee].at
-        angle = _bend(at - pins[pair.far].at, _line_of(linkage, pair, at))
+        push = _square_to(linkage, pair.across) if pair.far is None else at - pins[pair.far].at
+        angle = _bend(push, _square_to(linkage, pair.joint) if pair.end is None else at - pins[pair.end].at)
         if angle <= within:
-            found.append(DeadCentre(pin=pair.knee, links=pair.links, driven=pair.driven, angle=angle))
+            square = pair.across is not None or pair.joint is not None
+            found.append(DeadCentre(pin=pair.knee, links=pair.links, driven=pair.driven, angle=angle, square=square))
     return tuple(found)
 
 
-def _line_of(linkage: Linkage, pair: _Pair, at: Point) -> Point:
-    """The direction in which the rod cannot drive its neighbour."""
-    if pair.end is not None:
-        return at - linkage.pins[pair.end].at
-    along = None if pair.joint is None else linkage.joints[pair.joint].direction
+def _square_to(linkage: Linkage, joint: int | None) -> Point:
+    """The direction square to a slide or slot."""
+    along = None if joint is None else linkage.joints[joint].direction
     return 1j * along if along is not None else 0j
 
 
@@ -68,7 +77,7 @@ def _bend(one: Point, other: Point) -> float:
 
 
 @lru_cache(maxsize=TOPOLOGIES_KEPT)
-def _pairs_of(topology: Topology, pins: tuple[tuple[tuple[int, ...], bool], ...]) -> tuple[_Pair, ...]:
+def _pairs_of(topology: Topology, pins: _Pins) -> tuple[_Pair, ...]:
     """Every rod and neighbour that some pose could keep from driving one another; ``pins`` are (links, fixed)."""
     ends: list[list[int]] = [[] for _ in range(topology.links)]
     for number, (links, _) in enumerate(pins):
@@ -84,7 +93,7 @@ def _pairs_of(topology: Topology, pins: tuple[tuple[tuple[int, ...], bool], ...]
             if far is None or pins[far][1] or other in pins[far][0]:
                 continue
             held = [pin for pin in ends[other] if pins[pin][1]]
-            pair = _Pair(knee, far, (min(rod, other), max(rod, other)), other, None, None)
+            pair = _Pair(knee, far, (min(rod, other), max(rod, other)), other)
             if other in slides:
                 pairs.append(pair._replace(joint=slides[other]))
             elif len(held) == 1:
@@ -93,7 +102,45 @@ def _pairs_of(topology: Topology, pins: tuple[tuple[tuple[int, ...], bool], ...]
                 end = _other_end(ends[other], knee)
                 if set(pins[end][0]).isdisjoint(pins[far][0]):
                     pairs.append(pair._replace(driven=None, end=end))
-    return tuple(pairs)
+    pairs += _slotted_pairs(topology, pins, ends, slides)
+    return tuple(sorted(pairs, key=lambda pair: pair.knee))
+
+
+def _slotted_pairs(
+    topology: Topology,
+    pins: _Pins,
+    ends: list[list[int]],
+    slides: dict[int, int],
+) -> Iterator[_Pair]:
+    """The link with a slot and each link of the pin in it, both ways round, where a pin or slide on the frame holds."""
+    for number, knee, owner in _slots(topology, pins, ends):
+        links, fixed = pins[knee]
+        if fixed or topology.frame in (owner, *links):
+            continue
+        carriers = [link for link in links if link != owner and not _is_block(topology, ends, link)]
+        for pusher, driven in [pair for link in carriers for pair in ((link, owner), (owner, link))]:
+            pair = _Pair(knee, None, (min(pusher, driven), max(pusher, driven)), driven, across=number)
+            held = [pin for pin in ends[driven] if pins[pin][1]]
+            if driven in slides:
+                yield pair._replace(joint=slides[driven])
+            elif len(held) == 1:
+                yield pair._replace(end=held[0])
+
+
+def _slots(topology: Topology, pins: _Pins, ends: list[list[int]]) -> Iterator[tuple[int, int, int]]:
+    """Joint, pin, and link with the slot (or guide), of every pin in a slot and every block with one pin."""
+    for number, joint in enumerate(topology.joints):
+        for inner, owner in ((joint.first, joint.second), (joint.second, joint.first)):
+            if joint.kind == "pin in slot" and joint.pin is not None and inner in pins[joint.pin][0]:
+                yield number, joint.pin, owner
+            elif joint.kind == "slide" and inner != topology.frame and _is_block(topology, ends, inner):
+                yield number, ends[inner][0], owner
+
+
+def _is_block(topology: Topology, ends: list[list[int]], link: int) -> bool:
+    """Whether a link has one pin and one slide and nothing else."""
+    other = [joint.kind for joint in topology.joints if joint.kind != "pin" and link in (joint.first, joint.second)]
+    return other == ["slide"] and len(ends[link]) == 1
 
 
 def _other_end(ends: list[int], knee: int) -> int:

@@ -1,6 +1,7 @@
 """Second formulation, which shares no code with the first: the equations of the independent loops.
 
-The unknowns are the rates at the joints: a turn for a pin, a sliding speed for a slide, both for a half joint. Around
+The unknowns are the rates at the joints: a turn for a pin (and about the contact of a wheel that nothing else holds),
+a sliding speed for a slide, both for a half joint (where wheels roll, the speed at which they would part). Around
 each closed loop the relative motions add up to nothing:
 
     sum of q = 0,    sum of q * (-i) (p - origin) + s * u = 0
@@ -67,10 +68,13 @@ def solve_loops(linkage: Linkage, topology: Topology, drives: tuple[int, ...], f
 
 
 def _middle_of(linkage: Linkage) -> tuple[Point, float]:
-    """A place among the joints and the greatest distance of a joint from it."""
-    places = [joint.at for joint in linkage.joints]
-    origin = sum(places) / len(places)
-    return origin, max([abs(place - origin) for place in places]) or 1.0
+    """A place among the turning joints (else the pins) and the greatest distance of one from it.
+
+    Where a slide was drawn does not count: it is arbitrary, and its equations do not ask.
+    """
+    places = [joint.at for joint in linkage.joints if joint.kind != "slide"] or [pin.at for pin in linkage.pins]
+    origin = sum(places) / (len(places) or 1)
+    return origin, max([abs(place - origin) for place in places], default=0.0) or 1.0
 
 
 def _shares(linkage: Linkage, signs: _Signs, origin: Point, size: float) -> Matrix:
@@ -132,8 +136,8 @@ def _signs_of(topology: Topology) -> _Signs:
     """The unknowns, (joint, whether it slides), and in which sense each loop and each link's path pass them."""
     unknowns: list[tuple[int, bool]] = []
     for number, joint in enumerate(topology.joints):
-        unknowns += [(number, False)] if joint.kind != "slide" else []
-        unknowns += [(number, True)] if joint.kind != "pin" else []
+        unknowns += [(number, False)] if joint.acts_as != "slide" else []
+        unknowns += [(number, True)] if joint.acts_as != "pin" else []
     steps = {
         (start, place, end): _step(topology, joints.joints, start, end)
         for place, joints in enumerate(places_of(topology))

@@ -105,10 +105,13 @@ class DeadCentre:
     """Two links in line at their common pin, so that one cannot drive the other there.
 
     ``pin`` is the pin between them; ``links`` the two links; ``driven`` the link that cannot be driven (the follower
-    side), None where it is not clear; ``angle`` what is missing from a straight line, radians.
+    side), None where it is not clear; ``angle`` what is missing from a straight line, radians. Where it is ``square``
+    the push stands square to a slide or slot, so that the two are not seen in line: ``angle`` is then what is missing
+    from that square.
     """
 
     pin: int
     links: tuple[int, int]
     driven: int | None
     angle: float
+    square: bool = False

@@ -22,6 +22,12 @@ class JointPlace(NamedTuple):
     first: int
     second: int
     pin: int | None
+    full: bool = False
+
+    @property
+    def acts_as(self) -> JointKind:
+        """The kind that holds the two links alike at the drawn pose: a rolling contact that is full acts as a pin."""
+        return "pin" if self.full and self.kind == "rolling" else self.kind
 
 
 class Topology(NamedTuple):
@@ -34,5 +40,7 @@ class Topology(NamedTuple):
 
 def topology_of(linkage: Linkage) -> Topology:
     """The linkage without its places."""
-    joints = tuple([JointPlace(joint.kind, joint.first, joint.second, joint.pin) for joint in linkage.joints])
+    joints = tuple(
+        [JointPlace(joint.kind, joint.first, joint.second, joint.pin, joint.full) for joint in linkage.joints]
+    )
     return Topology(len(linkage.links), linkage.frame, joints)

@@ -175,6 +175,7 @@ def _joints(linkage: Linkage, analysis: Analysis, names: list[str]) -> list[Item
             "relative_angular_velocity": _figure(motion.relative_angular_velocity),
             "slide_speed": _figure(motion.slide_speed),
             "rubbing_speed": _figure(motion.rubbing_speed),
+            **({"full": joint.full} if joint.kind == "rolling" else {}),
         }
         for joint, motion in zip(linkage.joints, analysis.joints, strict=True)
     ]

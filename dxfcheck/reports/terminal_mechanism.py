@@ -7,6 +7,7 @@ from collections.abc import Iterator
 from dxfcheck.analysis.results import Analysis, Mobility
 from dxfcheck.inspection import MechanismReport
 from dxfcheck.linkage import Drive, Linkage
+from dxfcheck.reports.terminal_contacts import contact_sentences, joint_counts, sliding_words
 from dxfcheck.reports.terminal_layout import Line, count_of, figure, fold, listed, place, table
 from dxfcheck.reports.terminal_motion import joint_columns, link_columns, pin_columns, turns_a_minute
 
@@ -35,6 +36,10 @@ def mechanism_lines(report: MechanismReport, unit: str, width: int) -> list[Line
         columns = columns_of(linkage, analysis, unit)
         if columns[0].cells:
             lines += [Line(""), *table(columns, width)]
+    sentences = list(contact_sentences(linkage, analysis, unit))
+    lines += [Line("")] if sentences else []
+    for label, text in sentences:
+        lines += map(Line, fold(text, width, LABEL.format(label), INDENT))
     return lines
 
 
@@ -52,7 +57,8 @@ def _heading(linkage: Linkage) -> str:
         tail = f"frame at {listed(fixed)}"
     else:
         tail = "no pin on the frame"
-    return f"{linkage.name}: {count_of(len(linkage.links), 'link')}, {count_of(len(linkage.pins), 'pin')}; {tail}"
+    parts = [count_of(len(linkage.links), "link"), count_of(len(linkage.pins), "pin"), *joint_counts(linkage)]
+    return f"{linkage.name}: {', '.join(parts)}; {tail}"
 
 
 def _facts(linkage: Linkage, analysis: Analysis, unit: str) -> Iterator[tuple[str, str]]:
@@ -86,7 +92,10 @@ def _freedom_at_pose(analysis: Analysis) -> str:
 def _drive(linkage: Linkage, drive: Drive, unit: str) -> str:
     link = linkage.links[drive.link].name
     against = "" if drive.against == linkage.frame else f" against {linkage.links[drive.against].name}"
-    if drive.kind == "slide":
+    if drive.kind == "slide" and drive.joint is not None:
+        joint = linkage.joints[drive.joint]
+        motion = sliding_words(linkage, joint, drive.rate if drive.link == joint.second else -drive.rate, unit)
+    elif drive.kind == "slide":
         motion = f"{link} slides at {figure(drive.rate)} {unit}/s{against}"
     else:
         sense = "ccw" if drive.rate >= 0 else "cw"

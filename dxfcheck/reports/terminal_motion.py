@@ -22,7 +22,8 @@ Cell = float | str | None
 
 TURNING: tuple[JointKind, ...] = ("pin", "pin in slot", "rolling")
 SLIDING: tuple[JointKind, ...] = ("slide", "pin in slot")
-RUBBING: tuple[JointKind, ...] = ("pin", "pin in slot")
+RUBBING: tuple[JointKind, ...] = ("pin",)
+"""A pin in a slot slides: its sliding speed is the rubbing there."""
 
 
 def turns_a_minute(angular_velocity: float) -> float:
@@ -54,10 +55,23 @@ def _pole(linkage: Linkage, analysis: Analysis, link: int, motion: LinkMotion) -
         return UNKNOWN
     velocities = [analysis.pins[pin].velocity for pin in linkage.links[link].pins]
     if not velocities:
-        return "none"
+        return _pinless(linkage, analysis, link)
     noise = _noise([abs(pin.velocity) for pin in analysis.pins if pin.velocity is not None])
     at_rest = all(velocity is not None and abs(velocity) <= noise for velocity in velocities)
     return "at rest" if at_rest else "translates"
+
+
+def _pinless(linkage: Linkage, analysis: Analysis, link: int) -> str:
+    """Whether a link without pins translates, if it slides on the frame; else only that it has no pole."""
+    speeds = [
+        motion.slide_speed
+        for joint, motion in zip(linkage.joints, analysis.joints, strict=True)
+        if joint.kind == "slide" and {joint.first, joint.second} == {link, linkage.frame}
+    ]
+    if not speeds or speeds[0] is None:
+        return "none"
+    noise = _noise([motion.slide_speed for motion in analysis.joints])
+    return "at rest" if abs(speeds[0]) <= noise else "translates"
 
 
 def pin_columns(linkage: Linkage, analysis: Analysis, unit: str) -> list[Column]:
@@ -89,7 +103,10 @@ def _direction(velocity: Point | None, noise: float) -> Cell:
     """Degrees from +x, counter-clockwise, above -180 up to 180; what stands still has no direction."""
     if velocity is None:
         return None
-    return NOT_APPLICABLE if abs(velocity) <= noise else math.degrees(cmath.phase(velocity))
+    if abs(velocity) <= noise:
+        return NOT_APPLICABLE
+    upward = 0.0 if abs(velocity.imag) <= noise else velocity.imag
+    return math.degrees(cmath.phase(complex(velocity.real, upward)))
 
 
 def joint_columns(linkage: Linkage, analysis: Analysis, unit: str) -> list[Column]:

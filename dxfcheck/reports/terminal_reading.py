@@ -7,6 +7,7 @@ from collections.abc import Iterator, Sequence
 from dxfcheck.inspection import DrawingReport
 from dxfcheck.linkage import Linkage
 from dxfcheck.reading.reading import AccountLine, Evidence
+from dxfcheck.reports.terminal_contacts import towards
 from dxfcheck.reports.terminal_drawing import how_measured, reason
 from dxfcheck.reports.terminal_layout import Column, Line, count_of, figure, fold, listed, place, table
 
@@ -71,11 +72,15 @@ def _parts(linkage: Linkage, names: list[str]) -> Iterator[Part]:
     for link in linkage.links:
         pins = listed([linkage.pins[pin].name for pin in link.pins])
         subject = "frame" if link.kind == "frame" else "link"
+        pins += " (a block)" if link.kind == "block" else ""
         yield subject, link.name, (), [f"pins {pins}" if pins else "no pins"], link.handles
     for joint in linkage.joints:
         between = f"{names[joint.first]} and {names[joint.second]}"
         pin_name = () if joint.pin is None else (linkage.pins[joint.pin].name,)
         facts = [joint.kind, f"at {place(joint.at)}"]
+        if joint.direction is not None:
+            facts.append(f"{'tangent' if joint.kind == 'rolling' else 'along'} {towards(joint.direction)} deg")
+        facts += ["nothing else holds it: a full joint"] if joint.kind == "rolling" and joint.full else []
         yield "joint", between, (f"{names[joint.first]} / {names[joint.second]}", *pin_name), facts, joint.handles
     for drive in linkage.drives:
         unit = "rad/s" if drive.kind == "turn" else "length units a second"

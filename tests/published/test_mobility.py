@@ -173,6 +173,15 @@ CASES = {
         1,
         (*EPICYCLIC, ("rolling", 72 + 0j, "ground", "planet", 1j)),
     ),
+    "M23 wheel rolling on the ground": Case(
+        "B. Fabien, Analytical System Dynamics, p. 70 (seen): one freedom in pure rolling, a full joint",
+        "C 0 50",
+        "C wheel",
+        (2, 1, 0),
+        1,
+        1,
+        (("full rolling", 0j, "ground", "wheel", 1 + 0j),),
+    ),
 }
 
 

@@ -36,7 +36,13 @@ def test_v08_steam_engine_with_rubbing_speeds() -> None:
     pin, slider, rod, speed = slider_crank(500.0, 2000.0, 0.0, math.pi / 4.0, -rate)
     b, p = complex(-pin.real, pin.imag), complex(-slider.real, slider.imag)
     e = b + 0.25 * (p - b)
-    case = solved_slider(b, p, rate, {"O": 25.0, "B": 30.0, "P": 15.0}, E=e)
+    # G, the rod's slowest point, is the foot of the perpendicular from the pole, where the velocity runs along the rod
+    way = (p - b) / abs(p - b)
+    least = (1j * rate * b * way.conjugate()).real
+    g = b + way * (1j * rate * b * way.conjugate()).imag / rod
+    case = solved_slider(b, p, rate, {"O": 25.0, "B": 30.0, "P": 15.0}, E=e, G=g)
+    assert abs(case.velocity("G")) == pytest.approx(8000.0, abs=500.0)
+    assert case.velocity("G") == pytest.approx(least * way, rel=EXACT)
     assert case.turn("rod") == pytest.approx(3.4, abs=0.05)
     assert abs(case.velocity("E")) == pytest.approx(8500.0, rel=GRAPHICAL)
     assert case.rubbing("O") == pytest.approx(470.0, abs=5.0)
@@ -44,7 +50,10 @@ def test_v08_steam_engine_with_rubbing_speeds() -> None:
     assert case.rubbing("P") == pytest.approx(51.0, abs=0.5)
     assert case.turn("rod") == pytest.approx(-rod, rel=EXACT)
     assert case.velocity("P") == pytest.approx(-speed, rel=EXACT)
+    assert case.rubbing("O") == pytest.approx(25.0 * abs(rate), rel=EXACT)
     assert case.rubbing("B") == pytest.approx(30.0 * abs(rate + rod), rel=EXACT)
+    assert case.rubbing("P") == pytest.approx(15.0 * abs(rod), rel=EXACT)
+    assert case.analysis.links[-1].pole is None
 
 
 def test_v11_piston_in_line() -> None:

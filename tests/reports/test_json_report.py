@@ -13,6 +13,7 @@ from jsonschema.exceptions import ValidationError
 from dxfcheck import __version__
 from dxfcheck.inspection import DrawingReport
 from dxfcheck.reports.json_report import json_text, report_as_dict
+from tests.reports.contacts import seed_planet, shuttle_yoke, soil_roller
 from tests.reports.samples import OMEGA_BC, TIPPER_ANALYSIS, press, tipper, unreadable
 
 SCHEMA = json.loads((files("dxfcheck") / "reports" / "report.schema.json").read_text(encoding="utf-8"))
@@ -144,6 +145,25 @@ def test_the_schema_refuses_what_is_wrong(where: list[Any], value: object) -> No
     place[where[-1]] = value
     with pytest.raises(ValidationError):
         validate(report)
+
+
+def test_links_without_pins_and_every_kind_of_joint_keep_to_the_schema() -> None:
+    """A crank's block in a yoke that has no pin; a wheel that rolls on the frame; gears."""
+    shuttle = tipper(findings=())
+    report = report_as_dict([replace(shuttle, mechanisms=(shuttle_yoke(), soil_roller(), seed_planet()))])
+    validate(report)
+    yoke, roller, planet = report["drawings"][0]["mechanisms"]
+    assert [(link["name"], link["kind"], link["pins"]) for link in yoke["links"][2:]] == [
+        ("block at B", "block", ["B"]),
+        ("1F", "link", []),
+    ]
+    assert [joint["kind"] for joint in yoke["joints"]] == ["pin", "pin", "slide", "slide"]
+    assert yoke["joints"][3]["pin"] is None
+    assert yoke["joints"][3]["slide_speed"] == pytest.approx(-80.0)
+    assert yoke["links"][3]["pole"] is None
+    assert (roller["joints"][0]["full"], roller["mobility"]["full_joints"]) == (True, 1)
+    assert [joint["full"] for joint in planet["joints"] if joint["kind"] == "rolling"] == [False, False]
+    assert "full" not in planet["joints"][0]
 
 
 def test_the_schema_lets_keys_be_added() -> None:
