@@ -13,7 +13,8 @@ class Settings:
 
     ``unit`` overrides the drawing's own unit. ``tolerance`` is the coincidence tolerance t; None takes
     COINCIDENCE_OF_DIAGONAL of the sketch's diagonal. ``drives`` are texts such as 'A-B = 10 rad/s ccw';
-    ``frame_pins`` pin names that are fixed.
+    ``frame_pins`` pin names that are fixed. ``part_blocks`` are patterns (globs, without case) of names of blocks: each
+    reference to one is one rigid link.
     """
 
     unit: str | None = None
@@ -21,6 +22,7 @@ class Settings:
     drives: tuple[str, ...] = ()
     frame_pins: tuple[str, ...] = ()
     expected_mobility: int | None = None
+    part_blocks: tuple[str, ...] = ()
 
 
 COINCIDENCE_OF_DIAGONAL = 3e-6
@@ -265,3 +267,70 @@ ARROW_HEAD_DEGREES = 10.0
 
 STRAY_DIAGONALS = 100.0
 """A sheet counts as no more than this many times as large as the box round its rings."""
+
+GUIDE_BESIDE_OF_WIDTH = 0.5
+"""A guide beside a block lies no further from its side than this part of the block's width across the guide."""
+
+GUIDE_GAP_OF_BLOCK = 0.5
+"""A guide interrupted at a block stops short of it by no more than this part of the block's length along it."""
+
+GUIDE_TURN_DEGREES = 0.5
+"""A guide runs along a side of its block within this angle."""
+
+GUIDE_LEVEL_OF_WIDTH = 0.05
+"""The two pieces of an interrupted guide, and two rails, lie level within this part of the block's width."""
+
+MOST_SLENDER_BLOCK = 40.0
+"""A block or barrel is at most so many times as long as it is wide: a pin further from a side is not in its box."""
+
+TANGENT_OF_RADIUS = 0.0025
+"""Pitch circles that miss tangency by less than this part of the smaller radius were drawn to roll on one another:
+radii typed to two decimals miss by 0.015 at worst."""
+
+ROLLING_OF_RADIUS = 0.03
+"""... up to this part they are read as rolling, with a finding,"""
+
+NEAR_TANGENT_OF_RADIUS = 0.15
+"""... and up to this part they are not read as rolling but reported, where one of them rolls on nothing else."""
+
+RACK_PARALLEL_DEGREES = 0.5
+"""A slide runs along a rack within this angle."""
+
+SMOOTH_JOINT_DEGREES = 3.0
+"""Where a line passes into an arc with less of a bend than this, its outline has no corner there."""
+
+TELESCOPE_ACROSS = 1e-6
+"""Two pins whose joining line is square to a slide within this part are brought neither apart nor together by it."""
+
+GUIDE_LOOKED_FOR_IN_BLOCKS = 4.0
+"""A block without a guide says how far off the nearest parallel line is, within so many of its half diagonals."""
+
+ON_AXIS_OF_REACH = 1e-3
+"""The pins of a telescope lie on its axis within this part of their distance."""
+
+BLOCK_IN_SLOT_RADII = 4.0
+"""The ends of a block in a slot lie within this many half widths of the slot from its pin."""
+
+FORK_PAST_RADII = 3.0
+"""The lines of a fork run on past its pin's ring by a ring's diameter: this many radii from the centre."""
+
+FORK_LIKENESS = 1.25
+"""The lines of a fork that is not joined at one end differ in length by no more than this factor."""
+
+HOLE_OF_BAR = 0.75
+"""The holes of a bar are narrower than this part of it; a pin that fills its slot is wider."""
+
+EMPTY_GUIDE_IN_DIAMETERS = 6.0
+"""A frame line that holds nothing, within so many ring diameters of a pin with one link, may be its forgotten guide."""
+
+WELD_ARC_DEGREES = (30.0, 200.0)
+"""A weld mark is an arc that sweeps between these angles about the end of a line, from its neighbour to the line."""
+
+WELD_ARC_OFF_CENTRE = 0.15
+"""The centre of a weld mark's arc lies within this part of its radius of the line's end."""
+
+WELD_ARC_OF_LINE = 0.3
+"""The radius of a weld mark's arc is at most this part of its line."""
+
+UNREAD_SHAPES_LIMIT = 3000
+"""On a sheet without a linkage that holds more strands than this nobody drew a kinematic symbol to be named."""

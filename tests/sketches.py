@@ -208,7 +208,7 @@ def laid_out(*things: Drawn) -> tuple[Sheet, Parts]:
     drawn = sketch(*things)
     kinds = sort_primitives(drawn)
     sheet = lay_out(kinds, tolerance_for(drawn.diagonal, Settings()))
-    return sheet, find_parts(kinds, sheet)
+    return sheet, find_parts(kinds, sheet, Settings())
 
 
 def fates(*things: Drawn) -> dict[str, Fate]:
@@ -216,7 +216,7 @@ def fates(*things: Drawn) -> dict[str, Fate]:
     drawn = sketch(*things)
     kinds = sort_primitives(drawn)
     sheet = lay_out(kinds, tolerance_for(drawn.diagonal, Settings()))
-    parts = find_parts(kinds, sheet)
+    parts = find_parts(kinds, sheet, Settings())
     settled = fates_of(drawn, kinds, sheet, parts, make_model(drawn, Settings(), kinds, sheet, parts))
     return {drawn.handles(drawn.primitives[index]): fate for index, fate in settled.items()}
 

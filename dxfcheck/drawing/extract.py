@@ -267,11 +267,12 @@ class _Walk:
             self.pending["uneven-scale", f"block {block.name} scaled by {across:g} and {upward:g}"] = ratio
         own = placement_of(given, block)
         fates: list[Fate | None] = [refusal]
-        for offset in array_offsets(given):
+        for number, offset in enumerate(array_offsets(given)):
             placed = own._replace(shift=own.shift + offset) if offset else own
             place = placed if inside.place is SHEET else inside.place.after(placed)
             require_numbers(*place)
-            fates += self._expand_once(block, Level(place, *inside[1:]), index)
+            trail = (*inside.trail[:-1], inside.trail[-1]._replace(copy=number)) if number else inside.trail
+            fates += self._expand_once(block, inside._replace(place=place, trail=trail), index)
         return fates
 
     def _expand_once(self, block: Block, level: Level, index: int) -> list[Fate | None]:

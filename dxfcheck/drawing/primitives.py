@@ -39,10 +39,14 @@ __all__ = [
 
 
 class BlockUse(NamedTuple):
-    """One step of the way into a block: the block's name and the handle of the reference that used it."""
+    """One step of the way into a block: the block's name and the handle of the reference that used it.
+
+    ``copy`` tells the copies of an arrayed reference apart, 0 for the first.
+    """
 
     name: str
     handle: str
+    copy: int = 0
 
 
 class Source(NamedTuple):

@@ -19,7 +19,7 @@ __all__ = ["Bodies", "make_bodies"]
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Bodies:
-    """All bodies that have pins, the frame (if there is any) first.
+    """All bodies that have pins, or slide or roll on others, the frame (if there is any) first.
 
     ``doubles`` are lines drawn twice; ``laid_over`` pairs of a strand and a pin it runs over without being pinned there
     (a folded dead centre); ``landings`` are those that count.
@@ -36,16 +36,22 @@ def make_bodies(
     active: AbstractSet[int],
     landings: Sequence[Landing],
     frame: Mapping[int, str],
-    groups: Sequence[Sequence[int]],
+    outlines: Sequence[Sequence[int]],
+    *,
+    groups: Sequence[Sequence[int]] = (),
+    never: AbstractSet[tuple[int, int]] = frozenset(),
+    kept: AbstractSet[int] = frozenset(),
 ) -> Bodies:
     """Weld the active strands into bodies and give each its pins.
 
-    ``frame`` are the strands known to be frame, ``active`` those that are neither marks nor hatch strokes, ``groups``
-    strands known to be one part whatever their ends do (the four of an obround).
+    ``frame`` are the strands known to be frame, ``active`` those that are neither marks nor hatch strokes, ``outlines``
+    the strands of bars and plates, which touch one another without being welded; ``groups`` other strands known to be
+    one part whatever their ends do (the four of a block), ``never`` pairs that slide on one another (both ways round).
+    Bodies without a pin are left out, but for those of the strands ``kept``.
     """
     counted = [each for each in landings if each.strand in active and _counts(each, frame)]
     pins_of_fill = corner_pins(sheet)
-    unions = _weld(sheet, active, counted, frame, groups)
+    unions = _weld(sheet, active, counted, frame, (outlines, groups), never)
     for group in corner_welds(sheet, active, pins_of_fill):
         for other in group[1:]:
             unions.join(group[0], other)
@@ -56,7 +62,7 @@ def make_bodies(
     members = {index: unions.of(index) for index in active}
     laid_over = set(_laid_over(counted, members))
     counted = [each for each in counted if (each.strand, each.pin) not in laid_over]
-    bodies = _gather(sheet, active, members, counted, frame)
+    bodies = _gather(sheet, active, members, counted, frame, kept)
     return Bodies(
         bodies=tuple(cover_bodies(sheet, bodies, pins_of_fill)),
         doubles=tuple(doubles),
@@ -75,16 +81,18 @@ def _weld(
     active: AbstractSet[int],
     landings: Iterable[Landing],
     frame: Mapping[int, str],
-    groups: Sequence[Sequence[int]],
+    parts: tuple[Sequence[Sequence[int]], Sequence[Sequence[int]]],
+    never: AbstractSet[tuple[int, int]],
 ) -> Unions:
     """Join strands where an end meets another strand and no pin is there; all frame is one body."""
     unions = Unions(len(sheet.strands))
-    for group in groups:
+    outlines, groups = parts
+    for group in (*outlines, *groups):
         for other in group[1:]:
             unions.join(group[0], other)
     at_pin = {(landing.strand, landing.end) for landing in landings if landing.end is not None}
     # Two bars on one pin touch one another with their arcs and sides, but turn on one another.
-    bar_of = {index: number for number, group in enumerate(groups) for index in group}
+    bar_of = {index: number for number, group in enumerate(outlines) for index in group}
     frame_strands = sorted(active & frame.keys())
     for index in frame_strands[1:]:
         unions.join(frame_strands[0], index)
@@ -94,7 +102,8 @@ def _weld(
                 continue
             for touch in sheet.touching.at(index, end):
                 bars = {bar_of[strand] for strand in (index, touch.strand) if strand in bar_of}
-                if touch.meets and touch.strand in active and len(bars) < 2:
+                slides = (index, touch.strand) in never
+                if touch.meets and touch.strand in active and len(bars) < 2 and not slides:
                     unions.join(index, touch.strand)
     return unions
 
@@ -123,6 +132,7 @@ def _gather(
     members: Mapping[int, int],
     landings: Iterable[Landing],
     frame: Mapping[int, str],
+    kept: AbstractSet[int],
 ) -> list[Body]:
     strands: defaultdict[int, list[int]] = defaultdict(list)
     for index in sorted(active):
@@ -136,12 +146,13 @@ def _gather(
     frame_pins.update(pin for root in frame_roots for pin in pins[root])
     # A line from one frame pivot to another is the frame drawn as a link, not a link that turns on nothing.
     frame_roots.update(root for root in strands if len(pins[root]) > 1 and pins[root] <= frame_pins)
+    kept_roots = {members[index] for index in kept if index in members}
     moving = [
         Body(strands=tuple(each), pins=tuple(sorted(pins[root])), frame=False)
         for root, each in strands.items()
-        if root not in frame_roots and pins[root]
+        if root not in frame_roots and (pins[root] or root in kept_roots)
     ]
-    if not frame_pins:
+    if not frame_pins and frame_roots.isdisjoint(kept_roots):
         return moving
     fixed = tuple(sorted(index for root in frame_roots for index in strands[root]))
     return [Body(strands=fixed, pins=tuple(sorted(frame_pins)), frame=True), *moving]

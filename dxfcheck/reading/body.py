@@ -11,7 +11,8 @@ __all__ = ["Body"]
 class Body:
     """One rigid body: its strands, its pins (indices of sites) and whether it is the frame.
 
-    ``fills`` and ``discs`` are indices of the solid fills and discs that are part of it.
+    ``fills`` and ``discs`` are indices of the solid fills and discs that are part of it, ``wheels`` the pitch circles
+    (indices of primitives). ``block`` says that it is the block of a slide.
     """
 
     strands: tuple[int, ...]
@@ -19,3 +20,5 @@ class Body:
     frame: bool
     discs: tuple[int, ...] = ()
     fills: tuple[int, ...] = ()
+    wheels: tuple[int, ...] = ()
+    block: bool = False

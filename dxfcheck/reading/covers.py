@@ -115,6 +115,7 @@ class _Pool:
             frame=False,
             fills=fills + tuple(each for body in parts for each in body.fills),
             discs=discs + tuple(each for body in parts for each in body.discs),
+            wheels=tuple(each for body in parts for each in body.wheels),
         )
         number = next(self._fresh)
         self.parts[number] = made
@@ -128,13 +129,19 @@ def _edges(outlines: Sequence[Sequence[Point]]) -> Iterator[Edge]:
 
 
 def _drawn_along(sheet: Sheet, body: Body, pins: Collection[int], edges: Sequence[Edge]) -> bool:
-    """Whether all of a body's pins are corners of a fill and all its strands run along the fill's edges."""
-    if not set(body.pins) <= set(pins):
-        return False
+    """Whether a body is a fill's outline, or all its pins are corners of it and its strands run along its edges."""
     radius = max(sheet.pins[pin].radii[-1] for pin in pins)
     within = max(sheet.tolerance.close(radius), sheet.tolerance.rim(radius))
-    points = [point for index in body.strands for point in (*sheet.strands[index].ends, *sheet.strands[index].corners)]
-    return all(min(distance_to_segment(point, *edge) for edge in edges) <= within for point in points)
+
+    def along(index: int) -> bool:
+        strand = sheet.strands[index]
+        points = (*strand.ends, *strand.corners)
+        return all(min(distance_to_segment(point, *edge) for edge in edges) <= within for point in points)
+
+    outlines = [index for index in body.strands if sheet.strands[index].closed and sheet.strands[index].corners]
+    if any(along(index) for index in outlines):
+        return True
+    return set(body.pins) <= set(pins) and all(along(index) for index in body.strands)
 
 
 def _is_bubble(inside: Sequence[Body], disc: Disc) -> bool:

@@ -8,6 +8,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dxfcheck.drawing.primitives import Arc, Path
 from dxfcheck.linkage import Linkage
 from dxfcheck.reading.assemble import Assembled
+from dxfcheck.reading.contact import Contact
 from dxfcheck.reading.landing import Landing
 from dxfcheck.reading.model import Model
 from dxfcheck.reading.parts import Parts
@@ -39,7 +40,7 @@ def linkage_evidence(model: Model, sheet: Sheet, parts: Parts) -> Iterator[Evide
         yield from _frame(assembled, linkage, frame_at, sheet, parts)
         yield from _pins(assembled, linkage, sheet, model)
         yield from _links(assembled, linkage, by_strand, sheet, parts, model)
-        yield from _joints(linkage)
+        yield from _joints(linkage, assembled.contacts)
 
 
 def _frame(
@@ -112,15 +113,27 @@ def _kind(primitive: object) -> str:
     return "arc" if isinstance(primitive, Arc) else "line"
 
 
-def _joints(linkage: Linkage) -> Iterator[Evidence]:
+def _joints(linkage: Linkage, contacts: Sequence[Contact]) -> Iterator[Evidence]:
+    reasons = iter(contacts)
     for joint in linkage.joints:
         first, second = linkage.links[joint.first].name, linkage.links[joint.second].name
         pin = linkage.pins[joint.pin] if joint.pin is not None else None
         count = len(pin.links) if pin is not None else 0
         name = f"{first} / {second}"
+        if joint.kind != "pin":
+            yield Evidence("joint", name, 6, _contact_reason(next(reasons)), joint.handles, joint.at, linkage.name)
+            continue
         if pin is None:
             continue
         why = f"both are pinned at {pin.name}"
         if count > 2:
             why += f", a pin of {count} links, which is {count - 1} joints"
         yield Evidence("joint", name, 7 if count > 2 else 3, why, joint.handles, joint.at, linkage.name)
+
+
+def _contact_reason(contact: Contact) -> str:
+    """Why two links slide or roll on one another, and how far they can go."""
+    why = contact.why
+    if contact.room is not None and min(contact.room) >= 0.0:
+        why += f"; {contact.room[0]:.6g} from one end of its guide, {contact.room[1]:.6g} from the other"
+    return why

@@ -27,12 +27,13 @@ def fates_of(sketch: Sketch, kinds: Sorted, sheet: Sheet, parts: Parts, model: M
     for body in parts.bodies.bodies:
         for number in body.fills:
             fates[kinds.fills[number][0]] = Fate("link", "solid fill of a link")
-    pitch = {index for joint in parts.unread for index in joint.rings}
+    rolling = {ring for contact in parts.contacts for ring in contact.rings}
+    rolling.update(ring for body in parts.bodies.bodies for ring in body.wheels)
     for index, _ in kinds.pitch_rings:
-        if index in pitch:
-            fates[index] = Fate("pitch circle", "rolling contact, not read by this version")
+        if index in rolling:
+            fates[index] = Fate("pitch circle", "rolls on another or on a rack")
         else:
-            fates[index] = Fate("skipped", "ring in a chain linetype or on a pitch layer that touches no other")
+            fates[index] = Fate("skipped", "ring in a chain linetype or on a pitch layer that rolls on nothing")
     assert len(fates) == len(sketch.primitives)  # noqa: S101 (every primitive is accounted for)
     return fates
 
@@ -50,15 +51,12 @@ def _texts(fates: dict[int, Fate], kinds: Sorted, model: Model) -> None:
 
 def _linework(fates: dict[int, Fate], kinds: Sorted, sheet: Sheet, parts: Parts, model: Model) -> None:
     linked = {body for each in model.assembled for body in each.bodies if body is not None}
-    refused = {body for assembly, _ in model.refused for body in assembly.bodies}
     by_strand: dict[int, Fate] = {}
     for number, body in enumerate(parts.bodies.bodies):
         if body.frame:
             fate = Fate("frame", "")
         elif number in linked:
             fate = Fate("link", "part of a link")
-        elif number in refused:
-            fate = Fate("link", "part of a mechanism with a joint that is not read")
         else:
             fate = Fate("other linework", "on a pin, but hangs on no linkage")
         by_strand.update(dict.fromkeys(body.strands, fate))
@@ -66,12 +64,25 @@ def _linework(fates: dict[int, Fate], kinds: Sorted, sheet: Sheet, parts: Parts,
     by_strand.update({index: Fate("frame", why) for index, why in parts.symbols.strokes.items()})
     by_strand.update({index: Fate("frame", why) for index, why in parts.frame.items()})
     by_strand.update(dict.fromkeys(parts.borders, Fate("skipped", "an outline that encloses whole links")))
-    for joint in parts.unread:
-        by_strand.update(dict.fromkeys(joint.strands, Fate(joint.read_as, f"{joint.what}, not read by this version")))
+    by_strand.update(_sliding(parts))
     by_strand.update(dict.fromkeys(sheet.ring_strands, Fate("pin", "part of a ring")))
     for number, (index, _) in enumerate(kinds.lines):
         fate = by_strand.get(number, OTHER)
         fates[index] = fate if fate.why else Fate("frame", "welded to the frame")
+
+
+def _sliding(parts: Parts) -> dict[int, Fate]:
+    """Blocks, slots and pitch lines, by strand; guides stay what they are besides."""
+    found: dict[int, Fate] = {}
+    for slide in parts.slides.slides:
+        what = "a sleeve on the frame" if slide.box.frame else "a block, or a barrel"
+        found.update(dict.fromkeys(slide.box.strands, Fate("slide", what)))
+    for box in parts.slides.unguided:
+        found.update(dict.fromkeys(box.strands, Fate("slide", "a block without a guide")))
+    for slot in parts.slots:
+        found.update(dict.fromkeys(slot.strands, Fate("slot", "a pin runs in it")))
+        found.update(dict.fromkeys(slot.block, Fate("slide", "a block in a slot")))
+    return found
 
 
 def _rings(fates: dict[int, Fate], sheet: Sheet, bodies: Sequence[Body], model: Model) -> None:

@@ -27,17 +27,23 @@ from dxfcheck.settings import (
     STROKE_SHORT_OF_BASE,
 )
 
-__all__ = ["FrameSymbols", "find_frame_symbols"]
+__all__ = ["LEG", "FrameSymbols", "find_frame_symbols"]
+
+LEG = "leg of a frame symbol"
 
 STROKES_OF_A_SYMBOL = 2
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class FrameSymbols:
-    """Strands that are frame by a symbol (bases and legs) and strands that are its hatch strokes, with reasons."""
+    """Strands that are frame by a symbol (bases and legs) and strands that are its hatch strokes, with reasons.
+
+    ``bases`` are the straight pieces (strand, number) that strokes stand on or a hatch runs along.
+    """
 
     frame: dict[int, str]
     strokes: dict[int, str]
+    bases: tuple[tuple[int, int], ...] = ()
 
 
 class _Base(NamedTuple):
@@ -61,9 +67,17 @@ class _Stroke(NamedTuple):
 
 
 def find_frame_symbols(
-    sheet: Sheet, relevant: Collection[int], marks: Collection[int], landings: Sequence[Landing]
+    sheet: Sheet,
+    relevant: Collection[int],
+    marks: Collection[int],
+    landings: Sequence[Landing],
+    boxes: Collection[int] = (),
 ) -> FrameSymbols:
-    """Frame symbols among the linework that hangs together with pins (``relevant`` strands, no ``marks``)."""
+    """Frame symbols among the linework that hangs together with pins (``relevant`` strands, no ``marks``).
+
+    ``boxes`` are strands of rectangles that may slide: a single rod that ends on one is no leg, the two of a triangle
+    are.
+    """
     strands, tolerance = sheet.strands, sheet.tolerance
     ignored = sheet.ring_strands.union(marks)
     landed = {(landing.strand, landing.end) for landing in landings}
@@ -76,12 +90,16 @@ def find_frame_symbols(
     reasons.update({base.strand: "base line with a hatch along it" for base in hatched if base.strand not in reasons})
     lines = [*bases, *hatched]
     legs = [
-        *_legs(sheet, lines, landings),
+        *_legs(sheet, lines, landings, boxes),
         *_polyline_legs(strands, lines, landings, sheet.pins, tolerance),
     ]
     new = (leg for leg in legs if leg not in reasons and leg not in strokes)
-    reasons.update(dict.fromkeys(new, "leg of a frame symbol"))
-    return FrameSymbols(frame=reasons, strokes=dict.fromkeys(strokes, "hatch stroke of a frame symbol"))
+    reasons.update(dict.fromkeys(new, LEG))
+    return FrameSymbols(
+        frame=reasons,
+        strokes=dict.fromkeys(strokes, "hatch stroke of a frame symbol"),
+        bases=tuple((base.strand, base.number) for base in lines),
+    )
 
 
 def _piece(strands: Sequence[Strand], base: _Base) -> Segment:
@@ -307,19 +325,27 @@ def _pins_in(outline: Sequence[Point], pins: Sequence[PinSite], tolerance: Toler
     return found
 
 
-def _legs(sheet: Sheet, bases: Collection[_Base], landings: Sequence[Landing]) -> Iterator[int]:
+def _legs(sheet: Sheet, bases: Collection[_Base], landings: Sequence[Landing], boxes: Collection[int]) -> Iterator[int]:
     """Lines from a base to a pin: the sides of a triangle, whatever angle they meet the ring at."""
     base_strands = {base.strand for base in bases}
     landed = {(landing.strand, landing.end) for landing in landings if landing.how != "loose"}
+    on_box: defaultdict[tuple[int, int], list[int]] = defaultdict(list)
     for landing in landings:
         strand = sheet.strands[landing.strand]
         if landing.end is None or strand.number in base_strands:
             continue
         if (strand.number, 1 - landing.end) in landed:
             continue  # a link between two pins, one of which sits on the base line itself
-        foot = sheet.touching.at(strand.number, 1 - landing.end)
-        if any(touch.strand in base_strands for touch in foot):
+        feet = [
+            touch.strand for touch in sheet.touching.at(strand.number, 1 - landing.end) if touch.strand in base_strands
+        ]
+        if any(foot not in boxes for foot in feet):
             yield strand.number
+        elif feet:
+            on_box[landing.pin, feet[0]].append(strand.number)
+    for legs in on_box.values():
+        if len(legs) > 1:
+            yield from legs
 
 
 def _polyline_legs(

@@ -17,7 +17,6 @@ from dxfcheck.reading.linework import arc_middle
 from dxfcheck.reading.parts import Parts
 from dxfcheck.reading.sheet import Sheet
 from dxfcheck.reading.sorting import Sorted
-from dxfcheck.reading.unread_joints import UnreadJoint
 from dxfcheck.settings import Settings
 
 __all__ = ["Model", "make_model"]
@@ -27,8 +26,8 @@ __all__ = ["Model", "make_model"]
 class Model:
     """The linkages of a sketch, and what it holds besides.
 
-    ``assembled`` has the linkages without drives beside their bodies, ``driven`` the same with drives. ``refused`` are
-    assemblies with a joint that is not read, ``stray`` those that show too little to be called a linkage.
+    ``assembled`` has the linkages without drives beside their bodies, ``driven`` the same with drives. ``stray`` are
+    assemblies that show too little to be called a linkage.
     ``unknown_frame_pins`` are names in the settings that no pin has. ``strand_handles`` are by strand.
     """
 
@@ -36,7 +35,6 @@ class Model:
     fixed: frozenset[int]
     assembled: tuple[Assembled, ...]
     driven: Driven
-    refused: tuple[tuple[Assembly, UnreadJoint], ...]
     stray: tuple[Assembly, ...]
     unknown_frame_pins: tuple[str, ...]
     strand_handles: tuple[str, ...]
@@ -53,22 +51,16 @@ def make_model(sketch: Sketch, settings: Settings, kinds: Sorted, sheet: Sheet, 
     used = {site for body in bodies if not body.frame for site in body.pins}
     texts = [text for _, text in kinds.texts]
     drawn = frozenset(site for body in bodies if body.frame for site in body.pins)
-    assemblies = find_assemblies(bodies, drawn)
+    assemblies = find_assemblies(bodies, drawn, parts.contacts)
     first = {site for assembly in assemblies if assembly.linkage for site in assembly.sites}
     names = name_pins(sheet.pins, used, first, texts, sheet.tolerance)
     stated = {site for site, name in names.names.items() if name in settings.frame_pins}
     fixed = frozenset(stated | drawn)
-    refused, stray, good = [], [], []
-    for assembly in find_assemblies(bodies, fixed) if stated else assemblies:
-        obstacle = _obstacle(assembly, bodies, sheet, parts)
-        if obstacle is not None:
-            refused.append((assembly, obstacle))
-        elif assembly.linkage:
-            good.append(assembly)
-        else:
-            stray.append(assembly)
+    assemblies = find_assemblies(bodies, fixed, parts.contacts) if stated else assemblies
+    good = [assembly for assembly in assemblies if assembly.linkage]
+    stray = [assembly for assembly in assemblies if not assembly.linkage]
     strand_handles = tuple(sketch.handles(strand.primitive) for strand in sheet.strands)
-    named = _named(sketch, sheet, parts, names, used, strand_handles)
+    named = _named(sketch, kinds, sheet, parts, names, used, strand_handles)
     strands = sheet.strands
     assembled = tuple(assemble(good, bodies, strands, sheet.pins, fixed, named, sheet.tolerance))
     driven = drive_linkages(
@@ -77,37 +69,22 @@ def make_model(sketch: Sketch, settings: Settings, kinds: Sorted, sheet: Sheet, 
         texts,
         [sketch.handles(text) for text in texts],
         settings,
+        sketch.unit,
     )
     return Model(
         names=names,
         fixed=fixed,
         assembled=assembled,
         driven=driven,
-        refused=tuple(refused),
         stray=tuple(stray),
         unknown_frame_pins=tuple(name for name in settings.frame_pins if name not in names.names.values()),
         strand_handles=strand_handles,
     )
 
 
-def _obstacle(assembly: Assembly, bodies: Sequence[Body], sheet: Sheet, parts: Parts) -> UnreadJoint | None:
-    """A joint that is not read on one of the assembly's pins, or whose linework one of its ends meets."""
-    joints = [joint for joint in parts.unread if joint.site in assembly.sites]
-    drawn = {index: joint for joint in parts.unread for index in joint.strands}
-    if not joints and drawn:
-        strands = {index for body in assembly.bodies for index in bodies[body].strands}
-        joints = [
-            drawn[touch.strand]
-            for strand in sorted(strands)
-            for end in range(len(sheet.strands[strand].ends))
-            for touch in sheet.touching.at(strand, end)
-            if touch.strand in drawn
-        ]
-    return joints[0] if joints else None
-
-
 def _named(
     sketch: Sketch,
+    kinds: Sorted,
     sheet: Sheet,
     parts: Parts,
     names: PinNames,
@@ -116,6 +93,7 @@ def _named(
 ) -> Named:
     strands = sheet.strands
     frame_handles: defaultdict[int, dict[str, None]] = defaultdict(dict)
+    on_frame: set[int] = set()
     if parts.bodies.bodies and parts.bodies.bodies[0].frame:
         on_frame = set(parts.bodies.bodies[0].strands)
         for landing in parts.bodies.landings:
@@ -125,13 +103,18 @@ def _named(
         pin = sheet.pins[site]
         if pin.frame is not None:
             frame_handles[site].update(dict.fromkeys(sketch.handles(ring) for ring in pin.rings))
+    ring_handles = {index: sketch.handles(ring) for index, ring in kinds.pitch_rings}
+    of_wheels = [tuple(dict.fromkeys(ring_handles[index] for index in body.wheels)) for body in parts.bodies.bodies]
     return Named(
+        strand_handles=strand_handles,
+        ring_handles=ring_handles,
+        frame_strands=on_frame,
         pin_names=names.names,
         pin_keys={site: natural_key(name) for site, name in names.names.items()},
         labelled=frozenset(names.labels),
         body_handles=[
-            tuple(dict.fromkeys(strand_handles[index] for index in body.strands)) if not body.frame else ()
-            for body in parts.bodies.bodies
+            tuple(dict.fromkeys((*(strand_handles[index] for index in body.strands), *rings))) if not body.frame else ()
+            for body, rings in zip(parts.bodies.bodies, of_wheels, strict=True)
         ],
         body_layers=[
             strands[body.strands[0]].primitive.source.layer if body.strands else None for body in parts.bodies.bodies

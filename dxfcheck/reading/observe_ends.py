@@ -36,24 +36,35 @@ def _ends(seen: Seen) -> Iterator[Observation]:
         misses[miss.strand, miss.end].append(miss)
     for index, number in sorted(seen.body_of.items()):
         body = seen.bodies.bodies[number]
-        if body.frame:
+        if body.frame or index in seen.shaped:
             continue
         strand = seen.strands[index]
         for end in range(len(strand.ends)):
             if (index, end) in landed or _on_own_disc(seen, body, strand.ends[end]):
                 continue
-            near = [touch for touch in seen.gaps.at(index, end) if touch.strand in seen.body_of]
+            near = _neighbours(seen, index, end)
             if any(touch.meets for touch in near):
                 continue
             found = _free_end(seen, strand, end, near, misses[index, end], through[index])
             # An arm that hangs on no linkage is told of as a whole; only what it may have missed is told of its ends.
-            if number in seen.body_names or (found.kind == "near-miss" and number not in seen.refused):
+            # A guide, or the rod in a barrel, ends where it likes.
+            if found.kind == "near-miss" or (number in seen.body_names and index not in seen.guides):
                 yield found
 
 
+def _neighbours(seen: Seen, strand: int, end: int) -> list[Touch]:
+    """The linework of bodies near an end, but for what its own body slides on: that may come as near as it likes."""
+    own = seen.body_of[strand]
+    return [
+        touch
+        for touch in seen.gaps.at(strand, end)
+        if touch.strand in seen.body_of and (own, seen.body_of[touch.strand]) not in seen.sliding
+    ]
+
+
 def _on_own_disc(seen: Seen, body: Body, point: Point) -> bool:
-    """Whether an end sits on the rim of a disc that is part of its link."""
-    rings = [seen.sites.discs[disc].ring for disc in body.discs]
+    """Whether an end sits on the rim of a disc or a pitch circle that is part of its link."""
+    rings = [seen.sites.discs[disc].ring for disc in body.discs] + [seen.wheels[wheel] for wheel in body.wheels]
     return any(abs(abs(point - ring.centre) - ring.radius) <= seen.tolerance.rim(ring.radius) for ring in rings)
 
 
@@ -68,7 +79,9 @@ def _free_end(
     )
     if found is not None:
         return found
-    joints = len(seen.shared.intersection(seen.bodies.bodies[seen.body_of[strand.number]].pins))
+    number = seen.body_of[strand.number]
+    sliding = sum(number == one for one, _ in seen.sliding)
+    joints = len(seen.shared.intersection(seen.bodies.bodies[number].pins)) + sliding
     return about_strand(seen, "loose-end", strand, strand.ends[end], severity="warning" if joints < 2 else "note")
 
 
@@ -92,6 +105,8 @@ def _past_a_pin(seen: Seen, strand: Strand, end: int, through: Sequence[int]) ->
 
 
 def _short_of_a_pin(seen: Seen, strand: Strand, end: int, misses: Sequence[Miss]) -> Observation | None:
+    if strand.number in seen.guides:
+        return None
     own = seen.bodies.bodies[seen.body_of[strand.number]].pins if strand.number in seen.body_of else ()
     aimed = [miss for miss in misses if miss.pin not in own and miss.offset <= seen.sites.pins[miss.pin].radii[-1]]
     if not aimed:

@@ -13,16 +13,17 @@ from dxfcheck.reading.model import Model
 from dxfcheck.reading.parts import Parts
 from dxfcheck.reading.reading import Observation
 from dxfcheck.reading.sheet import Sheet
+from dxfcheck.reading.sorting import Sorted
+from dxfcheck.reading.unread_shapes import shapes_shown
 from dxfcheck.settings import EMPTY_PIN_LIKENESS, PLACES_NAMED
 
 __all__ = ["observe_sheet"]
 
 
-def observe_sheet(sketch: Sketch, sheet: Sheet, parts: Parts, model: Model) -> Iterator[Observation]:
+def observe_sheet(sketch: Sketch, kinds: Sorted, sheet: Sheet, parts: Parts, model: Model) -> Iterator[Observation]:
     """All observations on the sheet as a whole."""
-    yield from _no_linkage(model)
+    yield from _no_linkage(kinds, sheet, model)
     yield from _without_frame(model.linkages)
-    yield from _refused(model, sheet)
     yield from _empty_pins(sketch, sheet, model)
     yield from _repeated_labels(model.linkages)
     yield from _floating(sheet, parts, model)
@@ -34,9 +35,9 @@ def observe_sheet(sketch: Sketch, sheet: Sheet, parts: Parts, model: Model) -> I
         )
 
 
-def _no_linkage(model: Model) -> Iterator[Observation]:
-    if not model.linkages and not model.refused:
-        yield Observation(kind="no-linkage", at=None)
+def _no_linkage(kinds: Sorted, sheet: Sheet, model: Model) -> Iterator[Observation]:
+    if not model.linkages:
+        yield Observation(kind="no-linkage", at=None, detail=shapes_shown(kinds, sheet))
 
 
 def _without_frame(linkages: Sequence[Linkage]) -> Iterator[Observation]:
@@ -45,19 +46,6 @@ def _without_frame(linkages: Sequence[Linkage]) -> Iterator[Observation]:
             leftmost = min((pin.at for pin in linkage.pins), key=lambda at: (at.real, at.imag))
             held = linkage.links[linkage.frame].name
             yield Observation(kind="no-frame", at=leftmost, subject=held, mechanism=linkage.name)
-
-
-def _refused(model: Model, sheet: Sheet) -> Iterator[Observation]:
-    for joint in dict.fromkeys(joint for _, joint in model.refused):
-        pin = sheet.pins[joint.site]
-        handles = dict.fromkeys(model.strand_handles[index] for index in joint.strands)
-        yield Observation(
-            kind="joint-not-read",
-            at=pin.at,
-            handles=tuple(handles),
-            subject=model.names.names.get(joint.site, ""),
-            detail=joint.what,
-        )
 
 
 def _empty_pins(sketch: Sketch, sheet: Sheet, model: Model) -> Iterator[Observation]:
@@ -111,7 +99,7 @@ def _floating(sheet: Sheet, parts: Parts, model: Model) -> Iterator[Observation]
     layers = {strands[index].primitive.source.layer for body in linked for index in bodies[body].strands}
     owned = {index for body in bodies for index in body.strands}
     set_apart = {*parts.marks, *parts.symbols.strokes, *parts.borders, *sheet.ring_strands}
-    set_apart.update(index for joint in parts.unread for index in joint.strands)
+    set_apart.update(index for box in parts.slides.boxes for index in box.strands)
     loose = [
         strand
         for strand in strands

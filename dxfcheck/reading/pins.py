@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from typing import NamedTuple
 
@@ -78,22 +78,29 @@ def rings_of_arcs(arcs: Sequence[Strand], tolerance: Tolerance) -> list[tuple[Ri
             groups.join(one, other)
     found = []
     for members in groups.groups():
-        parts = [shapes[member] for member in members]
-        if len(parts) > 1 and _fill_a_turn(parts, tolerance):
+        for turn in _full_turns(members, shapes, tolerance):
+            parts = [shapes[member] for member in turn]
             centre = sum(part.centre for part in parts) / len(parts)
             ring = Ring(parts[0].source, centre, sum(part.radius for part in parts) / len(parts))
-            found.append((ring, tuple(curved[member].number for member in members)))
+            found.append((ring, tuple(sorted(curved[member].number for member in turn))))
     return found
 
 
-def _fill_a_turn(parts: Sequence[Arc], tolerance: Tolerance) -> bool:
-    gap = max(tolerance.t, tolerance.rim(parts[0].radius))
-    ordered = sorted(parts, key=lambda arc: arc.start_angle % math.tau)
-    if abs(sum(arc.sweep for arc in parts) - math.tau) * parts[0].radius > gap * len(parts):
-        return False
-    return all(
-        abs(arc.end - after.start) <= gap for arc, after in zip(ordered, [*ordered[1:], ordered[0]], strict=True)
-    )
+def _full_turns(members: Sequence[int], shapes: Sequence[Arc], tolerance: Tolerance) -> Iterator[list[int]]:
+    """The full turns that arcs on one circle make up, each end on the next one's start: a ring may be drawn twice."""
+    gap = max(tolerance.t, tolerance.rim(shapes[members[0]].radius))
+    left = list(members)
+    while len(left) > 1:
+        turn = [left.pop(0)]
+        while abs(shapes[turn[-1]].end - shapes[turn[0]].start) > gap:
+            after = [each for each in left if abs(shapes[turn[-1]].end - shapes[each].start) <= gap]
+            if not after:
+                break
+            turn.append(after[0])
+            left.remove(after[0])
+        swept = sum(shapes[each].sweep for each in turn)
+        if len(turn) > 1 and abs(swept - math.tau) * shapes[turn[0]].radius <= gap * len(turn):
+            yield turn
 
 
 def rings_of_lines(linework: Linework, touching: Touches, tolerance: Tolerance) -> list[tuple[Ring, tuple[int, ...]]]:

@@ -10,13 +10,14 @@ from dxfcheck.reading.evidence import linkage_evidence
 from dxfcheck.reading.fates import fates_of
 from dxfcheck.reading.model import Model, make_model
 from dxfcheck.reading.observe_ends import observe_ends
+from dxfcheck.reading.observe_joints import observe_joints
 from dxfcheck.reading.observe_lines import observe_lines
 from dxfcheck.reading.observe_sheet import observe_sheet
 from dxfcheck.reading.parts import Parts, find_parts
 from dxfcheck.reading.reading import Reading
 from dxfcheck.reading.seen import Seen
 from dxfcheck.reading.sheet import Sheet, lay_out
-from dxfcheck.reading.sorting import sort_primitives
+from dxfcheck.reading.sorting import Sorted, sort_primitives
 from dxfcheck.reading.tolerance import tolerance_for
 from dxfcheck.reading.touches import find_touches
 from dxfcheck.settings import Settings
@@ -32,13 +33,14 @@ def read_linkages(sketch: Sketch, settings: Settings, *, with_evidence: bool = T
     kinds = sort_primitives(sketch)
     tolerance = tolerance_for(sketch.diagonal, settings, [ring for _, ring in kinds.rings])
     sheet = lay_out(kinds, tolerance)
-    parts = find_parts(kinds, sheet)
+    parts = find_parts(kinds, sheet, settings)
     model = make_model(sketch, settings, kinds, sheet, parts)
-    seen = _seen(sheet, parts, model)
+    seen = _seen(kinds, sheet, parts, model)
     observations = (
-        *observe_sheet(sketch, sheet, parts, model),
+        *observe_sheet(sketch, kinds, sheet, parts, model),
         *observe_ends(seen),
         *observe_lines(seen),
+        *observe_joints(sketch, seen, parts),
         *model.driven.observations,
     )
     return Reading(
@@ -50,8 +52,9 @@ def read_linkages(sketch: Sketch, settings: Settings, *, with_evidence: bool = T
     )
 
 
-def _seen(sheet: Sheet, parts: Parts, model: Model) -> Seen:
+def _seen(kinds: Sorted, sheet: Sheet, parts: Parts, model: Model) -> Seen:
     bodies_at = Counter(site for body in parts.bodies.bodies for site in body.pins)
+    sliding = {pair for contact in parts.contacts for pair in (contact.bodies, contact.bodies[::-1])}
     owners = [
         (body, link.name, each.linkage.name)
         for each in model.assembled
@@ -59,21 +62,28 @@ def _seen(sheet: Sheet, parts: Parts, model: Model) -> Seen:
         if body is not None
     ]
     drawn = sorted(strand for body in parts.bodies.bodies if not body.frame for strand in body.strands)
-    shapes = (strand for joint in parts.unread for strand in joint.strands)
+    shaped = {strand for box in parts.slides.boxes for strand in box.strands}
+    shaped.update(strand for slot in parts.slots for strand in (*slot.strands, *slot.block))
+    guides = {strand for slide in parts.slides.slides for strand in slide.guide.strands}
+    guides.update(parts.slides.inside, parts.welds)
     return Seen(
         strands=sheet.strands,
         gaps=find_touches(sheet.linework, sheet.tolerance, sheet.tolerance.missing, drawn),
         sites=sheet.sites,
         landings=parts.landings,
-        misses=sheet.landings.misses,
+        misses=[miss for miss in sheet.landings.misses if miss.strand not in parts.closed],
         bodies=parts.bodies,
         body_names={body: link for body, link, _ in owners},
         mechanisms={body: mechanism for body, _, mechanism in owners},
         pin_names=dict(model.names.names),
+        site_mechanisms={site: each.linkage.name for each in model.assembled for site in each.sites},
         body_of={strand: number for number, body in enumerate(parts.bodies.bodies) for strand in body.strands},
+        sliding=frozenset(sliding),
         shared=frozenset(site for site, count in bodies_at.items() if count > 1),
-        refused=frozenset(body for assembly, _ in model.refused for body in assembly.bodies),
-        idle=frozenset({*parts.marks, *parts.symbols.strokes, *parts.borders, *sheet.ring_strands, *shapes}),
+        shaped=parts.closed.union(shaped),
+        guides=frozenset(guides | kinds.racks),
+        wheels=dict(kinds.pitch_rings),
+        idle=frozenset({*parts.marks, *parts.symbols.strokes, *parts.borders, *sheet.ring_strands, *shaped}),
         handles=model.strand_handles,
         tolerance=sheet.tolerance,
     )

@@ -46,8 +46,13 @@ def frame_reason(source: Source) -> str | None:
 
 
 def is_pitch(source: Source) -> bool:
-    """Whether a ring with this source may be a pitch circle: by its layer or a chain linetype."""
-    return _matches(source.layer, PITCH_LAYERS) or _matches(source.linetype, CHAIN_LINETYPES)
+    """Whether a ring or line with this source may be a pitch circle or line: by its layer or a chain linetype.
+
+    Hidden and phantom linework is none on any layer.
+    """
+    if _matches(source.linetype, CHAIN_LINETYPES):
+        return True
+    return _matches(source.layer, PITCH_LAYERS) and not _matches(source.linetype, CONSTRUCTION_LINETYPES)
 
 
 def is_label_layer(source: Source) -> bool:

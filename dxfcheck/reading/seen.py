@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
+from dxfcheck.drawing.primitives import Ring
 from dxfcheck.reading.bodies import Bodies
 from dxfcheck.reading.landing import Landing, Miss
 from dxfcheck.reading.linework import Strand
@@ -33,14 +34,22 @@ class Seen:
     body_names: dict[int, str]
     mechanisms: dict[int, str]
     pin_names: dict[int, str]
+    site_mechanisms: Mapping[int, str]
+    """A mechanism that each site is a pin of."""
     body_of: Mapping[int, int]
     """The body of each strand that has one."""
     shared: frozenset[int]
     """Sites where two or more bodies meet, the frame counted."""
-    refused: frozenset[int]
-    """Bodies of mechanisms that are left out for a joint that is not read."""
+    sliding: frozenset[tuple[int, int]]
+    """Pairs of bodies, both ways round, with a joint other than a pin between them."""
+    shaped: frozenset[int]
+    """Strands of blocks and slots: their ends meet one another, if loosely."""
+    guides: frozenset[int]
+    """Strands of guides, and of rods in barrels: they may end on nothing."""
+    wheels: Mapping[int, Ring]
+    """Pitch circles by index of their primitive."""
     idle: frozenset[int]
-    """Strands that are marks, strokes, borders or parts of joints that are not read: they are meant to meet nothing."""
+    """Strands that are marks, strokes, borders, blocks or slots: they are meant to meet nothing."""
     handles: Sequence[str]
     """Handle of each strand's top-level entity."""
     tolerance: Tolerance

@@ -2,9 +2,12 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
+from operator import itemgetter
 
 from dxfcheck.drawing.primitives import Arc, Dimension, Fate, Fill, Path, Ring, Segment, Sketch, Text
+from dxfcheck.reading.racks import pitch_lines
 from dxfcheck.reading.roles import construction_reason, frame_reason, is_pitch
 
 __all__ = ["Sorted", "sort_primitives"]
@@ -14,7 +17,8 @@ __all__ = ["Sorted", "sort_primitives"]
 class Sorted:
     """Indices into Sketch.primitives beside the primitives themselves; ``skipped`` are fates by index.
 
-    ``frame_lines`` are the linework indices that their layer or block makes frame, with the reason.
+    ``frame_lines`` are the linework indices that their layer or block makes frame, with the reason. ``racks`` are the
+    places in ``lines`` (strand numbers) of pitch lines that are tangent to a pitch ring.
     """
 
     rings: tuple[tuple[int, Ring], ...]
@@ -24,6 +28,7 @@ class Sorted:
     texts: tuple[tuple[int, Text], ...]
     fills: tuple[tuple[int, Fill], ...]
     skipped: dict[int, Fate]
+    racks: frozenset[int] = frozenset()
 
 
 def sort_primitives(sketch: Sketch) -> Sorted:
@@ -55,6 +60,7 @@ def sort_primitives(sketch: Sketch) -> Sorted:
                 why = frame_reason(primitive.source)
                 if why is not None:
                     frame_lines[index] = why
+    racks = _take_racks(sketch, [ring for _, ring in pitch_rings], lines, frame_lines, skipped) if pitch_rings else ()
     return Sorted(
         rings=tuple(rings),
         pitch_rings=tuple(pitch_rings),
@@ -63,4 +69,29 @@ def sort_primitives(sketch: Sketch) -> Sorted:
         texts=tuple(texts),
         fills=tuple(fills),
         skipped=skipped,
+        racks=frozenset(racks),
     )
+
+
+def _take_racks(
+    sketch: Sketch,
+    rings: Sequence[Ring],
+    lines: list[tuple[int, Segment | Arc | Path]],
+    frame_lines: dict[int, str],
+    skipped: dict[int, Fate],
+) -> list[int]:
+    """The places of pitch lines in ``lines``: plain ones on a pitch layer, and chain lines moved from ``skipped``."""
+    candidates = [(index, line) for index, line in lines if isinstance(line, Segment) and is_pitch(line.source)]
+    passed_over = ((index, sketch.primitives[index]) for index in skipped)
+    candidates += [(index, line) for index, line in passed_over if isinstance(line, Segment) and is_pitch(line.source)]
+    racks = dict(candidates[place] for place in pitch_lines(rings, [line for _, line in candidates]))
+    if not racks:
+        return []
+    for index in racks.keys() & skipped.keys():
+        del skipped[index]
+        lines.append((index, racks[index]))
+        why = frame_reason(racks[index].source)
+        if why is not None:
+            frame_lines[index] = why
+    lines.sort(key=itemgetter(0))
+    return [place for place, (index, _) in enumerate(lines) if index in racks]

@@ -284,28 +284,3 @@ def _boxes(subject: RuleSubject) -> Iterator[tuple[Point, Point]]:
 
 def _inside(at: Point, low: Point, high: Point) -> bool:
     return low.real <= at.real <= high.real and low.imag <= at.imag <= high.imag
-
-
-@rule(
-    "joint-not-read",
-    "error",
-    "A joint that this version does not read",
-    family="exchange",
-    looks_for="A rectangle round a pin (a sliding block), an obround round a pin (a slot), pitch circles that roll on "
-    "one another.",
-    matters="The mechanism is not counted and gets no speeds: read without that joint it would be another mechanism.",
-    remedy="Check the mechanism by hand; joints that slide or roll are read by a later version.",
-)
-def joint_not_read(subject: RuleSubject) -> Iterator[Finding]:
-    """Mechanisms refused for a joint."""
-    for seen in subject.reading.observations:
-        if seen.kind == "joint-not-read":
-            yield Finding(
-                rule="joint-not-read",
-                severity="error",
-                message=f"{seen.detail} at pin {seen.subject} is a joint not read yet: the mechanism is left out",
-                remedy="check this mechanism by hand; pins alone are read by this version",
-                at=seen.at,
-                handles=seen.handles,
-                layer=seen.layer,
-            )

@@ -5,30 +5,14 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from dxfcheck.reading.reading import Observation
-from dxfcheck.rules.finding import Finding, Severity
+from dxfcheck.rules.finding import Finding
+from dxfcheck.rules.observed import at_pin, figured, finding, observed
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import length, place, plural
 from dxfcheck.settings import PLACES_NAMED
 
 __all__: list[str] = []
-
-
-def _observed(subject: RuleSubject, kind: str) -> Iterator[Observation]:
-    return (each for each in subject.reading.observations if each.kind == kind)
-
-
-def _finding(seen: Observation, severity: Severity, message: str, remedy: str) -> Finding:
-    return Finding(
-        rule=seen.kind,
-        severity=seen.severity or severity,
-        message=message,
-        remedy=remedy,
-        at=seen.at,
-        handles=seen.handles,
-        layer=seen.layer,
-        mechanism=seen.mechanism,
-    )
 
 
 def _of_link(seen: Observation) -> str:
@@ -50,7 +34,7 @@ def _of_link(seen: Observation) -> str:
 )
 def near_miss(subject: RuleSubject) -> Iterator[Finding]:
     """Ends that stop short of a pin or a weld, or run past a pin."""
-    for seen in _observed(subject, "near-miss"):
+    for seen in observed(subject, "near-miss"):
         amount = length(seen.amount or 0.0, subject.sketch.unit)
         message = f"{_of_link(seen)} {seen.detail.format(amount=amount)}"
         if seen.severity == "warning":
@@ -58,7 +42,7 @@ def near_miss(subject: RuleSubject) -> Iterator[Finding]:
         else:
             limit = length(seen.limit or 0.0, subject.sketch.unit)
             remedy = f"snap the end to it (an end within {limit} counts as meeting it)"
-        yield _finding(seen, "error", message, remedy)
+        yield finding(seen, "error", message, remedy)
 
 
 @rule(
@@ -73,12 +57,12 @@ def near_miss(subject: RuleSubject) -> Iterator[Finding]:
 )
 def off_centre_end(subject: RuleSubject) -> Iterator[Finding]:
     """Ends and lines that pass the centre of the pin they are on."""
-    for seen in _observed(subject, "off-centre-end"):
+    for seen in observed(subject, "off-centre-end"):
         amount = length(seen.amount or 0.0, subject.sketch.unit)
         line = f"link {seen.subject}" if seen.subject else "a frame line"
         subject_text = _of_link(seen) if "points" in seen.detail else line
         message = f"{subject_text} {seen.detail.format(amount=amount)}"
-        yield _finding(seen, "warning", message, "draw the line on the pin's centre, or move the ring onto the line")
+        yield finding(seen, "warning", message, "draw the line on the pin's centre, or move the ring onto the line")
 
 
 @rule(
@@ -94,14 +78,14 @@ def off_centre_end(subject: RuleSubject) -> Iterator[Finding]:
 )
 def loose_end(subject: RuleSubject) -> Iterator[Finding]:
     """Free ends of links."""
-    for seen in _observed(subject, "loose-end"):
+    for seen in observed(subject, "loose-end"):
         if seen.severity == "note":
             message = f"{_of_link(seen)} is free: read as the free end of a lever"
             remedy = "nothing, if the lever ends there; else put a pin or its neighbour there"
         else:
             message = f"{_of_link(seen)} ends on nothing, and the link has fewer than two joints"
             remedy = "put a ring on it if it is pinned there, or join it to the line it belongs to"
-        yield _finding(seen, "warning", message, remedy)
+        yield finding(seen, "warning", message, remedy)
 
 
 @rule(
@@ -116,12 +100,12 @@ def loose_end(subject: RuleSubject) -> Iterator[Finding]:
 )
 def double_line(subject: RuleSubject) -> Iterator[Finding]:
     """Repeated lines of links."""
-    for seen in _observed(subject, "double-line"):
+    for seen in observed(subject, "double-line"):
         message = f"a line of link {seen.subject} is drawn twice; it is read once"
         if seen.amount is not None:
             apart = length(seen.amount, subject.sketch.unit)
             message = f"link {seen.subject} lies within {apart} of another between the same pins; read as two links"
-        yield _finding(seen, "warning", message, f"delete one of the two ({', '.join(seen.handles)})")
+        yield finding(seen, "warning", message, f"delete one of the two ({', '.join(seen.handles)})")
 
 
 @rule(
@@ -135,9 +119,9 @@ def double_line(subject: RuleSubject) -> Iterator[Finding]:
 )
 def short_line(subject: RuleSubject) -> Iterator[Finding]:
     """Lines too short to be links."""
-    for seen in _observed(subject, "short-line"):
+    for seen in observed(subject, "short-line"):
         amount = length(seen.amount or 0.0, subject.sketch.unit)
-        yield _finding(
+        yield finding(
             seen, "note", f"a line only {amount} long lies on the linkage; it is not read as a link", "delete it"
         )
 
@@ -154,10 +138,10 @@ def short_line(subject: RuleSubject) -> Iterator[Finding]:
 )
 def stacked_pins(subject: RuleSubject) -> Iterator[Finding]:
     """Pins that stand on one another."""
-    for seen in _observed(subject, "stacked-pins"):
+    for seen in observed(subject, "stacked-pins"):
         amount = length(seen.amount or 0.0, subject.sketch.unit)
         message = f"pins {seen.subject} lie only {amount} apart; they are read as two pins"
-        yield _finding(seen, "warning", message, "move both rings onto one centre if they are one pin, else apart")
+        yield finding(seen, "warning", message, "move both rings onto one centre if they are one pin, else apart")
 
 
 @rule(
@@ -171,9 +155,9 @@ def stacked_pins(subject: RuleSubject) -> Iterator[Finding]:
 )
 def empty_pin(subject: RuleSubject) -> Iterator[Finding]:
     """Rings without links."""
-    for seen in _observed(subject, "empty-pin"):
+    for seen in observed(subject, "empty-pin"):
         message = "this ring looks like a pin of the linkage, but no link ends on it"
-        yield _finding(seen, "warning", message, "draw the link to it, or delete the ring")
+        yield finding(seen, "warning", message, "draw the link to it, or delete the ring")
 
 
 @rule(
@@ -187,9 +171,9 @@ def empty_pin(subject: RuleSubject) -> Iterator[Finding]:
 )
 def duplicate_label(subject: RuleSubject) -> Iterator[Finding]:
     """Labels that stand at several pins of one mechanism."""
-    for seen in _observed(subject, "duplicate-label"):
+    for seen in observed(subject, "duplicate-label"):
         message = f"the label {seen.subject} stands at {int(seen.amount or 0)} pins, also at {seen.detail}"
-        yield _finding(seen, "warning", message, "give each pin a label of its own")
+        yield finding(seen, "warning", message, "give each pin a label of its own")
 
 
 @rule(
@@ -221,3 +205,20 @@ def unlabelled_pins(subject: RuleSubject) -> Iterator[Finding]:
         layer=first[0].layer,
         mechanism=unnamed[0][0] if len(mechanisms) == 1 else None,
     )
+
+
+@rule(
+    "weld-on-ring",
+    "warning",
+    "A weld mark at the ring of a pin",
+    family="linework",
+    looks_for="A small arc about the end of a link on the rim of a pin: it says that the ring is part of that link.",
+    matters="The link is read as pinned there. Where it is the only link with the mark, that is the same; where two "
+    "links are welded to one ring they are one rigid link, and the count is too high.",
+    remedy="Draw links that are welded to one another as one polyline through the pin.",
+)
+def weld_on_ring(subject: RuleSubject) -> Iterator[Finding]:
+    """Weld marks where links end on pins."""
+    for seen in observed(subject, "weld-on-ring"):
+        remedy = "nothing, if one link alone is welded to the ring; draw two as one polyline through the pin"
+        yield finding(seen, "warning", f"{at_pin(seen)}{figured(seen, subject.sketch.unit)}", remedy)

@@ -8,6 +8,7 @@ from collections.abc import Iterator
 from dxfcheck.analysis.results import Analysis, DeadCentre, DriveVerdict
 from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.rules.finding import Finding
+from dxfcheck.rules.observed import finding, observed
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
 
@@ -74,17 +75,27 @@ def assumed_drive(subject: RuleSubject) -> Iterator[Finding]:
 )
 def unknown_drive(subject: RuleSubject) -> Iterator[Finding]:
     """Drive texts that fit no link."""
-    for seen in subject.reading.observations:
-        if seen.kind == "unknown-drive":
-            yield Finding(
-                rule="unknown-drive",
-                severity="error",
-                message=f"the drive '{seen.subject}' is left out: {seen.detail}",
-                remedy="name the link by two of its pins, as in 'ω_AB = 4 rad/s', or move the note to its link",
-                at=seen.at,
-                handles=seen.handles,
-                layer=seen.layer,
-            )
+    for seen in observed(subject, "unknown-drive"):
+        message = f"the drive '{seen.subject}' is left out: {seen.detail}"
+        remedy = "name the link by two of its pins, as in 'ω_AB = 4 rad/s', or move the note to its link"
+        yield finding(seen, "error", message, remedy)
+
+
+@rule(
+    "drive-unit-assumed",
+    "warning",
+    "A sliding speed on a drawing without units",
+    family="pose",
+    looks_for="A drive in m/s, mm/s or in/s, stated by note or option, on a drawing whose length unit is not known.",
+    matters="The figure is taken as so many of the drawing's own units a second: if those are another unit, all "
+    "speeds are wrong by that factor.",
+    remedy="State the unit: $INSUNITS in the drawing's header, or --units.",
+)
+def drive_unit_assumed(subject: RuleSubject) -> Iterator[Finding]:
+    """Sliding speeds whose unit could not be brought to the drawing's."""
+    for seen in observed(subject, "drive-unit-assumed"):
+        message = f"the drive '{seen.subject}': {seen.detail}"
+        yield finding(seen, "warning", message, "state the drawing's unit in its header ($INSUNITS) or with --units")
 
 
 @rule(
@@ -144,7 +155,11 @@ def dead_centre(subject: RuleSubject) -> Iterator[Finding]:
         for centre in analysis.dead_centres:
             first, second = (linkage.links[link].name for link in centre.links)
             pin = linkage.pins[centre.pin]
-            names = f"{first} and {second} are in line at {pin.name}, within {math.degrees(centre.angle):.2g} deg"
+            within = f"{pin.name}, within {math.degrees(centre.angle):.2g} deg"
+            if centre.square:
+                names = f"{first} and {second} push on one another square to the way they could go at {within}"
+            else:
+                names = f"{first} and {second} are in line at {within}"
             message = f"dead centre: {names}{_cannot_drive(linkage, centre)}"
             yield Finding(
                 rule="dead-centre",

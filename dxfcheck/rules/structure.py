@@ -41,13 +41,17 @@ def _about(linkage: Linkage, name: str, severity: Severity, message: str, remedy
 def no_linkage(subject: RuleSubject) -> Iterator[Finding]:
     """Drawings without a linkage."""
     drawn = any(entity.fate != PAPER_SPACE for entity in subject.sketch.entities)
-    if drawn and any(seen.kind == "no-linkage" for seen in subject.reading.observations):
-        yield Finding(
-            rule="no-linkage",
-            severity="note",
-            message="the drawing holds no linkage: nothing joins a link to a frame, and no link has two shared pins",
-            remedy="if one was meant: draw pins as rings, lines ending on them, a frame (layer FRAME or hatching)",
-        )
+    for seen in subject.reading.observations if drawn else ():
+        if seen.kind == "no-linkage":
+            shown = f"; it shows {seen.detail}, not read as no pin ties them to links" if seen.detail else ""
+            yield Finding(
+                rule="no-linkage",
+                severity="note",
+                message="the drawing holds no linkage: nothing joins a link to a frame, and no link has two shared pins"
+                + shown,
+                remedy="if one was meant: draw pins as rings, lines ending on them, a frame (layer FRAME or hatching), "
+                "pitch circles on a layer PITCH",
+            )
 
 
 @rule(

@@ -2,6 +2,7 @@ from __future__ import annotations
 
 import cmath
 import math
+from dataclasses import replace
 
 import pytest
 
@@ -90,3 +91,56 @@ def test_angle_is_what_is_missing_from_a_straight_line(degrees: float, seen: boo
     assert bool(dead_centres(model)) is seen
     wide: tuple[DeadCentre, ...] = dead_centres(model, math.radians(5.0))
     assert [centre.angle for centre in wide] == [pytest.approx(math.radians(degrees))]
+
+
+LEVER_PINS = {"O": "ground crank", "L": "ground lever", "B": "crank block"}
+
+
+def slotted_lever(b: complex, pivot: complex, *, block: bool) -> list[tuple[str, str | None]]:
+    """A crank about 0 whose pin runs along a lever about a pivot, in a block or in a slot of it."""
+    points = {"O": 0j, "L": pivot, "B": b}
+    if block:
+        slide: list[Other] = [("slide", b, "lever", "block", b - pivot)]
+        return found(points, LEVER_PINS, others=slide)
+    slot: list[Other] = [("pin in slot", b, "lever", "crank", b - pivot)]
+    pins = {name: links for name, links in LEVER_PINS.items() if name != "B"}
+    model = linkage(points, pins, others=slot, tracing={"B": "crank"})
+    at_pin = replace(model, joints=(*model.joints[:-1], replace(model.joints[-1], pin=2)))
+    centres = analyse(at_pin).dead_centres
+    assert all(centre.square for centre in centres)
+    return [("B", None if centre.driven is None else model.links[centre.driven].name) for centre in centres]
+
+
+@pytest.mark.parametrize("block", [True, False])
+def test_a_crank_square_to_its_slotted_lever_cannot_be_driven_by_it(*, block: bool) -> None:
+    """The ends of a quick return's stroke: cos = crank / distance at the pivot of the crank."""
+    pivot = -100j
+    for side in (-1.0, 1.0):
+        b = 40.0 * cmath.exp(1j * (side * math.acos(0.4) - math.pi / 2.0))
+        assert slotted_lever(b, pivot, block=block) == [("B", "crank")]
+    assert slotted_lever(40.0 + 0j, pivot, block=block) == []
+    assert slotted_lever(40j, pivot, block=block) == []
+
+
+def test_a_lever_driven_where_it_cannot_drive_its_crank_is_at_its_limit() -> None:
+    b = 40.0 * cmath.exp(1j * (math.acos(0.4) - math.pi / 2.0))
+    slide: list[Other] = [("slide", b, "lever", "block", b + 100j)]
+    points = {"O": 0j, "L": -100j, "B": b}
+    by_lever = analyse(linkage(points, LEVER_PINS, others=slide, turn={"lever": 1.0}))
+    assert by_lever.drives[0].outcome == "at limit"
+    by_crank = Solved(linkage(points, LEVER_PINS, others=slide, turn={"crank": 1.0}))
+    assert abs(by_crank.turn("lever")) < 1e-12
+
+
+def test_a_yoke_at_the_end_of_its_stroke_cannot_drive_the_crank() -> None:
+    pins = {"O": "ground crank", "B": "crank block"}
+    for b, expected in ((50 + 0j, [("B", "crank")]), (50j, []), (30 + 40j, [])):
+        others: list[Other] = [("slide", b, "yoke", "block", 1j), ("slide", 90j, "ground", "yoke", 1 + 0j)]
+        assert found({"O": 0j, "B": b}, pins, others=others) == expected
+
+
+def test_a_slot_along_the_slide_of_its_own_link_drives_nothing() -> None:
+    """A slot that runs the way its link slides pushes it nowhere."""
+    pins = {"O": "ground crank", "B": "crank block"}
+    others: list[Other] = [("slide", 30 + 40j, "yoke", "block", 1 + 0j), ("slide", 90j, "ground", "yoke", 1 + 0j)]
+    assert found({"O": 0j, "B": 30 + 40j}, pins, others=others) == [("B", "yoke")]

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import cmath
 import math
+from collections.abc import Callable
 from dataclasses import replace
 
 import pytest
@@ -11,6 +13,7 @@ from dxfcheck.analysis import analyse
 from dxfcheck.analysis.results import Analysis
 from dxfcheck.linkage import Drive, Linkage
 from tests.closed_forms import circles_meet
+from tests.drive_models import FORE, LEAN, LEG, REAR, carriage, drive, hoist, lift_table, shuttle
 from tests.examples import FOUR_BAR, FOUR_BAR_POINTS, WATT, WATT_POINTS
 from tests.model import Other, Solved, linkage
 
@@ -277,3 +280,99 @@ def test_drive_of_one_moving_link_against_another() -> None:
     assert case.analysis.joints[1].relative_angular_velocity == pytest.approx(2.0)
     assert case.analysis.disagreement is not None
     assert case.analysis.disagreement < 1e-9
+
+
+def agreed(case: Solved) -> bool:
+    """Whether all is solved, and both formulations say the same."""
+    analysis = case.analysis
+    return analysis.solved and analysis.disagreement is not None and analysis.disagreement < 1e-9
+
+
+def swapped(model: Linkage) -> Linkage:
+    """The same with the links of each joint that is no pin the other way round; the drives stay as they are."""
+    turned = [
+        joint if joint.kind == "pin" else replace(joint, first=joint.second, second=joint.first)
+        for joint in model.joints
+    ]
+    return replace(model, joints=tuple(turned))
+
+
+@pytest.mark.parametrize("side", [swapped, replace], ids=["rod first", "barrel first"])
+@pytest.mark.parametrize("rate", [40.0, -3.5])
+@pytest.mark.parametrize("tip", [60 + 80j, -20 + 95j, 90 + 30j, 10 - 70j])
+def test_arm_lifted_by_a_telescope_on_the_frame(tip: complex, rate: float, side: Callable[[Linkage], Linkage]) -> None:
+    """Law of cosines: L^2 = a^2 + b^2 - 2 a b cos(phi), so L dL/dt = a b sin(phi) dphi/dt."""
+    foot = 90 + 0j
+    (model,) = drive(hoist(tip, foot), options=[f"C-D = {rate} mm/s"]).linkages
+    case = Solved(side(model))
+    angle = cmath.phase(tip)
+    assert case.turn("A-C") == pytest.approx(abs(tip - foot) * rate / (abs(tip) * abs(foot) * math.sin(angle)))
+    assert agreed(case)
+
+
+@pytest.mark.parametrize("side", [swapped, replace], ids=["rod first", "barrel first"])
+@pytest.mark.parametrize("turned", [1 + 0j, 1j, cmath.exp(2j), cmath.exp(4j)])
+def test_lift_table_raised_by_a_telescope_between_its_legs(turned: complex, side: Callable[[Linkage], Linkage]) -> None:
+    """The angle between the arms to E and F is twice the lean of the legs, whose top is 2 LEG sin(lean) up."""
+    (model,) = drive(lift_table(turned), options=["E-F = 50 mm/s"]).linkages
+    case = Solved(side(model))
+    length = math.sqrt(REAR**2 + FORE**2 - 2 * REAR * FORE * math.cos(2 * LEAN))
+    lean_rate = length * 50.0 / (REAR * FORE * math.sin(2 * LEAN)) / 2
+    assert case.turn("A-C-E-M") == pytest.approx(lean_rate)
+    assert case.turn("F-M-P-Q") == pytest.approx(-lean_rate)
+    assert (case.velocity("C") / turned).imag == pytest.approx(2 * LEG * math.cos(LEAN) * lean_rate)
+    assert agreed(case)
+
+
+def test_crank_turned_by_its_block_along_a_moving_lever() -> None:
+    """Velocity of the crank pin along the lever, seen from it, is the drive; across it, it is the lever's turning."""
+    (model,) = drive(shuttle(), options=["B = 50 mm/s"]).linkages
+    case = Solved(model)
+    along = (70 + 180j) / abs(70 + 180j)
+    relative = 1j * case.turn("B-O") * (30 + 40j) - 1j * case.turn("P-Q") * (40 + 100j)
+    assert relative == pytest.approx(50.0 * along)
+    assert agreed(case)
+
+
+def test_block_that_slides_on_a_carriage_adds_their_speeds() -> None:
+    (model,) = drive(carriage(), options=["P-Q against frame = 3 mm/s", "C against P-Q = 4 mm/s"]).linkages
+    case = Solved(model)
+    assert case.velocity("C") == pytest.approx(7.0)
+    assert agreed(case)
+
+
+def test_turns_of_an_open_arm_add_up() -> None:
+    points = {"A": 0j, "B": 50 + 0j, "C": 50 + 30j}
+    drives = [Drive(link=1, against=0, rate=1.5), Drive(link=2, against=1, rate=-4.0)]
+    case = Solved(linkage(points, {"A": "ground a", "B": "a b"}, tracing={"C": "b"}, drives=drives))
+    assert case.turn("b") == pytest.approx(-2.5)
+    assert case.velocity("C") == pytest.approx(75j + 75.0)
+    assert agreed(case)
+
+
+def test_two_relative_drives_of_a_five_bar() -> None:
+    drives = [Drive(link=2, against=1, rate=2.0), Drive(link=4, against=3, rate=-1.0)]
+    case = Solved(linkage(FIVE_BAR_POINTS, FIVE_BAR, drives=drives))
+    assert case.turn("b") - case.turn("a") == pytest.approx(2.0)
+    assert case.turn("d") - case.turn("c") == pytest.approx(-1.0)
+    assert agreed(case)
+
+
+def test_drive_between_links_that_share_no_joint() -> None:
+    drive_across = Drive(link=3, against=1, rate=2.0)
+    case = Solved(linkage(FOUR_BAR_POINTS, FOUR_BAR, drives=[drive_across]))
+    assert case.turn("rocker") - case.turn("crank") == pytest.approx(2.0)
+    assert agreed(case)
+
+
+def test_second_sliding_drive_that_contradicts_the_first_tells_the_speed_that_fits() -> None:
+    (model,) = drive(hoist(), options=["C-D = 50 mm/s", "C against D = 30 mm/s"]).linkages
+    analysis = analyse(model)
+    assert outcomes(analysis) == ["taken", "conflict"]
+    assert analysis.drives[1].implied == pytest.approx(-30.0)
+
+
+def test_turning_of_a_block_on_the_frame_is_at_its_limit() -> None:
+    slide: list[Other] = [("slide", 150 + 0j, "ground", "block", 1 + 0j)]
+    analysis = analyse(linkage(SLIDER_POINTS, SLIDER_PINS, others=slide, turn={"block": 1.0}))
+    assert outcomes(analysis) == ["at limit"]

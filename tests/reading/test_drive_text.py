@@ -120,6 +120,8 @@ def test_a_link_is_named_by_its_subscript(note: str, name: str) -> None:
         ("v = 3 m/min", 0.05),
         ("v = 10 in/s", 0.254),
         ("v = 1 ft/s", 0.3048),
+        ("v = 600 mm/min", 0.01),
+        ("v = 2 m/sec", 2.0),
     ],
 )
 def test_a_sliding_speed_comes_in_metres_a_second(note: str, rate: float) -> None:
@@ -138,6 +140,9 @@ def test_a_sliding_speed_comes_in_metres_a_second(note: str, rate: float) -> Non
         ("ω = 3 m/s", "does not go with that unit"),
         ("n = 3 mm/s", "does not go with that unit"),
         ("v = 20 mm/s cw", "has no sense"),
+        ("v_AB/CD = 20 mm/s", "two points or two links"),
+        ("ω_AB against BC = 3 rad/s against CD", "more than once"),
+        ("ω = 1e308 rps", "finite"),
         ("ω = 1e999 rad/s", "finite"),
     ],
 )
@@ -160,6 +165,8 @@ def test_a_note_that_contradicts_itself_is_in_doubt(note: str, doubt: str) -> No
         "ω = rad/s",
         "α = 3 rad/s2",
         "ω = 10 rad/s²",
+        "ω = 10 rad/s^2",
+        "v = 10 m/s^2",
         "M8 x 20",
         "n rpm",
         "\ufffd\ufffd",
@@ -203,6 +210,11 @@ def test_an_option_names_a_link_and_a_speed(option: str, name: str, rate: float)
         ("A-B = 3 rad/s = 4 rad/s", "no speed with a unit"),
         ("A-B = -3 rad/s cw", "minus sign"),
         ("A-B = 1e999 rad/s", "finite"),
+        ("against B-C = 3 rad/s", "one side of 'against'"),
+        ("A-B against = 3 rad/s", "one side of 'against'"),
+        ("A-B against B-C = 3 rad/s against C-D", "more than once"),
+        ("block at C = 3 mm/s cw", "has no sense"),
+        ("A-B = 3 rad/s against", "no speed with a unit"),
     ],
 )
 def test_an_option_that_cannot_be_used_says_why_and_shows_how(option: str, reason: str) -> None:
@@ -210,6 +222,52 @@ def test_an_option_that_cannot_be_used_says_why_and_shows_how(option: str, reaso
         parse_drive(option)
     assert repr(option) in str(caught.value)
     assert "write for instance" in str(caught.value)
+
+
+@pytest.mark.parametrize(
+    ("option", "name", "against", "kind", "rate"),
+    [
+        ("A-B against B-C = 10 rad/s", "A-B", "B-C", "turn", 10.0),
+        ("A-B = 10 rad/s cw against B-C", "A-B", "B-C", "turn", -10.0),
+        ("Block  at C against D-E = 50 mm/s", "block at C", "D-E", "slide", 0.05),
+        ("D-E = 50 mm/s", "D-E", None, "slide", 0.05),
+        ("Wheel at O = 1 rps", "wheel at O", None, "turn", math.tau),
+        ("A-B (2) against frame = 1 m/s", "A-B (2)", "frame", "slide", 1.0),
+    ],
+)
+def test_an_option_may_name_blocks_wheels_and_what_a_link_runs_against(
+    option: str, name: str, against: str | None, kind: str, rate: float
+) -> None:
+    statement = parse_drive(option)
+    assert (statement.name, statement.against, statement.kind) == (name, against, kind)
+    assert statement.rate == pytest.approx(rate)
+
+
+@pytest.mark.parametrize(
+    ("note", "name", "against"),
+    [
+        ("v_block at C = 5 mm/s", "block at C", None),
+        ("v_C against DE = 5 mm/s", "C", "DE"),
+        ("v = 5 mm/s against block at C", None, "block at C"),
+        ("v against D-E (2) = 5 mm/s", None, "D-E (2)"),
+        ("w/ v = 5 mm/s", None, None),
+    ],
+)
+def test_a_note_may_name_blocks_and_what_a_link_runs_against(note: str, name: str | None, against: str | None) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert (statement.name, statement.against, statement.doubt) == (name, against, None)
+
+
+@pytest.mark.parametrize(
+    ("note", "written", "metres"),
+    [("v = 50 mm/s", 50.0, 0.001), ("v = 3 m/min", 0.05, 1.0), ("v = -2 in/sec", -2.0, 0.0254)],
+)
+def test_a_sliding_speed_keeps_its_figure_a_second_and_its_unit(note: str, written: float, metres: float) -> None:
+    statement = find_statement(note)
+    assert statement is not None
+    assert statement.written == pytest.approx(written)
+    assert statement.metres == metres
 
 
 def test_several_drives_in_one_note() -> None:

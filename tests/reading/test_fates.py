@@ -44,7 +44,7 @@ BESIDE_CRANK = 12 + 14j
             path(-60 - 60j, 300 - 60j, 300 + 200j, -60 + 200j, closed=True), "skipped", "encloses", id="a sheet border"
         ),
         pytest.param(
-            ring(300j, layer="GEAR"), "skipped", "touches no other", id="a ring on a pitch layer beside no other"
+            ring(300j, layer="GEAR"), "skipped", "rolls on nothing", id="a ring on a pitch layer beside no other"
         ),
     ],
 )
@@ -82,10 +82,10 @@ def test_a_disc_is_told_from_a_pin() -> None:
         pytest.param(obround(C - 9, C + 9, 5), "slot", id="slot"),
     ],
 )
-def test_a_mechanism_with_a_joint_that_is_not_read_is_accounted_for(shape: Drawn, word: str) -> None:
+def test_what_a_pin_slides_in_is_told_from_the_link_that_ends_there(shape: Drawn, word: str) -> None:
     read_as = fates(*pins(), *rods()[:2], shape._replace(handle="shape"))
     assert read_as["shape"].read_as == word
-    assert read_as["coupler"].why == "part of a mechanism with a joint that is not read"
+    assert read_as["coupler"].why == "part of a link"
 
 
 def test_pins_and_lines_that_hang_on_no_linkage() -> None:

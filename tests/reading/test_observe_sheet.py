@@ -9,6 +9,7 @@ from tests.sketches import (
     C,
     D,
     Drawn,
+    arc,
     labels,
     line,
     obround,
@@ -97,18 +98,25 @@ def test_a_speck_on_a_link_is_told_with_its_length() -> None:
     assert seen.handles == ("speck",)
 
 
-@pytest.mark.parametrize(
-    ("shape", "what"),
-    [
-        pytest.param(rectangle(C, 24, 14), "sliding block", id="block"),
-        pytest.param(obround(C - 9, C + 9, 5), "slot", id="slot"),
-    ],
-)
-def test_a_mechanism_with_a_joint_that_is_not_read_is_refused(shape: Drawn, what: str) -> None:
-    seen = only("joint-not-read", *pins(), *rods()[:2], shape, *labels())
-    assert (seen.at, seen.subject) == (C, "C")
-    assert what in seen.detail
-    assert observed("no-linkage", *pins(), *rods()[:2], shape, *labels()) == []
+def test_a_sheet_without_a_linkage_says_what_it_shows_all_the_same() -> None:
+    block = [rectangle(0j, 24, 14), line(-60, -12), line(12, 60)]
+    wheels = [ring(100j, 20.0), ring(140j, 20.0)]
+    (seen,) = observed("no-linkage", *block, *wheels, obround(200j, 240j, 5))
+    assert seen.detail == (
+        "1 rectangle on a line (a slide), 1 obround (a slot), 1 pair of rings that touch or cross (wheels)"
+    )
+
+
+def test_other_linework_is_not_said_to_show_anything() -> None:
+    (seen,) = observed("no-linkage", line(0j, 50j), rectangle(100j, 30, 20), ring(300j))
+    assert seen.detail == ""
+
+
+def test_a_weld_mark_on_a_ring_says_that_the_link_is_read_as_pinned_there() -> None:
+    marked = [*tipper(), arc(B + 4, 3.0, 0.0, 90.0, handle="weld"), line(B + 4, B + 60, handle="arm")]
+    seen = only("weld-on-ring", *marked)
+    assert seen.subject == "B"
+    assert seen.handles == ("arm", "weld")
 
 
 def test_pins_of_the_tray_tipper_are_all_used() -> None:

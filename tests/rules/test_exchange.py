@@ -4,7 +4,7 @@ import pytest
 
 from dxfcheck.drawing.primitives import Entity, Fate, LengthUnit, Notice
 from tests.rules.subjects import findings, only
-from tests.sketches import B, C, Drawn, line, pins, rectangle, rods, text, tipper
+from tests.sketches import line, tipper
 
 UNITLESS = LengthUnit("unitless", "assumed", None)
 AMONG, ELSEWHERE = 80 + 40j, 900 + 900j
@@ -151,15 +151,3 @@ def test_a_block_with_unread_parts_is_told() -> None:
     assert found.severity == "warning"
     assert "parts of a block reference" in found.message
     assert "a SPLINE in block CAM" in found.message
-
-
-def labelled(at: complex) -> list[Drawn]:
-    return [text("B", B + 5), text("C", at + 5)]
-
-
-def test_a_joint_that_is_not_read_names_its_pin() -> None:
-    found = only("joint-not-read", *pins(), *rods()[:2], rectangle(C, 24, 14, handle="block"), *labelled(C))
-    assert found.severity == "error"
-    assert "sliding block" in found.message
-    assert "pin C" in found.message
-    assert (found.at, found.handles) == (C, ("block",))

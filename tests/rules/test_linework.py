@@ -1,10 +1,13 @@
 from __future__ import annotations
 
+import cmath
+import math
+
 import pytest
 
 from dxfcheck.drawing.primitives import LengthUnit
 from tests.rules.subjects import findings, only
-from tests.sketches import A, B, C, D, Drawn, labels, line, pins, ring, rod, rods, text, tipper
+from tests.sketches import RADIUS, A, B, C, D, Drawn, arc, labels, line, pins, ring, rod, rods, text, tipper
 
 ALONG = (C - B) / abs(C - B)
 MIDDLE = (B + C) / 2
@@ -18,6 +21,7 @@ RULES = (
     "empty-pin",
     "duplicate-label",
     "unlabelled-pins",
+    "weld-on-ring",
 )
 
 
@@ -90,6 +94,14 @@ def test_a_double_line_names_both_handles_in_its_remedy() -> None:
     found = only("double-line", *tipper(), rod(B, C, handle="twice"))
     assert (found.severity, found.message) == ("warning", "a line of link B-C is drawn twice; it is read once")
     assert "(twice, coupler)" in found.remedy
+
+
+def test_a_weld_mark_at_a_ring_says_how_the_link_was_read() -> None:
+    mark = arc(C - RADIUS * ALONG, 3.0, math.degrees(cmath.phase(-ALONG)), 112.02, handle="mark")
+    found = only("weld-on-ring", *tipper(), mark)
+    assert (found.severity, found.handles) == ("warning", ("coupler", "mark"))
+    assert found.message.startswith("at pin C: a weld mark stands where the link ends on the ring")
+    assert "one polyline through the pin" in found.remedy
 
 
 def test_a_speck_is_a_note_with_its_length() -> None:

@@ -2,9 +2,10 @@ from __future__ import annotations
 
 import pytest
 
+from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.settings import Settings
 from tests.rules.subjects import findings, only
-from tests.sketches import A, Drawn, line, ring, rod, text, tipper
+from tests.sketches import A, Drawn, line, rectangle, ring, rod, text, tipper
 
 FAR_OFF = 60 + 400j
 
@@ -41,6 +42,25 @@ def test_an_unknown_drive_is_told_at_its_note() -> None:
     assert (found.at, found.handles) == (FAR_OFF, ("note",))
 
 
+def pusher() -> list[Drawn]:
+    """A crank AB, a rod BC and a block at C on a guide of the frame."""
+    end = 130 + 0j
+    places = {"A": 0j, "B": 20 + 35j, "C": end}
+    drawn = [ring(at, layer="FRAME" if name == "A" else "0") for name, at in places.items()]
+    drawn += [text(name, at + 4 + 8j) for name, at in places.items()]
+    guided = rectangle(end, 20, 12), line(end - 50 - 6j, end + 40 - 6j, layer="FRAME")
+    return [*drawn, rod(0j, places["B"]), rod(places["B"], end), *guided]
+
+
+def test_a_sliding_speed_without_a_unit_says_how_it_was_taken() -> None:
+    unitless, settings = LengthUnit("unitless", "assumed", None), Settings(drives=("block at C = 50 mm/s",))
+    found = only("drive-unit-assumed", *pusher(), unit=unitless, settings=settings)
+    assert (found.severity, found.mechanism) == ("warning", "M1")
+    assert "taken as 50 of its units a second" in found.message
+    assert "--units" in found.remedy
+    assert findings("drive-unit-assumed", *pusher(), settings=settings) == []
+
+
 def test_drives_that_contradict_one_another_tell_the_speed_that_fits() -> None:
     settings = Settings(drives=("A-B = 2 rad/s", "C-D = 99 rad/s"))
     found = only("drive-conflict", *tipper(), settings=settings)
@@ -70,6 +90,18 @@ def test_links_in_line_are_a_dead_centre_at_their_pin() -> None:
     assert found.severity == "warning"
     assert "A-B and B-C are in line at B" in found.message
     assert found.at == 30 + 0j
+
+
+def test_a_rod_square_to_its_slide_is_a_dead_centre_but_not_in_line() -> None:
+    end = 80 + 0j
+    places = {"A": 0j, "B": 80 - 60j, "C": end}
+    drawn = [ring(at, layer="FRAME" if name == "A" else "0") for name, at in places.items()]
+    drawn += [text(name, at + 4 + 8j) for name, at in places.items()]
+    guided = rectangle(end, 20, 12), line(end - 50 + 6j, end + 40 + 6j, layer="FRAME")
+    found = only("dead-centre", *drawn, rod(0j, places["B"]), rod(places["B"], end), *guided)
+    assert "B-C and block at C push on one another square to the way they could go at C" in found.message
+    assert "B-C cannot drive block at C" in found.message
+    assert found.at == end
 
 
 def test_no_dead_centre_in_a_general_pose_nor_in_a_structure() -> None:
