@@ -7,7 +7,7 @@ from collections.abc import Sequence
 
 from dxfcheck.drawing.units import parse_unit
 from dxfcheck.errors import OptionInvalid
-from dxfcheck.reading.drive_text import parse_drive
+from dxfcheck.reading.drives.drive_text import parse_drive
 from dxfcheck.settings import Settings
 
 __all__ = ["settings_from"]

@@ -8,7 +8,7 @@ from dataclasses import replace
 
 from dxfcheck.drawing.primitives import LengthUnit, Source, Text
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.reading.drives import Driven, drive_linkages
+from dxfcheck.reading.drives.drives import Driven, drive_linkages
 from dxfcheck.settings import Settings
 from tests.model import Other, linkage
 

@@ -30,14 +30,14 @@ from dxfcheck.drawing.primitives import (
     Text,
 )
 from dxfcheck.linkage import Linkage
-from dxfcheck.reading.fates import fates_of
-from dxfcheck.reading.model import make_model
-from dxfcheck.reading.parts import Parts, find_parts
+from dxfcheck.reading.lines.sheet import Sheet, lay_out
+from dxfcheck.reading.lines.sorting import sort_primitives
+from dxfcheck.reading.lines.tolerance import Tolerance, tolerance_for
+from dxfcheck.reading.mechanisms.model import make_model
+from dxfcheck.reading.parts.parts import Parts, find_parts
 from dxfcheck.reading.read import read_linkages
 from dxfcheck.reading.reading import Observation, Reading
-from dxfcheck.reading.sheet import Sheet, lay_out
-from dxfcheck.reading.sorting import sort_primitives
-from dxfcheck.reading.tolerance import Tolerance, tolerance_for
+from dxfcheck.reading.records.fates import fates_of
 from dxfcheck.settings import Settings
 
 MM = LengthUnit("mm", "header", 1e-3)

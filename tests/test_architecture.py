@@ -29,6 +29,23 @@ ROOMS = [
     "cli",
     "__main__",
 ]
+STEPS = [
+    "reading.reading",
+    "reading.lines",
+    "reading.shapes",
+    "reading.frames",
+    "reading.bodies",
+    "reading.slides",
+    "reading.gears",
+    "reading.parts",
+    "reading.texts",
+    "reading.drives",
+    "reading.mechanisms",
+    "reading.observations",
+    "reading.records",
+    "reading.read",
+]
+"""Within the reading, too, each step builds on those before it."""
 HOMES = {
     "ezdxf": ("drawing",),
     "networkx": ("analysis",),
@@ -68,8 +85,15 @@ def complaints(path: Path) -> Iterator[str]:
         package, _, inner = name.partition(".")
         if package == "dxfcheck" and inner and room and ROOMS.index(inner.partition(".")[0]) > ROOMS.index(room):
             yield f"{module}:{line} imports {name}, which comes after it"
+        if inner.startswith("reading.") and room == "reading" and _step(inner) > _step(module):
+            yield f"{module}:{line} imports {name}, a later step of the reading"
         if package in HOMES and not module.startswith(HOMES[package]):
             yield f"{module}:{line} imports {package}, which belongs to {' and '.join(HOMES[package])}"
+
+
+def _step(module: str) -> int:
+    """The place of a module among the steps of the reading; first for the package itself."""
+    return next((place for place, step in enumerate(STEPS) if f"{module}.".startswith(f"{step}.")), -1)
 
 
 @pytest.mark.parametrize("path", SOURCES, ids=module_name)
@@ -89,6 +113,11 @@ def test_no_file_is_a_drawer_for_odds_and_ends() -> None:
     assert not [path for path in SOURCES if path.stem in {"utils", "helpers", "misc", "common"}]
 
 
+def test_every_step_of_the_reading_has_its_place() -> None:
+    inside = {module_name(path) for path in SOURCES if module_name(path).startswith("reading.")}
+    assert not [module for module in inside if _step(module) < 0]
+
+
 def test_every_file_belongs_to_a_known_room() -> None:
     assert {module_name(path).partition(".")[0] for path in SOURCES} - {""} <= set(ROOMS)
 
@@ -101,6 +130,7 @@ def test_every_file_belongs_to_a_known_room() -> None:
         ("rules/pose.py", "from dxfcheck import inspection", "comes after it"),
         ("linkage.py", "def load():\n    from dxfcheck.analysis import analyse", "comes after it"),
         ("reading/pins.py", "import ezdxf.math", "belongs to drawing"),
+        ("reading/lines/pins.py", "from dxfcheck.reading.bodies.body import Body", "a later step"),
         ("rules/pose.py", "from networkx import Graph", "belongs to analysis"),
         ("reports/json_report.py", "from rich.text import Text", "belongs to reports.terminal and cli"),
     ],
@@ -110,6 +140,6 @@ def test_a_wrong_import_is_noticed(
 ) -> None:
     monkeypatch.setitem(globals(), "PACKAGE", tmp_path)
     path = tmp_path / where
-    path.parent.mkdir(exist_ok=True)
+    path.parent.mkdir(parents=True, exist_ok=True)
     path.write_text(source, encoding="utf-8")
     assert [found for found in complaints(path) if complaint in found]

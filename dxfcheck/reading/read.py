@@ -5,21 +5,21 @@ from __future__ import annotations
 from collections import Counter
 
 from dxfcheck.drawing.primitives import Sketch
-from dxfcheck.reading.account import make_account
-from dxfcheck.reading.evidence import linkage_evidence
-from dxfcheck.reading.fates import fates_of
-from dxfcheck.reading.model import Model, make_model
-from dxfcheck.reading.observe_ends import observe_ends
-from dxfcheck.reading.observe_joints import observe_joints
-from dxfcheck.reading.observe_lines import observe_lines
-from dxfcheck.reading.observe_sheet import observe_sheet
-from dxfcheck.reading.parts import Parts, find_parts
+from dxfcheck.reading.lines.sheet import Sheet, lay_out
+from dxfcheck.reading.lines.sorting import Sorted, sort_primitives
+from dxfcheck.reading.lines.tolerance import tolerance_for
+from dxfcheck.reading.lines.touches import find_touches
+from dxfcheck.reading.mechanisms.model import Model, make_model
+from dxfcheck.reading.observations.observe_ends import observe_ends
+from dxfcheck.reading.observations.observe_joints import observe_joints
+from dxfcheck.reading.observations.observe_lines import observe_lines
+from dxfcheck.reading.observations.observe_sheet import observe_sheet
+from dxfcheck.reading.observations.seen import Seen
+from dxfcheck.reading.parts.parts import Parts, find_parts
 from dxfcheck.reading.reading import Reading
-from dxfcheck.reading.seen import Seen
-from dxfcheck.reading.sheet import Sheet, lay_out
-from dxfcheck.reading.sorting import Sorted, sort_primitives
-from dxfcheck.reading.tolerance import tolerance_for
-from dxfcheck.reading.touches import find_touches
+from dxfcheck.reading.records.account import make_account
+from dxfcheck.reading.records.evidence import linkage_evidence
+from dxfcheck.reading.records.fates import fates_of
 from dxfcheck.settings import Settings
 
 __all__ = ["read_linkages"]

@@ -23,7 +23,7 @@ RULES = {rule.name: {rule.severity, *rule.also} for rule in all_rules()}
 
 def calls(room: str) -> Iterator[tuple[set[str], set[str]]]:
     """For each call in a room, the kinds and the severities among its arguments."""
-    for path in sorted((PACKAGE / room).glob("*.py")):
+    for path in sorted((PACKAGE / room).rglob("*.py")):
         for node in ast.walk(ast.parse(path.read_text(encoding="utf-8"))):
             if isinstance(node, ast.Call):
                 given = [*node.args, *(keyword.value for keyword in node.keywords)]
@@ -50,7 +50,7 @@ def test_every_kind_that_the_reading_observes_has_a_rule() -> None:
 def test_every_kind_that_a_rule_looks_for_is_observed() -> None:
     looked_for = {
         node.args[1].value
-        for path in sorted((PACKAGE / "rules").glob("*.py"))
+        for path in sorted((PACKAGE / "rules").rglob("*.py"))
         for node in ast.walk(ast.parse(path.read_text(encoding="utf-8")))
         if isinstance(node, ast.Call) and isinstance(node.func, ast.Name) and node.func.id == "observed"
         if isinstance(node.args[1], ast.Constant)

@@ -1,0 +1,1 @@
+"""Strands welded into rigid bodies, with their pins."""

@@ -1,0 +1,1 @@
+"""Input motions as stated in options and notes, or assumed."""

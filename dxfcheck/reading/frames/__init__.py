@@ -1,0 +1,1 @@
+"""Frame symbols and marks: what is drawn beside a linkage to explain it."""

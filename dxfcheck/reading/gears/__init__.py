@@ -1,0 +1,1 @@
+"""Pitch circles, racks and wheels: what rolls on what."""

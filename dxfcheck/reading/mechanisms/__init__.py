@@ -1,0 +1,1 @@
+"""From bodies and joints to named, driven linkages."""

@@ -1,0 +1,1 @@
+"""What looks wrong on the sheet, for the rules to weigh."""

@@ -1,0 +1,1 @@
+"""The order in which the rules are applied to the linework, up to bodies and their joints."""

@@ -1,0 +1,153 @@
+"""Which linework is looked at: what hangs together with pins, boxes by it, and the guides of these boxes.
+
+A sheet may hold tens of thousands of lines of other parts; only what is reached from a pin, a wheel or a slot counts.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Collection, Iterable, Mapping, Sequence
+from typing import NamedTuple
+
+import numpy as np
+
+from dxfcheck.drawing.primitives import Ring
+from dxfcheck.reading.frames.frame import LEG, FrameSymbols
+from dxfcheck.reading.gears.gearing import strands_at_wheels
+from dxfcheck.reading.lines.nearness import near_pairs
+from dxfcheck.reading.lines.sheet import Sheet
+from dxfcheck.reading.lines.sorting import Sorted
+from dxfcheck.reading.shapes.outlined import Outlined
+from dxfcheck.reading.shapes.rectangles import find_rectangles
+from dxfcheck.reading.slides.boxes import Box, boxes_of
+from dxfcheck.reading.slides.rails import Rail, rails_of
+from dxfcheck.reading.slides.slides import anchors_of
+
+__all__ = ["Ground", "find_ground", "without_plinths"]
+
+
+class Ground(NamedTuple):
+    """The strands that hang together with pins, and the boxes among them with the lines that run along each."""
+
+    reached: Sequence[int]
+    boxes: Sequence[Box]
+    rails: Sequence[Sequence[Rail]]
+
+
+def find_ground(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mapping[int, str]) -> Ground:
+    """What there is to look at: linework on pins first, then boxes by it, then the guides of these boxes."""
+    apart = outlined.borders | sheet.ring_strands
+    touched = [each.strand for each in outlined.landings if each.how != "across" or each.strand in by_layer]
+    touched.extend(kinds.racks)
+    touched.extend(strand for slot in outlined.slots for strand in (*slot.strands, *slot.block))
+    touched.extend(strands_at_wheels(kinds.pitch_rings, sheet))
+    discs = [disc.ring for disc in sheet.sites.discs]
+    neighbours = _neighbours(sheet)
+    reached = _reached(touched, discs, sheet, apart, neighbours)
+    carrying = {landing.pin for landing in outlined.landings}
+    used = [pin for pin in sheet.pins if pin.number in carrying]
+    rectangles = [
+        each
+        for each in find_rectangles(sheet.linework, sheet.touching, used, sheet.tolerance, reached)
+        if apart.isdisjoint(each.strands)
+    ]
+    if not rectangles:
+        return Ground(reached, (), ())
+    boxes = boxes_of(rectangles, used, sheet.landings.landings, by_layer.keys(), sheet.tolerance)
+    rails = rails_of(boxes, sheet.linework, sheet.touching, sheet.landings.landings, apart)
+    beside = {rail.strand for each in rails for rail in each} | {each for box in boxes for each in box.strands}
+    return Ground(_reached([*touched, *beside], discs, sheet, apart, neighbours), boxes, rails)
+
+
+def without_plinths(ground: Ground, symbols: FrameSymbols, sheet: Sheet) -> Ground:
+    """Without boxes under the legs of a frame symbol: those are its base."""
+    if not ground.boxes:
+        return ground
+    legs = {strand for strand, why in symbols.frame.items() if why == LEG}
+    plinths = {
+        number
+        for number, anchors in enumerate(anchors_of(ground.boxes, sheet))
+        if any(strand in legs for strand, _ in anchors)
+    }
+    kept = [number for number in range(len(ground.boxes)) if number not in plinths]
+    boxes = [ground.boxes[number]._replace(number=place) for place, number in enumerate(kept)]
+    return ground._replace(boxes=boxes, rails=[ground.rails[number] for number in kept])
+
+
+def _reached(
+    touched: Iterable[int],
+    discs: Sequence[Ring],
+    sheet: Sheet,
+    apart: Collection[int],
+    neighbours: tuple[_Neighbours, _Neighbours],
+) -> list[int]:
+    """Strands that hang together with a pin or a disc: all others are other linework.
+
+    Linework hangs together where ends meet. Twice, what is close enough to belong to a frame symbol is taken in as
+    well: the base under a leg, then the strokes under the base.
+    """
+    beside, close = neighbours
+    waiting = list(touched)
+    for ring in discs:
+        within = sheet.tolerance.rim(ring.radius)
+        waiting.extend(
+            strand.number
+            for strand in sheet.strands
+            if any(abs(abs(end - ring.centre) - ring.radius) <= within for end in strand.ends)
+        )
+    seen: set[int] = set(apart)
+    reached = _spread(waiting, beside, seen)
+    for _ in range(FRINGES):
+        nearby = [near for number in reached for near in close.of(number)]
+        nearby.extend(_under_corners(sheet, reached))
+        reached.extend(_spread(nearby, beside, seen))
+    return sorted(reached)
+
+
+def _under_corners(sheet: Sheet, reached: Sequence[int]) -> list[int]:
+    """Lines that corners of reached polylines lie on: the base line under a triangle drawn in one piece."""
+    paths = [sheet.strands[number] for number in reached if sheet.strands[number].corners]
+    corners = np.array([corner for path in paths for corner in path.corners], dtype=np.complex128)
+    reach = np.array([sheet.tolerance.close(path.length) for path in paths for _ in path.corners])
+    _, pieces = near_pairs(corners, reach, sheet.linework.piece_starts, sheet.linework.piece_ends)
+    found: list[int] = np.unique(sheet.linework.piece_strand[pieces]).tolist()
+    return found
+
+
+FRINGES = 2
+
+
+class _Neighbours(NamedTuple):
+    """The neighbours of each strand, in one list; ``first`` says where those of each strand begin."""
+
+    first: Sequence[int]
+    others: Sequence[int]
+
+    def of(self, strand: int) -> Sequence[int]:
+        return self.others[self.first[strand] : self.first[strand + 1]]
+
+
+def _neighbours(sheet: Sheet) -> tuple[_Neighbours, _Neighbours]:
+    """Strands that meet, and strands that come within the shape tolerance of one another."""
+    ends, targets, _, meets = sheet.touching.as_pairs()
+    owners = ends // 2
+
+    def listed(chosen: np.typing.NDArray[np.bool_]) -> _Neighbours:
+        one = np.concatenate((owners[chosen], targets[chosen]))
+        other = np.concatenate((targets[chosen], owners[chosen]))
+        order = np.argsort(one, kind="stable")
+        first = np.searchsorted(one[order], np.arange(len(sheet.strands) + 1))
+        return _Neighbours(first.tolist(), other[order].tolist())
+
+    return listed(meets), listed(np.ones(meets.size, dtype=np.bool_))
+
+
+def _spread(waiting: list[int], beside: _Neighbours, seen: set[int]) -> list[int]:
+    """The strands not seen before that hang together with those waiting; they count as seen from now on."""
+    reached = []
+    while waiting:
+        number = waiting.pop()
+        if number not in seen:
+            seen.add(number)
+            reached.append(number)
+            waiting.extend(beside.of(number))
+    return reached

@@ -1,0 +1,138 @@
+"""From sorted primitives to rigid bodies and their joints: the order in which the reading rules are applied.
+
+Rings come first, then where ends land, outlines and slots, boxes and what runs along them, marks, frame symbols,
+guides, and last welds and joints. Each step is a pure function of the ones before it.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from collections.abc import Set as AbstractSet
+from dataclasses import dataclass, replace
+from typing import NamedTuple
+
+from dxfcheck.reading.bodies.bodies import Bodies, make_bodies
+from dxfcheck.reading.frames.frame import FrameSymbols, find_frame_symbols
+from dxfcheck.reading.frames.marks import find_marks
+from dxfcheck.reading.frames.weld_marks import weld_marks, welds_on_rings
+from dxfcheck.reading.lines.landing import Landing
+from dxfcheck.reading.lines.sheet import Sheet
+from dxfcheck.reading.lines.sorting import Sorted
+from dxfcheck.reading.parts.ground import find_ground, without_plinths
+from dxfcheck.reading.parts.joints import find_joints
+from dxfcheck.reading.shapes.contact import Contact, Oddity
+from dxfcheck.reading.shapes.outlined import Outlined, find_outlined
+from dxfcheck.reading.shapes.slots import Slot
+from dxfcheck.reading.slides.boxes import hatched_boxes
+from dxfcheck.reading.slides.slides import Slides, find_slides
+from dxfcheck.settings import Settings
+
+__all__ = ["Parts", "find_parts"]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Parts:
+    """What the linework was read as: marks, borders round whole links, frame, slides, slots, bodies and their joints.
+
+    ``bodies`` are all rigid bodies, wheels without linework among them; ``contacts`` their joints other than pins.
+    ``closed`` are strands of outlines and slots, whose ends meet one another; ``welds`` are arcs that are weld marks.
+    """
+
+    marks: Mapping[int, str]
+    borders: frozenset[int]
+    symbols: FrameSymbols
+    frame: Mapping[int, str]
+    slides: Slides
+    slots: tuple[Slot, ...]
+    bodies: Bodies
+    contacts: tuple[Contact, ...]
+    closed: frozenset[int]
+    welds: frozenset[int]
+    oddities: tuple[Oddity, ...]
+    idle_rings: frozenset[int]
+    landings: tuple[Landing, ...]
+
+
+def find_parts(kinds: Sorted, sheet: Sheet, settings: Settings) -> Parts:
+    """What each strand is, the bodies they make up, and how these slide and roll on one another."""
+    by_layer = {
+        number: f"frame by {kinds.frame_lines[index]}"
+        for number, (index, _) in enumerate(kinds.lines)
+        if index in kinds.frame_lines
+    }
+    outlined = find_outlined(sheet, by_layer.keys(), settings.part_blocks)
+    lines = _roles(kinds, sheet, outlined, by_layer)
+    slides = lines.slides
+    dropped = slides.dropped | slides.passing
+    landings = [each for each in outlined.landings if (each.strand, each.pin) not in dropped]
+    landings.extend(slides.landings)
+    slots = [slot for slot in outlined.slots if not _holds_a_block(slot, slides)]
+    bodies = make_bodies(
+        sheet,
+        lines.active,
+        landings,
+        {index: why for index, why in lines.frame.items() if index in lines.active},
+        outlined.bars,
+        groups=[*outlined.groups, *slides.groups],
+        never=slides.never | outlined.never,
+        kept={*slides.strands, *(strand for slot in slots for strand in (*slot.strands, *slot.block)), *kinds.racks},
+    )
+    stated = bool(settings.frame_pins)
+    joints = find_joints(
+        kinds, sheet, bodies.bodies, slides, slots, outlined.empty, lines.frame.keys(), frame_stated=stated
+    )
+    laid_over = tuple(sorted({*bodies.laid_over, *slides.passing}))
+    welds = weld_marks(sheet.strands)
+    return Parts(
+        marks=lines.marks,
+        borders=outlined.borders,
+        symbols=lines.symbols,
+        frame=lines.frame,
+        slides=slides,
+        slots=tuple(slots),
+        bodies=replace(bodies, bodies=joints.bodies, laid_over=laid_over),
+        contacts=joints.contacts,
+        closed=outlined.closed,
+        oddities=(
+            *(each for each in outlined.oddities if slides.strands.isdisjoint(each.strands)),
+            *joints.oddities,
+            *welds_on_rings(sheet, bodies.landings, welds),
+        ),
+        welds=frozenset(arc for arc, _, _ in welds),
+        idle_rings=joints.idle_rings,
+        landings=tuple(landings),
+    )
+
+
+class _Roles(NamedTuple):
+    """What single strands are: marks, symbols, frame (with reasons), boxes and guides; ``active`` ones may be parts."""
+
+    marks: Mapping[int, str]
+    symbols: FrameSymbols
+    frame: Mapping[int, str]
+    slides: Slides
+    active: AbstractSet[int]
+
+
+def _roles(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mapping[int, str]) -> _Roles:
+    ground = find_ground(kinds, sheet, outlined, by_layer)
+    in_boxes = {strand for box in ground.boxes for strand in box.strands}
+    held = {(strand, site) for box in ground.boxes for site in box.sites for strand in box.strands}
+    landings = [each for each in outlined.landings if (each.strand, each.pin) not in held]
+    marks = find_marks(sheet, ground.reached, landings)
+    plain = [index for index in ground.reached if index not in marks]
+    symbols = find_frame_symbols(sheet, plain, marks, landings, in_boxes)
+    ground = without_plinths(ground, symbols, sheet)
+    hatched = hatched_boxes(ground.boxes, symbols, sheet)
+    frame = {**by_layer, **{strand: why for strand, why in symbols.frame.items() if strand not in hatched.sides}}
+    slides = find_slides(sheet, ground.boxes, ground.rails, frame, hatched, symbols.strokes, outlined.landings)
+    active = {index for index in plain if index not in symbols.strokes}
+    return _Roles(marks, symbols, {**slides.frame, **frame}, slides, active)
+
+
+def _holds_a_block(slot: Slot, slides: Slides) -> bool:
+    """Whether a slot is the guide of a rectangular block round the pin in it."""
+    return any(
+        set(slot.sites) & set(slide.box.sites) and set(slot.strands) & set(slide.guide.strands)
+        for slide in slides.slides
+    )

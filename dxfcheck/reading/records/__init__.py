@@ -1,0 +1,1 @@
+"""Why each thing was read as it was, and what became of every entity."""

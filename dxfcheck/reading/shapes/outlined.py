@@ -1,0 +1,119 @@
+"""Closed shapes of a sheet before any welding: outlines with holes, bars, slots, borders (reading rules 1, 4, 6)."""
+
+from __future__ import annotations
+
+from collections.abc import Collection, Sequence
+from dataclasses import dataclass
+
+from dxfcheck.reading.lines.landing import Landing
+from dxfcheck.reading.lines.sheet import Sheet
+from dxfcheck.reading.shapes.contact import Oddity
+from dxfcheck.reading.shapes.contours import Contour, find_contours
+from dxfcheck.reading.shapes.forks import find_forks
+from dxfcheck.reading.shapes.holes import OutlineLinks, cut_slots, find_outline_links, owner_of_cut
+from dxfcheck.reading.shapes.obrounds import Channel, find_curved_slots, find_obrounds
+from dxfcheck.reading.shapes.part_blocks import PartGroup, part_groups
+from dxfcheck.reading.shapes.slots import Slot, Slots, find_slots
+
+__all__ = ["Outlined", "find_outlined"]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Outlined:
+    """What the closed shapes of a sheet are.
+
+    ``landings`` are all that count so far, holes of outlines and ends of bars among them; ``borders`` strands drawn
+    round whole links; ``slots`` hold pins that slide in them, ``empty`` ones hold none; ``bars`` are the strands of
+    bars, plates and part blocks, ``groups`` other strands of one part whatever their ends do, ``never`` pairs of
+    strands that slide on one another. ``parts`` are the part blocks; ``closed`` the strands of all outlines and slots.
+    """
+
+    landings: tuple[Landing, ...]
+    borders: frozenset[int]
+    slots: tuple[Slot, ...]
+    empty: tuple[Channel, ...]
+    bars: tuple[tuple[int, ...], ...]
+    groups: tuple[tuple[int, ...], ...]
+    never: frozenset[tuple[int, int]]
+    parts: tuple[PartGroup, ...]
+    closed: frozenset[int]
+    oddities: tuple[Oddity, ...]
+
+
+def find_outlined(sheet: Sheet, frame: Collection[int], part_blocks: Sequence[str]) -> Outlined:
+    """Look into every closed shape; ``frame`` are strands that their layer makes frame."""
+    parts = part_groups(sheet.strands, sheet.pins, part_blocks, sheet.ring_strands)
+    in_parts = {strand for part in parts for strand in part.strands}
+    drawn = [*_of_parts(sheet, parts, in_parts)]
+    apart = sheet.ring_strands | in_parts
+    contours = find_contours(sheet.linework, sheet.touching, sheet.tolerance, apart, sheet.pins, drawn)
+    found, slots = _slots(sheet, drawn, contours, apart)
+    cuts = cut_slots(found.slots, sheet.touching, drawn, frame)
+    used = {strand for slot in found.slots for strand in (*slot.strands, *slot.block)}
+    solid = [contour for contour in contours if used.isdisjoint(contour.strands)]
+    voids = [slot.shape for slot in cuts]
+    links = find_outline_links(solid, sheet.strands, drawn, sheet.pins, frame, sheet.tolerance, voids, found.bars)
+    owners = [(slot.strands[0], owner_of_cut(slot.shape, solid, links.borders)) for slot in cuts]
+    return Outlined(
+        landings=_that_count(drawn, slots, links),
+        borders=links.borders,
+        slots=slots,
+        empty=found.empty,
+        bars=(*links.groups, *(part.strands for part in parts if part.strands)),
+        groups=(
+            *(lines for slot in slots for lines in (slot.strands, slot.block) if lines),
+            *((first, solid[owner].strands[0]) for first, owner in owners if owner is not None),
+        ),
+        never=frozenset(
+            pair
+            for slot in slots
+            for one in slot.strands
+            for other in slot.block
+            for pair in ((one, other), (other, one))
+        ),
+        parts=tuple(parts),
+        closed=frozenset(used.union(*(contour.strands for contour in contours))),
+        oddities=(*found.oddities, *links.oddities),
+    )
+
+
+def _of_parts(sheet: Sheet, parts: Sequence[PartGroup], in_parts: Collection[int]) -> list[Landing]:
+    """All landings, but for part blocks only those on their own rings."""
+    own = [Landing(part.strands[0], site, "corner", None, 0.0) for part in parts if part.strands for site in part.sites]
+    return [*(each for each in sheet.landings.landings if each.strand not in in_parts), *own]
+
+
+def _slots(
+    sheet: Sheet, drawn: Sequence[Landing], contours: Sequence[Contour], apart: Collection[int]
+) -> tuple[Slots, tuple[Slot, ...]]:
+    """What the obrounds and curved slots are, and all slots, forks among them."""
+    pins, tolerance = sheet.pins, sheet.tolerance
+    shapes: list[Channel] = []
+    if pins:
+        shapes.extend(find_obrounds(sheet.strands, sheet.touching))
+        shapes.extend(find_curved_slots(sheet.strands, sheet.touching, tolerance))
+    shapes = [shape for shape in shapes if set(shape.strands).isdisjoint(apart)]
+    carrying = {landing.pin for landing in drawn}
+    found = find_slots(shapes, pins, sheet.linework, tolerance, carrying=carrying, outlines=contours)
+    used = {strand for slot in found.slots for strand in (*slot.strands, *slot.block)}
+    in_contours = {strand for contour in contours for strand in contour.strands}
+    forks = find_forks(
+        sheet.landings,
+        pins,
+        sheet.linework,
+        sheet.touching,
+        tolerance,
+        apart=used | in_contours | set(apart),
+        taken={site for slot in found.slots for site in slot.sites},
+    )
+    return found, (*found.slots, *forks)
+
+
+def _that_count(drawn: Sequence[Landing], slots: Sequence[Slot], links: OutlineLinks) -> tuple[Landing, ...]:
+    """Landings but those of borders and of what a pin slides in, with holes, pivots of levers and blocks in slots."""
+    out = {(strand, site) for slot in slots for site in slot.sites for strand in (*slot.strands, *slot.block)}
+    out |= links.void
+    kept = (each for each in drawn if (each.strand, each.pin) not in out and each.strand not in links.borders)
+    pivots = [Landing(slot.strands[0], slot.pinned, "corner", None, 0.0) for slot in slots if slot.pinned is not None]
+    blocks = [Landing(slot.block[0], site, "corner", None, 0.0) for slot in slots if slot.block for site in slot.sites]
+    return (*kept, *links.held, *pivots, *blocks)

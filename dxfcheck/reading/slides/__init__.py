@@ -1,0 +1,1 @@
+"""Blocks, barrels and sleeves, and what each slides along."""
