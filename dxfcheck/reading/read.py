@@ -81,6 +81,7 @@ def _seen(kinds: Sorted, sheet: Sheet, parts: Parts, model: Model) -> Seen:
         sliding=frozenset(sliding),
         shared=frozenset(site for site, count in bodies_at.items() if count > 1),
         shaped=parts.closed.union(shaped),
+        boxes=parts.slides.boxes,
         guides=frozenset(guides | kinds.racks),
         wheels=dict(kinds.pitch_rings),
         idle=frozenset({*parts.marks, *parts.symbols.strokes, *parts.borders, *sheet.ring_strands, *shaped}),

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator, Sequence
+from collections.abc import Collection, Iterator, Sequence
 
 import numpy as np
 
@@ -18,13 +18,18 @@ from dxfcheck.settings import WELD_ARC_DEGREES, WELD_ARC_OF_LINE, WELD_ARC_OFF_C
 __all__ = ["weld_marks", "welds_on_rings"]
 
 
-def weld_marks(strands: Sequence[Strand]) -> list[tuple[int, int, int]]:
-    """Each arc that is a weld mark, with the line it stands at and that line's end (0 or 1)."""
+def weld_marks(strands: Sequence[Strand], apart: Collection[int]) -> list[tuple[int, int, int]]:
+    """Each arc that is a weld mark, with the line it stands at and that line's end (0 or 1).
+
+    Those ``apart`` are arcs of rings, outlines and slots.
+    """
     low, high = WELD_ARC_DEGREES
     arcs = [
         (strand.number, strand.primitive)
         for strand in strands
-        if isinstance(strand.primitive, Arc) and low <= math.degrees(strand.primitive.sweep) <= high
+        if isinstance(strand.primitive, Arc)
+        and strand.number not in apart
+        and low <= math.degrees(strand.primitive.sweep) <= high
     ]
     lines = [strand for strand in strands if isinstance(strand.primitive, Segment)]
     if not arcs or not lines:

@@ -130,7 +130,8 @@ def _short_of_a_pin(seen: Seen, strand: Strand, end: int, misses: Sequence[Miss]
 
 
 def _short_of_a_line(seen: Seen, strand: Strand, end: int, near: Sequence[Touch]) -> Observation | None:
-    if not near:
+    inside = strand.number in seen.guides and any(box.holds(strand.ends[end]) for box in seen.boxes)
+    if not near or inside:
         return None
     touch = min(near, key=lambda each: (each.gap, each.strand))
     return about_strand(

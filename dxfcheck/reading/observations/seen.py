@@ -13,6 +13,7 @@ from dxfcheck.reading.lines.pins import PinSites
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
 from dxfcheck.reading.reading import Observation
+from dxfcheck.reading.slides.boxes import Box
 
 __all__ = ["Seen", "about_strand", "pin_name"]
 
@@ -46,6 +47,8 @@ class Seen:
     """Strands of blocks and slots: their ends meet one another, if loosely."""
     guides: frozenset[int]
     """Strands of guides, and of rods in barrels: they may end on nothing."""
+    boxes: Sequence[Box]
+    """Blocks and barrels."""
     wheels: Mapping[int, Ring]
     """Pitch circles by index of their primitive."""
     idle: frozenset[int]

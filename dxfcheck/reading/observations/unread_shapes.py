@@ -33,7 +33,7 @@ def shapes_shown(kinds: Sorted, sheet: Sheet) -> str:
         ("pair of rings that touch or cross (wheels)", "pairs of rings that touch or cross (wheels)"): _wheels(
             [ring for _, ring in (*kinds.rings, *kinds.pitch_rings)]
         ),
-        ("weld mark", "weld marks"): len({arc for arc, _, _ in weld_marks(sheet.strands)}),
+        ("weld mark", "weld marks"): len({arc for arc, _, _ in weld_marks(sheet.strands, sheet.ring_strands)}),
     }
     return ", ".join(f"{count} {many if count > 1 else one}" for (one, many), count in counts.items() if count)
 

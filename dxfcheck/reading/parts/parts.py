@@ -82,7 +82,7 @@ def find_parts(kinds: Sorted, sheet: Sheet, settings: Settings) -> Parts:
         kinds, sheet, bodies.bodies, slides, slots, outlined.empty, lines.frame.keys(), frame_stated=stated
     )
     laid_over = tuple(sorted({*bodies.laid_over, *slides.passing}))
-    welds = weld_marks(sheet.strands)
+    welds = weld_marks(sheet.strands, sheet.ring_strands | outlined.closed)
     return Parts(
         marks=lines.marks,
         borders=outlined.borders,
