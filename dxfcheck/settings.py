@@ -334,3 +334,12 @@ WELD_ARC_OF_LINE = 0.3
 
 UNREAD_SHAPES_LIMIT = 3000
 """On a sheet without a linkage that holds more strands than this nobody drew a kinematic symbol to be named."""
+
+SLEEVE_WIDTH_OF_LENGTH = 1.5
+"""The two lines of a sleeve lie no further apart than so many times their length."""
+
+SLEEVE_LIKENESS = 0.2
+"""The two lines of a sleeve differ in length, and are shifted along one another, by no more than this part of it."""
+
+SLEEVE_STROKES = 2
+"""A line beside a rod on which so many other lines stand may be hatched: one side of a sleeve."""

@@ -167,8 +167,9 @@ def loose_strokes(
     free = [
         line
         for line in lines
-        if not any(touch.meets for end in (0, 1) for touch in _near(sheet, ignored, line.number, end))
-        and line.number not in strokes
+        if line.number not in strokes
+        and not ((line.number, 0) in landed and (line.number, 1) in landed)
+        and not any(touch.meets for end in (0, 1) for touch in _near(sheet, ignored, line.number, end))
     ]
     bases = [
         Base(index, number)

@@ -5,7 +5,7 @@ A sheet may hold tens of thousands of lines of other parts; only what is reached
 
 from __future__ import annotations
 
-from collections.abc import Collection, Iterable, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import NamedTuple
 
 import numpy as np
@@ -20,6 +20,7 @@ from dxfcheck.reading.shapes.outlined import Outlined
 from dxfcheck.reading.shapes.rectangles import find_rectangles
 from dxfcheck.reading.slides.boxes import Box, boxes_of
 from dxfcheck.reading.slides.rails import Rail, rails_of
+from dxfcheck.reading.slides.sleeves import lines_beside_rods
 from dxfcheck.reading.slides.slides import anchors_of
 
 __all__ = ["Ground", "find_ground", "without_plinths"]
@@ -40,9 +41,11 @@ def find_ground(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mappi
     touched.extend(kinds.racks)
     touched.extend(strand for slot in outlined.slots for strand in (*slot.strands, *slot.block))
     touched.extend(strands_at_wheels(kinds.pitch_rings, sheet))
-    discs = [disc.ring for disc in sheet.sites.discs]
+    touched.extend(_on_discs([disc.ring for disc in sheet.sites.discs], sheet))
     neighbours = _neighbours(sheet)
-    reached = _reached(touched, discs, sheet, apart, neighbours)
+    seen: set[int] = set(apart)
+    reached = _reached(touched, sheet, neighbours, seen)
+    reached.extend(_reached(lines_beside_rods(sheet, reached), sheet, neighbours, seen))
     carrying = {landing.pin for landing in outlined.landings}
     used = [pin for pin in sheet.pins if pin.number in carrying]
     rectangles = [
@@ -51,11 +54,12 @@ def find_ground(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mappi
         if apart.isdisjoint(each.strands)
     ]
     if not rectangles:
-        return Ground(reached, (), ())
+        return Ground(sorted(reached), (), ())
     boxes = boxes_of(rectangles, used, sheet.landings.landings, by_layer.keys(), sheet.tolerance)
     rails = rails_of(boxes, sheet.linework, sheet.touching, sheet.landings.landings, apart)
     beside = {rail.strand for each in rails for rail in each} | {each for box in boxes for each in box.strands}
-    return Ground(_reached([*touched, *beside], discs, sheet, apart, neighbours), boxes, rails)
+    reached.extend(_reached(sorted(beside), sheet, neighbours, seen))
+    return Ground(sorted(reached), boxes, rails)
 
 
 def without_plinths(ground: Ground, symbols: FrameSymbols, sheet: Sheet) -> Ground:
@@ -73,34 +77,32 @@ def without_plinths(ground: Ground, symbols: FrameSymbols, sheet: Sheet) -> Grou
     return ground._replace(boxes=boxes, rails=[ground.rails[number] for number in kept])
 
 
-def _reached(
-    touched: Iterable[int],
-    discs: Sequence[Ring],
-    sheet: Sheet,
-    apart: Collection[int],
-    neighbours: tuple[_Neighbours, _Neighbours],
-) -> list[int]:
-    """Strands that hang together with a pin or a disc: all others are other linework.
-
-    Linework hangs together where ends meet. Twice, what is close enough to belong to a frame symbol is taken in as
-    well: the base under a leg, then the strokes under the base.
-    """
-    beside, close = neighbours
-    waiting = list(touched)
+def _on_discs(discs: Sequence[Ring], sheet: Sheet) -> Iterator[int]:
+    """Strands that end on the rim of a disc."""
     for ring in discs:
         within = sheet.tolerance.rim(ring.radius)
-        waiting.extend(
-            strand.number
-            for strand in sheet.strands
-            if any(abs(abs(end - ring.centre) - ring.radius) <= within for end in strand.ends)
-        )
-    seen: set[int] = set(apart)
-    reached = _spread(waiting, beside, seen)
+        for strand in sheet.strands:
+            if any(abs(abs(end - ring.centre) - ring.radius) <= within for end in strand.ends):
+                yield strand.number
+
+
+def _reached(
+    touched: Iterable[int], sheet: Sheet, neighbours: tuple[_Neighbours, _Neighbours], seen: set[int]
+) -> list[int]:
+    """Strands, but for those ``seen``, that hang together with the ones touched: all others are other linework.
+
+    Linework hangs together where ends meet. Twice, what is close enough to belong to a frame symbol is taken in as
+    well: the base under a leg, then the strokes under the base. What is reached counts as seen from now on.
+    """
+    beside, close = neighbours
+    fresh = _spread(list(touched), beside, seen)
+    reached = list(fresh)
     for _ in range(FRINGES):
-        nearby = [near for number in reached for near in close.of(number)]
-        nearby.extend(_under_corners(sheet, reached))
-        reached.extend(_spread(nearby, beside, seen))
-    return sorted(reached)
+        nearby = [near for number in fresh for near in close.of(number)]
+        nearby.extend(_under_corners(sheet, fresh))
+        fresh = _spread(nearby, beside, seen)
+        reached.extend(fresh)
+    return reached
 
 
 def _under_corners(sheet: Sheet, reached: Sequence[int]) -> list[int]:

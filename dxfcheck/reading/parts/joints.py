@@ -21,8 +21,9 @@ from dxfcheck.reading.shapes.contact import Contact, Oddity, directed
 from dxfcheck.reading.shapes.obrounds import Channel
 from dxfcheck.reading.shapes.slots import Slot
 from dxfcheck.reading.slides.empty_guides import empty_guides
+from dxfcheck.reading.slides.slide_contacts import slide_contacts
 from dxfcheck.reading.slides.slide_oddities import slide_oddities
-from dxfcheck.reading.slides.slides import Slides, slide_contacts
+from dxfcheck.reading.slides.slides import Slides
 from dxfcheck.settings import GUIDE_TURN_DEGREES
 
 __all__ = ["Joints", "find_joints"]

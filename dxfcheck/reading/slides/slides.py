@@ -1,7 +1,7 @@
 """Blocks, rams, barrels and sleeves with their guides: what slides on what (reading rule 6).
 
-Done in two steps. Before the linework is welded, ``find_slides`` says which lines are guides, what must not weld and
-which landings do not count; once there are bodies, ``slide_contacts`` says which of them slide on one another.
+Done before the linework is welded: which lines are guides, what must not weld and which landings do not count. Once
+there are bodies, slide_contacts.py says which of them slide on one another.
 """
 
 from __future__ import annotations
@@ -13,17 +13,17 @@ from typing import NamedTuple
 
 import numpy as np
 
-from dxfcheck.geometry import Point, cross
+from dxfcheck.geometry import cross
 from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.sheet import Sheet
-from dxfcheck.reading.shapes.contact import Contact, directed
 from dxfcheck.reading.slides.boxes import Box, Hatched
 from dxfcheck.reading.slides.guides import ENDS_INSIDE, STROKES, Guide, choose_guide
-from dxfcheck.reading.slides.rails import Rail
+from dxfcheck.reading.slides.rails import Rail, rails_of
+from dxfcheck.reading.slides.sleeves import sleeves_of
 
-__all__ = ["Slide", "Slides", "anchors_of", "find_slides", "slide_contacts"]
+__all__ = ["Slide", "Slides", "anchors_of", "find_slides"]
 
 Anchor = tuple[int, int]
 """A strand and the end of it (0 or 1) that meets a box."""
@@ -106,13 +106,53 @@ def find_slides(
     strokes: Collection[int],
     landings: Sequence[Landing],
 ) -> Slides:
-    """Give each box its guide, the smallest box first: what a piston slides in is its cylinder and no block itself.
+    """Give each box its guide, and find the sleeves that are drawn as two lines.
 
     ``frame`` are the strands known to be frame, ``hatched`` the boxes on which hatch strokes stand, ``strokes`` the
     strokes themselves, ``landings`` those that count so far.
     """
     anchors = anchors_of(boxes, sheet)
     known = {*frame, *hatched.sides}
+    slides, unguided = _choose(boxes, rails, anchors, known, hatched, strokes)
+    guides = {strand for slide in slides for strand in slide.guide.strands}
+    sleeves = list(_sleeves(sheet, boxes, known, guides, landings))
+    slides.extend(slide for slide, _ in sleeves)
+    rails = [*rails, *(near for _, near in sleeves)]
+    anchors.extend([] for _ in sleeves)
+    every = {slide.box.number: slide for slide in slides}
+    ending: defaultdict[int, set[int]] = defaultdict(set)
+    for landing in landings:
+        if landing.how in {"end", "corner"}:
+            ending[landing.pin].add(landing.strand)
+    barrels = [slide.box for slide in slides if slide.is_barrel]
+    return Slides(
+        slides=tuple(slides),
+        unguided=tuple(unguided),
+        frame=dict(_frame_rails(slides)),
+        never=frozenset(_never(slides, rails, anchors, sheet, ending)),
+        dropped=frozenset(_dropped(slides, unguided, rails)),
+        passing=frozenset(_passing(slides, landings, sheet.pins, known)),
+        inside=frozenset(strand for box in barrels for strand in _inside(box, anchors[box.number], sheet)),
+        landings=tuple(
+            landing
+            for box in [*(slide.box for slide in slides), *unguided]
+            for landing in _held(box, every.get(box.number), anchors[box.number], sheet, ending)
+        ),
+    )
+
+
+def _choose(
+    boxes: Sequence[Box],
+    rails: Sequence[Sequence[Rail]],
+    anchors: Sequence[Sequence[Anchor]],
+    known: Collection[int],
+    hatched: Hatched,
+    strokes: Collection[int],
+) -> tuple[list[Slide], list[Box]]:
+    """The boxes with their guides, and those round a pin that fit none.
+
+    The smallest box comes first: what a piston slides in is its cylinder and no block itself.
+    """
     slides: list[Slide] = []
     unguided: list[Box] = []
     containers: set[int] = set()
@@ -129,30 +169,27 @@ def find_slides(
             continue
         slides.append(Slide(box, rivals.guide, rivals.others))
         containers.update(rivals.guide.strands)
-    every = {slide.box.number: slide for slide in slides}
-    ending: defaultdict[int, set[int]] = defaultdict(set)
-    for landing in landings:
-        if landing.how in {"end", "corner"}:
-            ending[landing.pin].add(landing.strand)
-    return Slides(
-        slides=tuple(slides),
-        unguided=tuple(box for box in unguided if containers.isdisjoint(box.strands)),
-        frame=dict(_frame_rails(slides)),
-        never=frozenset(_never(slides, rails, anchors, sheet, ending)),
-        dropped=frozenset(_dropped(slides, unguided, rails)),
-        passing=frozenset(_passing(slides, landings, sheet.pins, known)),
-        inside=frozenset(
-            strand
-            for slide in slides
-            if slide.is_barrel
-            for strand in _inside(slide.box, anchors[slide.box.number], sheet)
-        ),
-        landings=tuple(
-            landing
-            for box in [*(slide.box for slide in slides), *unguided]
-            for landing in _held(box, every.get(box.number), anchors[box.number], sheet, ending)
-        ),
-    )
+    return slides, [box for box in unguided if containers.isdisjoint(box.strands)]
+
+
+def _sleeves(
+    sheet: Sheet, boxes: Sequence[Box], known: Collection[int], guides: Collection[int], landings: Sequence[Landing]
+) -> Iterator[tuple[Slide, list[Rail]]]:
+    """Pairs of frame lines that guide nothing else, with a rod between them; numbered on after the boxes."""
+    pinned = {landing.strand for landing in landings if landing.how != "across"}
+    ends, targets, _, _ = sheet.touching.as_pairs()
+    on_pins = np.zeros(len(sheet.strands), dtype=np.bool_)
+    on_pins[list(pinned)] = True
+    used = {*guides, *pinned, *np.unique(targets[on_pins[ends // 2]]).tolist()}
+    used.update(strand for box in boxes for strand in box.strands)
+    found = list(sleeves_of(sheet, known, used))
+    number = len(boxes)
+    for box, near in zip(found, rails_of(found, sheet.linework, sheet.touching, landings, known), strict=True):
+        through = [rail for rail in near if rail.how == "through" and rail.axis == 0]
+        rivals = choose_guide(box, through, known, ())
+        if rivals is not None:
+            yield Slide(box._replace(number=number), rivals.guide, rivals.others), through
+            number += 1
 
 
 def _plain_enough(box: Box, guide: Guide, anchors: Sequence[Anchor]) -> bool:
@@ -272,52 +309,3 @@ def _aim(strand: Strand, end: int, pin: PinSite) -> float | None:
     if not outward or (ahead * outward.conjugate()).real <= 0.0:
         return None
     return abs(cross(outward, ahead)) / abs(outward)
-
-
-def slide_contacts(
-    slides: Slides, body_of: Mapping[int, int], frame: int | None, pins: Sequence[PinSite]
-) -> Iterator[tuple[Slide, Contact]]:
-    """The contact of each slide whose two parts are different bodies; ``frame`` is the frame's body, if any."""
-    for slide in slides.slides:
-        box, guide = slide.box, slide.guide
-        own = body_of.get(box.strands[0])
-        other = frame if guide.frame else body_of.get(guide.strands[0])
-        if own is None or other is None or own == other:
-            continue
-        axis = box.axes[guide.axis]
-        direction = directed(axis)
-        yield (
-            slide,
-            Contact(
-                kind="slide",
-                bodies=(other, own),
-                at=_at(box, pins),
-                direction=direction,
-                why=f"{_what(box, guide)}: its guide {guide.how}",
-                site=box.sites[0] if box.sites else None,
-                strands=(*box.strands, *guide.strands),
-                room=_room(slide, direction),
-            ),
-        )
-
-
-def _at(box: Box, pins: Sequence[PinSite]) -> Point:
-    return pins[box.sites[0]].at if box.sites else box.centre
-
-
-def _what(box: Box, guide: Guide) -> str:
-    if guide.how == ENDS_INSIDE and not guide.frame:
-        return "a barrel and a rod that enters it"
-    if box.frame:
-        return "a fixed sleeve"
-    return "a rectangle round the pin (a block)" if box.sites else "a rectangle without a pin (part of its link)"
-
-
-def _room(slide: Slide, direction: Point) -> tuple[float, float] | None:
-    """How far the box can go against and along the direction before its guide ends."""
-    guide, half = slide.guide, slide.box.halves[slide.guide.axis]
-    if guide.ends is None or slide.is_barrel:
-        return None
-    behind, ahead = -half - guide.ends[0], guide.ends[1] - half
-    along = slide.box.axes[guide.axis]
-    return (behind, ahead) if (along * direction.conjugate()).real > 0.0 else (ahead, behind)
