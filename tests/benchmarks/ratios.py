@@ -30,6 +30,10 @@ from dxfcheck.inspection import inspect_drawing
 from dxfcheck.reports.terminal import TerminalReport
 from dxfcheck.settings import Settings
 
+sys.path.insert(0, str(Path(__file__).parents[2]))
+from fixtures.drafting import Habit, write_plan, write_plans
+from fixtures.drafting.mechanisms_slides import lift_table, slider_cranks
+
 RUNS = 5
 TIPPER = (0j, cmath.rect(60.0, math.pi / 3), 196.66462554 + 119.95442j, 200 + 0j)
 SMALL = Path(__file__).parents[2] / "fixtures" / "tray-tipper.dxf"
@@ -159,6 +163,10 @@ def main() -> None:
         )
         draw_four_bars(sheet, plain_four_bar, 1000)
         print(f"{own_share(sheet):6.2f}  {1.0:5.1f}  1,000 four-bars, bare (7 entities each): own work over reading")
+        write_plans(sheet, slider_cranks(1000), Habit(radius=4))
+        print(f"{own_share(sheet):6.2f}  {1.5:5.1f}  1,000 slider-cranks (14 entities each): own work over reading")
+        write_plan(sheet, lift_table(40), Habit(radius=3))
+        print(f"{own_share(sheet):6.2f}  {1.5:5.1f}  a lift table of 40 scissor cells: own work over reading")
 
 
 if __name__ == "__main__":
