@@ -27,6 +27,12 @@ STATUSES = """exit status:
   130  interrupted
 """
 
+DRIVE = (
+    "a drive (repeatable): 'A-B = 10 rad/s ccw', 'A-B = 120 rpm cw', 'A-B against B-C = 3 rad/s', "
+    "'block at C = 50 mm/s', or 'E-F = 50 mm/s' for the telescope between pins E and F; a slide runs along its "
+    "direction, to +x (straight up where it has no x), a telescope extends"
+)
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Request:
@@ -111,7 +117,7 @@ def _add_drawings(parser: argparse.ArgumentParser) -> None:
     """What check and read have in common: the drawings and how they are to be understood."""
     add = parser.add_argument
     add("paths", nargs="+", metavar="PATH", help="a DXF file, or a folder: every *.dxf below it")
-    add("--drive", action="append", default=[], metavar="TEXT", help="a drive: 'A-B = 10 rad/s ccw' (repeatable)")
+    add("--drive", action="append", default=[], metavar="TEXT", help=DRIVE)
     add("--frame", metavar="PINS", help="pins that are fixed: A,D")
     add("--units", metavar="UNIT", help="the length unit of the drawing, whatever its header says: mm")
     add("--tolerance", type=_length, metavar="T", help="how far apart ends may lie and still meet, in that unit")

@@ -54,16 +54,16 @@ def _sentence(linkage: Linkage, analysis: Analysis, joint: Joint, motion: JointM
 
 def _slot_sentence(linkage: Linkage, joint: Joint, speed: float | None, unit: str, noise: float) -> str:
     """The pin's motion in the slot; where it is not clear which link has the slot, the second link's."""
-    first, second = linkage.links[joint.first], linkage.links[joint.second]
-    carriers = [link for link in (first, second) if joint.pin in link.pins]
+    first, second = (_called(linkage, link) for link in (joint.first, joint.second))
+    carriers = [link for link in (joint.first, joint.second) if joint.pin in linkage.links[link].pins]
     if joint.pin is None or len(carriers) != 1:
-        names = f"the pin at {place(joint.at)} in the slot between {first.name} and {second.name}"
-        return f"{names}: {second.name} slides {_pace(joint, speed, unit, noise)}"
-    slot = first if carriers[0] is second else second
-    if slot is second and speed is not None:
+        names = f"the pin at {place(joint.at)} in the slot between {first} and {second}"
+        return f"{names}: {second} slides {_pace(joint, speed, unit, noise)}"
+    carrier, slot = (second, first) if carriers[0] == joint.second else (first, second)
+    if slot == second and speed is not None:
         speed = -speed
     pin = linkage.pins[joint.pin].name
-    return f"pin {pin} of {carriers[0].name} slides in the slot of {slot.name} {_pace(joint, speed, unit, noise)}"
+    return f"pin {pin} of {carrier} slides in the slot of {slot} {_pace(joint, speed, unit, noise)}"
 
 
 def sliding_words(linkage: Linkage, joint: Joint, speed: float | None, unit: str, noise: float = 0.0) -> str:
@@ -80,7 +80,7 @@ def sliding_words(linkage: Linkage, joint: Joint, speed: float | None, unit: str
     if linkage.links[first].kind == "block" and linkage.links[second].kind == "link":
         first, second = second, first  # the block slides, whichever is named first
         speed = None if speed is None else -speed
-    names = f"{linkage.links[second].name} slides on {linkage.links[first].name}"
+    names = f"{_called(linkage, second)} slides on {_called(linkage, first)}"
     return f"{names} {_pace(joint, speed, unit, noise)}"
 
 
@@ -116,20 +116,45 @@ def _telescope(linkage: Linkage, joint: Joint) -> tuple[int, int] | None:
 
 
 def _rolling(linkage: Linkage, analysis: Analysis, joint: Joint, motion: JointMotion) -> str:
-    first, second = (linkage.links[link].name for link in (joint.first, joint.second))
-    relative = motion.relative_angular_velocity
-    if linkage.frame in (joint.first, joint.second):
-        wheel = second if joint.first == linkage.frame else first
-        turn = UNKNOWN if relative is None else figure(abs(relative))
-        return f"{wheel} rolls on the frame at {turn} rad/s"
-    rates = [analysis.links[link].angular_velocity for link in (joint.first, joint.second)]
-    turn = UNKNOWN if relative is None else figure(relative)
-    return f"{second} rolls on {first} at {turn} rad/s{_ratio(rates, first, second)}"
+    """One link's turning against the other, the wheel named first where the other does not turn."""
+    known = [abs(link.angular_velocity) for link in analysis.links if link.angular_velocity is not None]
+    noise = SHOWN_AS_ZERO * max(known, default=0.0)
+    wheel, other, relative = joint.second, joint.first, motion.relative_angular_velocity
+    rates = {each: analysis.links[each].angular_velocity for each in (wheel, other)}
+    if wheel == linkage.frame or (other != linkage.frame and _stands(rates[wheel], noise)):
+        wheel, other = other, wheel
+        relative = None if relative is None else -relative
+    names = {each: _called(linkage, each) for each in (wheel, other)}
+    rolls = f"{names[wheel]} rolls on {names[other]} at {_turning(relative, noise)}"
+    if other == linkage.frame:
+        return rolls
+    if _stands(rates[other], noise):
+        return f"{rolls}; {names[other]} does not turn"
+    return rolls + _ratio(rates[wheel], rates[other], names[wheel], names[other])
 
 
-def _ratio(rates: list[float | None], first: str, second: str) -> str:
-    """How fast the second wheel turns to one turn of the first, both against the frame."""
-    one, other = rates
-    if one is None or other is None or abs(one) <= SHOWN_AS_ZERO * abs(other) or one == 0.0:
+def _stands(rate: float | None, noise: float) -> bool:
+    return rate is not None and abs(rate) <= noise
+
+
+def _turning(rate: float | None, noise: float) -> str:
+    """An angular velocity with its sense."""
+    if rate is None or abs(rate) <= noise:
+        return f"{UNKNOWN if rate is None else 0} rad/s"
+    return f"{figure(abs(rate))} rad/s {'ccw' if rate > 0.0 else 'cw'}"
+
+
+def _ratio(rate: float | None, other_rate: float | None, name: str, other_name: str) -> str:
+    """How fast the one turns to one turn of the other, both against the frame."""
+    if rate is None or other_rate is None:
         return ""
-    return f"; against the frame {second} turns {figure(other / one)} times as fast as {first}"
+    way = "the same way" if rate * other_rate > 0.0 else "the other way"
+    return f"; against the frame {name} turns {figure(abs(rate / other_rate))} times as fast as {other_name}, {way}"
+
+
+def _called(linkage: Linkage, link: int) -> str:
+    """A link in a sentence; the name of one without pins is a mere handle."""
+    if link == linkage.frame and linkage.links[link].kind == "frame":
+        return "the frame"
+    name = linkage.links[link].name
+    return name if linkage.links[link].pins else f"link {name}"

@@ -60,8 +60,7 @@ def reason(report: DrawingReport) -> str:
 def _motion(report: DrawingReport) -> str:
     count = len(report.mechanisms)
     if count == 0:
-        left_out = any(finding.rule == "joint-not-read" for finding in report.findings)
-        return "its mechanism is left out for a joint that is not read" if left_out else "holds no linkage"
+        return "holds no linkage"
     if count == 1:
         linkage, analysis = report.mechanisms[0].linkage, report.mechanisms[0].analysis
         return f"1 mechanism, {_how_it_moves(analysis.mobility.at_pose, grounded=linkage.grounded)}{_driven(report)}"

@@ -11,6 +11,7 @@ from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
 from dxfcheck.geometry import Point
+from dxfcheck.settings import SHOWN_AS_ZERO
 
 __all__ = [
     "GAP",
@@ -85,8 +86,9 @@ def figure_column(heading: str, unit: str, values: Iterable[float | str | None],
 
 
 def place(point: Point) -> str:
-    """A point as (x, y), in the drawing's unit."""
-    return f"({figure(point.real)}, {figure(point.imag)})"
+    """A point as (x, y), in the drawing's unit; a coordinate that is rounding noise beside the other is 0."""
+    noise = SHOWN_AS_ZERO * abs(point)
+    return f"({figure(point.real, noise)}, {figure(point.imag, noise)})"
 
 
 def count_of(number: int, noun: str, plural: str = "") -> str:

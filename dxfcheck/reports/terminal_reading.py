@@ -8,7 +8,7 @@ from dxfcheck.inspection import DrawingReport
 from dxfcheck.linkage import Linkage
 from dxfcheck.reading.reading import AccountLine, Evidence
 from dxfcheck.reports.terminal_contacts import towards
-from dxfcheck.reports.terminal_drawing import how_measured, reason
+from dxfcheck.reports.terminal_drawing import how_measured, reason, unit_name
 from dxfcheck.reports.terminal_layout import Column, Line, count_of, figure, fold, listed, place, table
 
 __all__ = ["reading_lines"]
@@ -29,7 +29,7 @@ def reading_lines(report: DrawingReport, width: int) -> list[Line]:
     lines += map(Line, fold(how_measured(report), width, "  ", "  "))
     reasons = _by_subject(report.evidence)
     for mechanism in report.mechanisms:
-        lines += _mechanism_lines(mechanism.linkage, reasons, width)
+        lines += _mechanism_lines(mechanism.linkage, reasons, unit_name(report), width)
     left = [evidence for group in reasons.values() for evidence in group]
     if left:
         lines += [Line(""), Line("Also decided", "bold")]
@@ -46,11 +46,11 @@ def _by_subject(evidence: Sequence[Evidence]) -> dict[Key, list[Evidence]]:
     return reasons
 
 
-def _mechanism_lines(linkage: Linkage, reasons: dict[Key, list[Evidence]], width: int) -> list[Line]:
+def _mechanism_lines(linkage: Linkage, reasons: dict[Key, list[Evidence]], unit: str, width: int) -> list[Line]:
     """The parts of one mechanism; takes from ``reasons`` what belongs to them."""
     lines = [Line(""), Line(linkage.name, "bold")]
     names = [link.name for link in linkage.links]
-    for subject, name, other_names, facts, handles in _parts(linkage, names):
+    for subject, name, other_names, facts, handles in _parts(linkage, names, unit):
         keys = [(linkage.name, subject, known) for known in (name, *other_names)]
         keys += [(linkage.name, "frame", name)] if subject == "pin" else []
         decided = [evidence for key in keys for evidence in reasons.pop(key, ())]
@@ -64,7 +64,7 @@ Part = tuple[str, str, tuple[str, ...], list[str], tuple[str, ...]]
 """Subject, name, other names the evidence may use, facts, handles."""
 
 
-def _parts(linkage: Linkage, names: list[str]) -> Iterator[Part]:
+def _parts(linkage: Linkage, names: list[str], unit: str) -> Iterator[Part]:
     """Pins, links, joints and drives in the order of the report."""
     for pin in linkage.pins:
         facts = [f"at {place(pin.at)}", f"joins {listed([names[link] for link in pin.links])}"]
@@ -73,7 +73,8 @@ def _parts(linkage: Linkage, names: list[str]) -> Iterator[Part]:
         pins = listed([linkage.pins[pin].name for pin in link.pins])
         subject = "frame" if link.kind == "frame" else "link"
         pins += " (a block)" if link.kind == "block" else ""
-        yield subject, link.name, (), [f"pins {pins}" if pins else "no pins"], link.handles
+        bare = "no pins" if subject == "frame" else "no pins, so it goes by a handle"
+        yield subject, link.name, (), [f"pins {pins}" if pins else bare], link.handles
     for joint in linkage.joints:
         between = f"{names[joint.first]} and {names[joint.second]}"
         pin_name = () if joint.pin is None else (linkage.pins[joint.pin].name,)
@@ -83,10 +84,11 @@ def _parts(linkage: Linkage, names: list[str]) -> Iterator[Part]:
         facts += ["nothing else holds it: a full joint"] if joint.kind == "rolling" and joint.full else []
         yield "joint", between, (f"{names[joint.first]} / {names[joint.second]}", *pin_name), facts, joint.handles
     for drive in linkage.drives:
-        unit = "rad/s" if drive.kind == "turn" else "length units a second"
-        facts = [f"{figure(drive.rate)} {unit}", f"source: {drive.source}"]
+        facts = [f"{figure(drive.rate)} {'rad/s' if drive.kind == 'turn' else f'{unit}/s'}", f"source: {drive.source}"]
         stated = [f"'{drive.stated}'"] if drive.stated else []
-        yield "drive", names[drive.link], (), [*facts, *stated], drive.handles
+        driven = names[drive.link]
+        driven += "" if drive.against == linkage.frame else f" against {names[drive.against]}"
+        yield "drive", driven, (), [*facts, *stated], drive.handles
 
 
 def _entry(head: str, facts: list[str], decided: Sequence[Evidence], width: int) -> list[Line]:

@@ -2,15 +2,18 @@
 
 from __future__ import annotations
 
+import cmath
 import math
 from collections.abc import Iterator
 
 from dxfcheck.analysis.results import Analysis, DeadCentre, DriveVerdict
+from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.observed import finding, observed
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
+from dxfcheck.settings import DEAD_CENTRE_RADIANS
 
 __all__: list[str] = []
 
@@ -28,6 +31,31 @@ def _place_of(linkage: Linkage, drive: Drive) -> complex | None:
         return drive.at
     pins = [linkage.pins[pin] for pin in linkage.links[drive.link].pins]
     return next((pin.at for pin in pins if pin.fixed), pins[0].at if pins else None)
+
+
+def _motion(linkage: Linkage, drive: Drive, unit: LengthUnit) -> str:
+    """A drive's motion as words after 'to': 'turn at 2 rad/s cw', 'slide at 50 mm/s towards 90 deg relative to A-B'."""
+    if drive.kind == "turn":
+        sense = "cw" if drive.rate < 0.0 else "ccw"
+        return f"turn at {abs(drive.rate):.5g} rad/s {sense}{_on(linkage, drive)}"
+    direction = linkage.joints[drive.joint].direction if drive.joint is not None else None
+    if direction is None:
+        return f"slide at {_speed(drive, drive.rate, unit)}{_on(linkage, drive)}"
+    degrees = round(math.degrees(cmath.phase(-direction if drive.rate < 0.0 else direction)), 2)
+    towards = 180.0 - (180.0 - degrees) % 360.0  # -180 is said as 180
+    return f"slide at {_speed(drive, abs(drive.rate), unit)} towards {towards:g} deg{_on(linkage, drive)}"
+
+
+def _speed(drive: Drive, rate: float, unit: LengthUnit) -> str:
+    """A rate of a drive with its unit: rad/s, or the drawing's lengths a second."""
+    if drive.kind == "turn":
+        return f"{rate:.5g} rad/s"
+    return f"{rate:.5g} {'unit' if unit.metres is None else unit.name}/s"
+
+
+def _on(linkage: Linkage, drive: Drive) -> str:
+    """What a drive runs against, if that is not the frame."""
+    return "" if drive.against == linkage.frame else f" relative to {linkage.links[drive.against].name}"
 
 
 def _about(linkage: Linkage, drive: Drive, name: str, message: str, remedy: str) -> Finding:
@@ -49,9 +77,10 @@ def _about(linkage: Linkage, drive: Drive, name: str, message: str, remedy: str)
     "No drive is stated",
     family="pose",
     looks_for="A mechanism on a frame with no drive stated by note or option.",
-    matters="The link with the shortest arm on the frame is taken to turn at 1 rad/s counter-clockwise: every speed is "
-    "a ratio to that.",
-    remedy="Write a note such as 'n = 60 rpm' beside the crank, or use --drive 'A-B = 60 rpm'.",
+    matters="The link with the shortest arm on the frame is taken to turn at 1 rad/s counter-clockwise or, where none "
+    "turns there, a slide on the frame to run at 1 length unit a second: every speed is a ratio to that.",
+    remedy="Write a note such as 'n = 60 rpm' beside the crank, or use --drive 'A-B = 60 rpm'; for a slide "
+    "'v = 50 mm/s', or --drive 'block at C = 50 mm/s'.",
 )
 def assumed_drive(subject: RuleSubject) -> Iterator[Finding]:
     """Drives that were assumed."""
@@ -59,8 +88,12 @@ def assumed_drive(subject: RuleSubject) -> Iterator[Finding]:
         for drive in linkage.drives:
             if drive.source == "assumed" and analysis.mobility.at_pose > 0:
                 name = linkage.links[drive.link].name
-                message = f"no drive is stated: {name} is taken to turn at 1 rad/s ccw, so every speed is a ratio"
-                remedy = f"write a note such as 'n = 60 rpm' beside it, or use --drive '{name} = 60 rpm'"
+                motion = _motion(linkage, drive, subject.sketch.unit)
+                message = f"no drive is stated: {name} is taken to {motion}, so every speed is a ratio"
+                note, speed = ("v", "50 mm/s") if drive.kind == "slide" else ("n", "60 rpm")
+                remedy = f"write a note such as '{note} = {speed}' beside it"
+                if linkage.links[drive.link].pins:  # the name of a link without pins is a mere handle
+                    remedy += f", or use --drive '{name} = {speed}'"
                 yield _about(linkage, drive, "assumed-drive", message, remedy)
 
 
@@ -71,13 +104,17 @@ def assumed_drive(subject: RuleSubject) -> Iterator[Finding]:
     family="pose",
     looks_for="A drive note or option that names no link of the drawing, fits several, or contradicts itself.",
     matters="It is left out: speeds are those of other drives, or of an assumed one.",
-    remedy="Name the link by two of its pins, as 'ω_AB = 4 rad/s', or move the note to its link.",
+    remedy="Name the link by two of its pins, as 'ω_AB = 4 rad/s', a block by its pin, as 'v_C = 0.2 m/s', or move the "
+    "note to its link.",
 )
 def unknown_drive(subject: RuleSubject) -> Iterator[Finding]:
     """Drive texts that fit no link."""
     for seen in observed(subject, "unknown-drive"):
         message = f"the drive '{seen.subject}' is left out: {seen.detail}"
-        remedy = "name the link by two of its pins, as in 'ω_AB = 4 rad/s', or move the note to its link"
+        remedy = (
+            "name the link by two of its pins, as in 'ω_AB = 4 rad/s', a block by its pin, as in 'v_C = 0.2 m/s', "
+            "or move the note to its link"
+        )
         yield finding(seen, "error", message, remedy)
 
 
@@ -111,8 +148,10 @@ def drive_conflict(subject: RuleSubject) -> Iterator[Finding]:
     """Drives left out because they contradict others."""
     for linkage, _, drive, verdict in _drives(subject, "conflict"):
         name = linkage.links[drive.link].name
-        fits = f"; the others give {verdict.implied:.5g} rad/s" if verdict.implied is not None else ""
-        message = f"{name} is stated to turn at {drive.rate:.5g} rad/s, against the other drives{fits}; it is left out"
+        unit = subject.sketch.unit
+        fits = f"; the others give {_speed(drive, verdict.implied, unit)}" if verdict.implied is not None else ""
+        motion = _motion(linkage, drive, unit)
+        message = f"{name} is stated to {motion}, which contradicts the other drives{fits}; it is left out"
         yield _about(
             linkage, drive, "drive-conflict", message, "delete one of the drives, or state the speed that fits"
         )
@@ -123,7 +162,8 @@ def drive_conflict(subject: RuleSubject) -> Iterator[Finding]:
     "error",
     "A drive that cannot act at the drawn pose",
     family="pose",
-    looks_for="A driven link that the joints hold still at this pose, as a crank when coupler and rocker are in line.",
+    looks_for="A driven link or slide that the joints hold still at this pose, as a crank when coupler and rocker are "
+    "in line, or a block at the end of its stroke.",
     matters="No speed of the drive is possible there: the drive stands at the end of its stroke.",
     remedy="Draw another pose, or drive another link.",
 )
@@ -133,8 +173,9 @@ def drive_at_limit(subject: RuleSubject) -> Iterator[Finding]:
         if analysis.mobility.at_pose == 0:
             continue  # a structure: no-motion and over-constrained say so
         name = linkage.links[drive.link].name
-        stated = "assumed drive" if drive.source == "assumed" else "stated drive"
-        message = f"the {stated} of {name} cannot act at this pose: the joints hold {name} still"
+        what = "sliding drive" if drive.kind == "slide" else "drive"
+        stated = f"{'assumed' if drive.source == 'assumed' else 'stated'} {what}"
+        message = f"the {stated} of {name} cannot act at this pose: the joints hold {name} still{_on(linkage, drive)}"
         yield _about(linkage, drive, "drive-at-limit", message, "draw another pose, or drive another link")
 
 
@@ -143,7 +184,8 @@ def drive_at_limit(subject: RuleSubject) -> Iterator[Finding]:
     "warning",
     "Two links in line",
     family="pose",
-    looks_for="A link in line with the one that would drive it, through their common pin, within 0.02 degrees.",
+    looks_for="A link in line with the one that would drive it, through their common pin, or a push square to the "
+    f"slide or slot that it should run in, within {math.degrees(DEAD_CENTRE_RADIANS):.1g} degrees.",
     matters="The one cannot drive the other there, and which way it goes on is not settled.",
     remedy="Draw another pose if this one is not meant, or make sure that something carries it over.",
 )

@@ -1,5 +1,7 @@
 from __future__ import annotations
 
+import re
+
 import pytest
 
 from dxfcheck import __version__
@@ -63,6 +65,9 @@ def test_explain_takes_one_rule_or_none() -> None:
         (["check", "a.dxf", "--fail-on", "sight"], "'sight'"),
         (["check", "a.dxf", "--units", "cubit"], "cubit"),
         (["check", "a.dxf", "--drive", "fast"], "fast"),
+        (["check", "a.dxf", "--drive", "block at C = 5 mm/s cw"], "has no sense"),
+        (["check", "a.dxf", "--drive", "A-B against = 5 rad/s"], "'against'"),
+        (["check", "a.dxf", "--drive", "E-F = 50 mm"], "no speed with a unit"),
         (["check", "a.dxf", "--frame", "A,,D"], "without a name"),
         (["check", "a.dxf", "--frame", ""], "without a name"),
         (["read", "a.dxf", "--fail-on", "note"], "--fail-on"),
@@ -80,6 +85,16 @@ def test_wrong_usage_is_one_clear_line_and_status_2(
     assert err.count("\n") == 1
     assert err[:-1].isprintable()
     assert says in err
+
+
+def test_the_help_shows_every_form_of_drive_and_each_is_understood(capsys: pytest.CaptureFixture[str]) -> None:
+    assert main(["check", "--help"]) == 0
+    out = " ".join(capsys.readouterr().out.split())
+    forms = re.findall(r"'([^']+ = [^']+)'", out)
+    assert [" against " in form for form in forms].count(True) == 1
+    assert [form for form in forms if form.endswith("mm/s")] == ["block at C = 50 mm/s", "E-F = 50 mm/s"]
+    drives = [part for form in forms for part in ("--drive", form)]
+    assert parse_arguments(["check", "a.dxf", *drives]).settings.drives == tuple(forms)
 
 
 def test_version_and_help_go_to_standard_output(capsys: pytest.CaptureFixture[str]) -> None:

@@ -10,7 +10,7 @@ from dxfcheck.inspection import MechanismReport
 from dxfcheck.linkage import Linkage
 from tests.model import Other, linkage
 
-__all__ = ["gas_spring", "named", "seed_planet", "shuttle_yoke", "slotted_indexer", "soil_roller"]
+__all__ = ["gas_spring", "named", "seed_planet", "shuttle_yoke", "slotted_indexer", "soil_roller", "tray_rack"]
 
 
 def named(model: Linkage, names: Mapping[str, str]) -> MechanismReport:
@@ -63,3 +63,12 @@ def seed_planet() -> MechanismReport:
     ]
     model = linkage({"O": 0j, "X": 52 + 0j}, pins, others=meshes, turn={"arm": 1.0})
     return named(model, {"arm": "O-X", "sun": "O", "planet": "X"})
+
+
+def tray_rack(*, rack_first: bool = False) -> MechanismReport:
+    """A wheel of 50 about C at 2 rad/s rolls on a rack 50 below that slides level; its pin D carries a tray."""
+    ends = ("rack", "wheel") if rack_first else ("wheel", "rack")
+    others: list[Other] = [("rolling", -50j, *ends, 1 + 0j), ("slide", -50j, "ground", "rack", 1 + 0j)]
+    points = {"C": 0j, "D": -30 - 50j, "E": 20j}
+    tracing = {"D": "rack", "E": "wheel"}
+    return named(linkage(points, {"C": "ground wheel"}, others=others, turn={"wheel": 2.0}, tracing=tracing), {})

@@ -7,10 +7,11 @@ import pytest
 
 from dxfcheck.inspection import MechanismReport
 from dxfcheck.linkage import Drive
+from dxfcheck.reading.reading import Evidence
 from dxfcheck.reports.terminal import TerminalReport
 from dxfcheck.reports.terminal_contacts import contact_sentences, joint_counts, towards
 from dxfcheck.reports.terminal_mechanism import mechanism_lines
-from tests.reports.contacts import gas_spring, seed_planet, shuttle_yoke, slotted_indexer, soil_roller
+from tests.reports.contacts import gas_spring, seed_planet, shuttle_yoke, slotted_indexer, soil_roller, tray_rack
 from tests.reports.samples import PRESS, PRESS_ANALYSIS, tipper
 
 
@@ -25,8 +26,8 @@ def shown(report: MechanismReport) -> str:
 def test_a_slide_says_what_slides_on_what_how_fast_and_where_to() -> None:
     """B runs at (-80, 60): the yoke goes left with it, the block up in the yoke."""
     assert sentences(shuttle_yoke()) == [
-        ("sliding", "block at B slides on 1F at 60 mm/s towards 90 deg"),
-        ("", "1F slides on frame at 80 mm/s towards 180 deg"),
+        ("sliding", "block at B slides on link 1F at 60 mm/s towards 90 deg"),
+        ("", "link 1F slides on the frame at 80 mm/s towards 180 deg"),
     ]
 
 
@@ -92,16 +93,30 @@ def test_a_driven_telescope_is_told_of_in_the_same_words() -> None:
 
 def test_what_is_not_settled_is_no_figure() -> None:
     report = MechanismReport(linkage=PRESS, analysis=PRESS_ANALYSIS)
-    assert sentences(report) == [("sliding", "block at C slides on frame at ? mm/s")]
+    assert sentences(report) == [("sliding", "block at C slides on the frame at ? mm/s")]
 
 
 def test_wheels_that_roll() -> None:
     """Sun 3.25, planet -2.6 rad/s by Willis; the planet's contact with the sun turns at the difference."""
-    assert sentences(soil_roller()) == [("rolling", "C rolls on the frame at 2 rad/s")]
+    assert sentences(soil_roller()) == [("rolling", "C rolls on the frame at 2 rad/s cw")]
     assert sentences(seed_planet()) == [
-        ("rolling", "O rolls on X at 5.85 rad/s; against the frame O turns -1.25 times as fast as X"),
-        ("", "X rolls on the frame at 2.6 rad/s"),
+        ("rolling", "O rolls on X at 5.85 rad/s ccw; against the frame O turns 1.25 times as fast as X, the other way"),
+        ("", "X rolls on the frame at 2.6 rad/s cw"),
     ]
+
+
+@pytest.mark.parametrize("rack_first", [False, True])
+def test_a_rack_gets_no_ratio_as_it_does_not_turn(*, rack_first: bool) -> None:
+    said = [text for _, text in sentences(tray_rack(rack_first=rack_first)) if "rolls" in text]
+    assert said == ["wheel rolls on rack at 2 rad/s ccw; rack does not turn"]
+
+
+def test_wheels_that_are_not_settled_get_no_figure() -> None:
+    report = seed_planet()
+    loose = tuple(replace(motion, relative_angular_velocity=None) for motion in report.analysis.joints)
+    links = tuple(replace(motion, angular_velocity=None) for motion in report.analysis.links)
+    report = replace(report, analysis=replace(report.analysis, joints=loose, links=links))
+    assert sentences(report)[0] == ("rolling", "O rolls on X at ? rad/s")
 
 
 def test_the_heading_counts_the_joints_that_are_no_pins() -> None:
@@ -144,6 +159,18 @@ def test_the_reading_says_what_a_block_is_and_where_a_joint_points() -> None:
     TerminalReport(stream).reading(replace(tipper(findings=()), mechanisms=reports, evidence=()))
     text = " ".join(stream.getvalue().split())
     assert "link block at B; pins B (a block)" in text
-    assert "link 1F; no pins" in text
+    assert "link 1F; no pins, so it goes by a handle" in text
     assert "joint block at B and 1F; slide; at (30, 40); along 90 deg" in text
     assert "joint frame and C; rolling; at (0, 0); tangent 0 deg; nothing else holds it: a full joint" in text
+
+
+def test_a_sliding_drive_is_read_with_its_unit_and_what_it_runs_against() -> None:
+    report = gas_spring(0.5)
+    drive = Drive(link=2, against=1, rate=12.0, kind="slide", joint=len(report.linkage.joints) - 1, source="note")
+    report = replace(report, linkage=replace(report.linkage, drives=(drive,)))
+    why = Evidence("drive", "C against A", 9, "stated by the note", (), None, "M1")
+    stream = io.StringIO()
+    TerminalReport(stream).reading(replace(tipper(findings=()), mechanisms=(report,), evidence=(why,)))
+    text = " ".join(stream.getvalue().split())
+    assert "drive C against A; 12 mm/s; source: note rule 9: stated by the note" in text
+    assert "Also decided" not in text

@@ -28,6 +28,8 @@ def reached(*things: Drawn) -> list[int]:
     return list(ground(*things)[1].reached)
 
 
+WHEEL = (ring(0j, 20.0, layer="PITCH"), ring(0j, 2.0))
+"""A pitch circle about a pin."""
 LINK = (ring(0j, 2.0), line(0j, 50 + 0j))
 """A pin and strand 0 that ends on it."""
 
@@ -60,11 +62,8 @@ def test_what_hangs_together_with_a_pin_is_looked_at(more: list[Drawn], expected
         pytest.param([line(0j, 50 + 0j)], [], id="no pin"),
         pytest.param([ring(0j, 2.0), line(-30 + 1j, 30 + 1j)], [], id="a line across a ring"),
         pytest.param([ring(0j, 2.0), line(-30 + 1j, 30 + 1j, layer="FRAME")], [0], id="a frame line across a ring"),
-        pytest.param([ring(0j, 20.0, layer="PITCH"), line(20 + 0j, 50 + 0j)], [0], id="a line at a pitch circle"),
-        pytest.param([ring(0j, 20.0, layer="PITCH"), line(25 + 0j, 50 + 0j)], [], id="one off it"),
-        pytest.param(
-            [ring(0j, 20.0, layer="PITCH"), line(-50 - 20j, 50 - 20j)], [0], id="a pitch line along a pitch circle"
-        ),
+        pytest.param([*WHEEL, line(-50 - 20j, 50 - 20j)], [0], id="a line along a wheel"),
+        pytest.param([*WHEEL, line(-50 - 25j, 50 - 25j)], [], id="one off it"),
         pytest.param([ring(0j, 20.0), ring(10 + 0j, 2.0), line(20 + 0j, 50 + 0j)], [0], id="a line at a disc"),
         pytest.param([ring(0j, 20.0), ring(10 + 0j, 2.0), line(21 + 0j, 50 + 0j)], [], id="one off it"),
     ],
@@ -86,11 +85,6 @@ def test_the_lines_along_a_block_are_looked_at_though_nothing_meets_them() -> No
     assert [[rail.strand for rail in rails] for rails in found.rails] == [[3]]
     assert found.reached == list(range(len(sheet.strands)))
     assert ground(*crank_and_rod(), *drawn[-5:])[1].reached == [0, 1]
-
-
-def test_a_rectangle_round_a_ring_that_carries_no_link_is_no_box() -> None:
-    assert ground(*crank_and_rod(), ring(400 + 0j), rectangle(400 + 0j, 30, 20))[1].boxes == ()
-    assert len(ground(*dibber())[1].boxes) == 1
 
 
 LEGS = (

@@ -81,7 +81,9 @@ def turned_rectangle(centre: complex, length: float, width: float, turn: float, 
     """A rectangle whose length points along an angle (radians)."""
     along = cmath.rect(0.5, turn)
     half, up = along * length, along * width * 1j
-    return path(centre - half - up, centre + half - up, centre + half + up, centre - half + up, closed=True, handle=handle)
+    return path(
+        centre - half - up, centre + half - up, centre + half + up, centre - half + up, closed=True, handle=handle
+    )
 
 
 def strokes(start: complex, end: complex, *, away: complex = -4 - 4j, count: int = 4) -> tuple[Drawn, ...]:

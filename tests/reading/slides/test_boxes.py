@@ -94,7 +94,8 @@ def test_strokes_on_a_side_say_along_which_axis_a_box_is_hatched() -> None:
     sheet, found = boxes(rectangle(0j, 20, 12), rectangle(60 + 0j, 10, 8))
     small, great = found
     hatched = hatched_boxes(found, symbols((great.strands[0], 0)), sheet)
-    assert (hatched.numbers, hatched.sides) == ({great.number}, set(great.strands))
+    assert hatched.numbers == {great.number}
+    assert hatched.sides == set(great.strands)
     assert dict(hatched.axes) == {great.number: (0,)}
     upright = hatched_boxes(found, symbols((small.strands[0], 1)), sheet)
     assert dict(upright.axes) == {small.number: (1,)}

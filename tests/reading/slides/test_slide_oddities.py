@@ -29,7 +29,11 @@ def test_a_block_on_its_guide_is_not_odd(guides: list[Drawn]) -> None:
     [
         pytest.param([], None, None, "no line runs through it or along it; expected", id="no line at all"),
         pytest.param(
-            [guide(90 - 23j, 210 - 23j)], 13.0, 10.0, "the nearest line parallel to a side is {amount}", id="too far off"
+            [guide(90 - 23j, 210 - 23j)],
+            13.0,
+            10.0,
+            "the nearest line parallel to a side is {amount}",
+            id="too far off",
         ),
         pytest.param(
             [guide(90 - 30j, 210 - 30j), guide(90 + 25j, 210 + 25j, handle="other")],
@@ -42,7 +46,11 @@ def test_a_block_on_its_guide_is_not_odd(guides: list[Drawn]) -> None:
             [guide(190 - 60j, 190 + 60j)], 25.0, 15.0, "the nearest line parallel to a side", id="across, too far off"
         ),
         pytest.param(
-            [guide(190 + 0j, 260 + 0j)], 25.0, None, "the nearest one in its way ends {amount} before it", id="too short"
+            [guide(190 + 0j, 260 + 0j)],
+            25.0,
+            None,
+            "the nearest one in its way ends {amount} before it",
+            id="too short",
         ),
         pytest.param([guide(90 - 100j, 210 - 100j)], None, None, "no line runs through", id="further than is looked"),
         pytest.param([guide(140 - 23j, 160 - 23j)], None, None, "no line runs through", id="shorter than the block"),

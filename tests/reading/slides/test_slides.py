@@ -9,7 +9,6 @@ from dxfcheck.linkage import Linkage
 from dxfcheck.settings import Settings
 from tests.reading.slides.sliders import (
     A,
-    B,
     C,
     Slid,
     block,
@@ -64,7 +63,9 @@ def test_a_block_of_four_lines_is_one_link() -> None:
     assert len(linkage(*drawn).links) == 4
 
 
-@pytest.mark.parametrize(("degrees", "way"), [(30.0, 30.0), (100.0, -80.0), (-30.0, -30.0), (90.0, 90.0), (-90.0, 90.0)])
+@pytest.mark.parametrize(
+    ("degrees", "way"), [(30.0, 30.0), (100.0, -80.0), (-30.0, -30.0), (90.0, 90.0), (-90.0, 90.0)]
+)
 def test_a_slide_points_to_plus_x_or_straight_up(degrees: float, way: float) -> None:
     turn = math.radians(degrees)
     reach = cmath.rect(60, turn)
@@ -121,7 +122,9 @@ def test_a_rod_that_points_past_the_pin_is_welded_to_the_block() -> None:
 
 
 def test_a_stroke_that_stops_at_the_block_where_another_rod_ends_on_its_pin_is_part_of_the_block() -> None:
-    drawn = dibber(BELOW, line(165 + 0j, 200 + 0j, handle="push rod"), ring(204 + 0j, handle="ring E"), *named(E=204 + 0j))
+    drawn = dibber(
+        BELOW, line(165 + 0j, 200 + 0j, handle="push rod"), ring(204 + 0j, handle="ring E"), *named(E=204 + 0j)
+    )
     assert "block at C-E" not in links(*drawn)
     assert "C-E" in links(*drawn)
 
@@ -147,7 +150,8 @@ def shaper(*lever: Drawn) -> tuple[Drawn, ...]:
         pytest.param([rod(FOOT, TIP)], id="through"),
         pytest.param([rod(FOOT, CRANK_END - 8 * WAY), rod(CRANK_END + 8 * WAY, TIP)], id="interrupted"),
         pytest.param(
-            [rod(FOOT, TIP), *(line(p - 10j * WAY, q - 10j * WAY) for p, q in [(FOOT + 50 * WAY, TIP)])], id="and a line beside"
+            [rod(FOOT, TIP), *(line(p - 10j * WAY, q - 10j * WAY) for p, q in [(FOOT + 50 * WAY, TIP)])],
+            id="and a line beside",
         ),
     ],
 )
@@ -180,6 +184,24 @@ def test_a_ram_welded_to_its_rod_slides_as_part_of_it() -> None:
 
 def test_a_rectangle_without_a_pin_or_a_rod_slides_nowhere() -> None:
     assert slid(*dibber(guide()), rectangle(300 + 0j, 30, 20), guide(250 + 0j, 350 + 0j, handle="far")) == [ALONG_X]
+
+
+def test_strokes_along_a_ram_are_the_frame_that_it_slides_on() -> None:
+    assert slid(*crank_and_rod(), STEM, RAM, *strokes(200 - 10j, 230 - 10j)) == [ALONG_X]
+
+
+def test_a_rectangle_round_a_rod_is_no_link_that_slides_on_it() -> None:
+    collar = turned_rectangle((B + C) / 2, 20, 10, cmath.phase(C - B), handle="collar")
+    drawn = (*dibber(guide()), collar)
+    assert slid(*drawn) == [ALONG_X]
+    assert links(*drawn) == ["frame", "A-B", "B-C", "block at C"]
+
+
+def test_a_slat_with_a_pin_in_it_is_the_guide_beside_a_block_and_no_block_itself() -> None:
+    slat = (rectangle(160 - 19j, 140, 8, handle="slat"), ring(222 - 19j, 2.0, layer="FRAME"), *named(F=222 - 19j))
+    drawn = (*crank_and_rod(), rectangle(C, 34, 30, handle="block"), *slat)
+    assert {*slid(*drawn)[0][:2]} == {"block at C", "F"}
+    assert observed("block-without-guide", *drawn) == []
 
 
 LONG_STEM = line(154 + 0j, 300 + 0j, handle="stem")
@@ -262,9 +284,7 @@ def lift(*telescope: Drawn) -> Linkage:
         ),
     ],
 )
-def test_a_rod_that_ends_in_a_barrel_slides_in_it(
-    telescope: list[Drawn], barrel: list[str], piston: list[str]
-) -> None:
+def test_a_rod_that_ends_in_a_barrel_slides_in_it(telescope: list[Drawn], barrel: list[str], piston: list[str]) -> None:
     found = lift(*telescope)
     assert slides_in(found) == [Slid("A", "C", 1 + 0j)]
     parts = {link.name: (link.kind, sorted(link.handles)) for link in found.links}

@@ -1,0 +1,95 @@
+from __future__ import annotations
+
+import pytest
+
+from dxfcheck.reading.shapes.outlined import Outlined, find_outlined
+from tests.sketches import Drawn, laid_out, line, obround, path, rectangle, ring
+
+FAR = line(-100 + 90j, 100 + 90j)
+SLOT = obround(-15 + 0j, 15 + 0j, 5)
+ENDS = (line(-6 - 5j, -6 + 5j), line(6 - 5j, 6 + 5j))
+
+
+def outlined(*things: Drawn) -> Outlined:
+    """The closed shapes of these things; strands are numbered as the lines among them."""
+    sheet, _ = laid_out(*things, FAR)
+    frame = {strand.number for strand in sheet.strands if strand.frame}
+    return find_outlined(sheet, frame, ())
+
+
+def landed(found: Outlined) -> set[tuple[int, int, str]]:
+    return {(each.strand, each.pin, each.how) for each in found.landings}
+
+
+def test_lines_alone_are_none_of_it() -> None:
+    found = outlined(ring(0j, 2.0), line(2 + 0j, 50 + 0j))
+    assert landed(found) == {(0, 0, "end")}
+    assert not any((found.borders, found.slots, found.empty, found.bars, found.groups, found.closed, found.oddities))
+
+
+def test_a_pin_in_a_slot_does_not_land_on_it() -> None:
+    found = outlined(ring(0j, 5.0), line(5j, 60j), SLOT)
+    (slot,) = found.slots
+    assert (slot.strands, slot.sites, slot.pinned) == ((1,), (0,), None)
+    assert landed(found) == {(0, 0, "end")}
+    assert found.groups == ((1,),)
+    assert found.closed == {1}
+
+
+def test_the_pivot_of_a_slotted_lever_lands_on_it() -> None:
+    found = outlined(ring(-15 + 0j, 2.0), line(-15 + 2j, -15 + 60j), ring(10 + 0j, 2.0), line(10 + 2j, 40 + 60j), SLOT)
+    (slot,) = found.slots
+    assert (slot.pinned, slot.sites) == (0, (1,))
+    assert (2, 0, "corner") in landed(found)
+    assert not any(strand == 2 and pin == 1 for strand, pin, _ in landed(found))
+    assert [oddity.kind for oddity in found.oddities] == ["slot-pins"]
+
+
+def test_a_block_in_a_slot_holds_the_pin_and_does_not_weld_to_it() -> None:
+    found = outlined(ring(0j, 2.0), line(2j, 60j), SLOT, *ENDS)
+    (slot,) = found.slots
+    assert sorted(slot.block) == [2, 3]
+    assert {(strand, pin) for strand, pin, _ in landed(found)} == {(0, 0), (slot.block[0], 0)}
+    assert found.never == {(1, 2), (2, 1), (1, 3), (3, 1)}
+    assert {frozenset(group) for group in found.groups} == {frozenset({1}), frozenset({2, 3})}
+
+
+def test_an_empty_slot_is_kept_for_what_is_said_of_it() -> None:
+    found = outlined(ring(60j, 2.0), line(60j, 60j + 30), SLOT)
+    assert found.slots == ()
+    assert [shape.strands for shape in found.empty] == [(1,)]
+
+
+def test_a_bar_has_its_two_holes() -> None:
+    holes = [ring(at, 2.0) for at in (-15 + 0j, 15 + 0j)]
+    found = outlined(*holes, SLOT)
+    assert (found.bars, found.slots) == (((0,),), ())
+    assert {(strand, pin) for strand, pin, _ in landed(found)} == {(0, 0), (0, 1)}
+
+
+def test_a_plate_has_the_holes_in_it_but_not_what_slides_in_its_slot() -> None:
+    plate = path(-40 - 30j, 40 - 30j, 40 + 30j, -40 + 30j, closed=True)
+    holes = [ring(at, 2.0) for at in (-30 - 20j, 30 + 20j)]
+    found = outlined(*holes, ring(0j, 5.0), line(5j, 70j), SLOT, plate)
+    assert {(strand, pin) for strand, pin, _ in landed(found)} == {(0, 2), (2, 0), (2, 1)}
+    assert (1, 2) in found.groups
+    assert found.closed == {1, 2}
+
+
+def test_an_outline_round_whole_links_is_a_border_on_which_nothing_lands() -> None:
+    link = (ring(-20 + 0j, 2.0), ring(20 + 0j, 2.0), line(-18 + 0j, 18 + 0j))
+    found = outlined(*link, rectangle(0j, 80, 60))
+    assert found.borders == {1}
+    assert {(strand, pin) for strand, pin, _ in landed(found)} == {(0, 0), (0, 1)}
+
+
+def test_a_fork_is_a_slot_open_at_one_end() -> None:
+    fork = path(60 - 2j, -20 - 2j, -20 + 2j, 60 + 2j)
+    found = outlined(ring(20 + 0j, 2.0), line(20 + 2j, 20 + 60j), fork)
+    assert [(slot.strands, slot.sites) for slot in found.slots] == [((1,), (0,))]
+    assert not any(strand == 1 for strand, _, _ in landed(found))
+
+
+@pytest.mark.parametrize("layer", ["0", "FRAME"])
+def test_a_slot_on_the_frame_is_a_slot_as_well(layer: str) -> None:
+    assert len(outlined(ring(0j, 5.0), line(5j, 60j), SLOT._replace(layer=layer)).slots) == 1
