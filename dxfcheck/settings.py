@@ -343,3 +343,6 @@ SLEEVE_LIKENESS = 0.2
 
 SLEEVE_STROKES = 2
 """A line beside a rod on which so many other lines stand may be hatched: one side of a sleeve."""
+
+BAR_LENGTH_OF_WIDTH = 3.0
+"""An outline that is symmetric about its long axis and at least so many times as long as it is wide is a bar."""

@@ -6,6 +6,7 @@ from collections import defaultdict
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from collections.abc import Set as AbstractSet
 from dataclasses import dataclass
+from typing import NamedTuple
 
 from dxfcheck.reading.bodies.body import Body
 from dxfcheck.reading.bodies.covers import corner_pins, corner_welds, cover_bodies
@@ -14,7 +15,7 @@ from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.unions import Unions
 
-__all__ = ["Bodies", "make_bodies"]
+__all__ = ["Bodies", "Known", "make_bodies"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -31,27 +32,32 @@ class Bodies:
     landings: tuple[Landing, ...]
 
 
+class Known(NamedTuple):
+    """What is known of the parts of a sheet before anything is welded.
+
+    ``outlines`` are the strands of bars and plates, which touch one another without being welded; ``groups`` other
+    strands known to be one part whatever their ends do (the four of a block); ``never`` pairs that slide on one another
+    (both ways round). Bodies without a pin are left out, but for those of the strands ``kept``. ``runs_in`` are pairs
+    of the strand of a slot or guide and a pin that slides in it.
+    """
+
+    outlines: Sequence[Sequence[int]] = ()
+    groups: Sequence[Sequence[int]] = ()
+    never: AbstractSet[tuple[int, int]] = frozenset()
+    kept: AbstractSet[int] = frozenset()
+    runs_in: Sequence[tuple[int, int]] = ()
+
+
 def make_bodies(
-    sheet: Sheet,
-    active: AbstractSet[int],
-    landings: Sequence[Landing],
-    frame: Mapping[int, str],
-    outlines: Sequence[Sequence[int]],
-    *,
-    groups: Sequence[Sequence[int]] = (),
-    never: AbstractSet[tuple[int, int]] = frozenset(),
-    kept: AbstractSet[int] = frozenset(),
+    sheet: Sheet, active: AbstractSet[int], landings: Sequence[Landing], frame: Mapping[int, str], known: Known
 ) -> Bodies:
     """Weld the active strands into bodies and give each its pins.
 
-    ``frame`` are the strands known to be frame, ``active`` those that are neither marks nor hatch strokes, ``outlines``
-    the strands of bars and plates, which touch one another without being welded; ``groups`` other strands known to be
-    one part whatever their ends do (the four of a block), ``never`` pairs that slide on one another (both ways round).
-    Bodies without a pin are left out, but for those of the strands ``kept``.
+    ``frame`` are the strands known to be frame, ``active`` those that are neither marks nor hatch strokes.
     """
     counted = [each for each in landings if each.strand in active and _counts(each, frame)]
     pins_of_fill = corner_pins(sheet)
-    unions = _weld(sheet, active, counted, frame, (outlines, groups), never)
+    unions = _weld(sheet, active, counted, frame, known)
     for group in corner_welds(sheet, active, pins_of_fill):
         for other in group[1:]:
             unions.join(group[0], other)
@@ -60,9 +66,9 @@ def make_bodies(
         if double.same:
             unions.join(double.kept, double.repeated)
     members = {index: unions.of(index) for index in active}
-    laid_over = set(_laid_over(counted, members))
+    laid_over = set(_laid_over(counted, members, known.runs_in))
     counted = [each for each in counted if (each.strand, each.pin) not in laid_over]
-    bodies = _gather(sheet, active, members, counted, frame, kept)
+    bodies = _gather(sheet, active, members, counted, frame, known.kept)
     return Bodies(
         bodies=tuple(cover_bodies(sheet, bodies, pins_of_fill)),
         doubles=tuple(doubles),
@@ -81,18 +87,16 @@ def _weld(
     active: AbstractSet[int],
     landings: Iterable[Landing],
     frame: Mapping[int, str],
-    parts: tuple[Sequence[Sequence[int]], Sequence[Sequence[int]]],
-    never: AbstractSet[tuple[int, int]],
+    known: Known,
 ) -> Unions:
     """Join strands where an end meets another strand and no pin is there; all frame is one body."""
     unions = Unions(len(sheet.strands))
-    outlines, groups = parts
-    for group in (*outlines, *groups):
+    for group in (*known.outlines, *known.groups):
         for other in group[1:]:
             unions.join(group[0], other)
     at_pin = {(landing.strand, landing.end) for landing in landings if landing.end is not None}
     # Two bars on one pin touch one another with their arcs and sides, but turn on one another.
-    bar_of = {index: number for number, group in enumerate(outlines) for index in group}
+    bar_of = {index: number for number, group in enumerate(known.outlines) for index in group}
     frame_strands = sorted(active & frame.keys())
     for index in frame_strands[1:]:
         unions.join(frame_strands[0], index)
@@ -102,15 +106,23 @@ def _weld(
                 continue
             for touch in sheet.touching.at(index, end):
                 bars = {bar_of[strand] for strand in (index, touch.strand) if strand in bar_of}
-                slides = (index, touch.strand) in never
+                slides = (index, touch.strand) in known.never
                 if touch.meets and touch.strand in active and len(bars) < 2 and not slides:
                     unions.join(index, touch.strand)
     return unions
 
 
-def _laid_over(landings: Sequence[Landing], body_of: Mapping[int, int]) -> Iterator[tuple[int, int]]:
-    """Strands that run over a pin's centre although they share another pin with a link that ends there."""
+def _laid_over(
+    landings: Sequence[Landing], body_of: Mapping[int, int], runs_in: Iterable[tuple[int, int]]
+) -> Iterator[tuple[int, int]]:
+    """Strands that run over a pin's centre although they share another pin with a link that ends there.
+
+    A pin that slides along a body counts as shared: a slotted lever may lie over the pivot of its crank.
+    """
     pins_of: defaultdict[int, set[int]] = defaultdict(set)
+    for strand, pin in runs_in:
+        if strand in body_of:
+            pins_of[body_of[strand]].add(pin)
     ends_at: defaultdict[int, set[int]] = defaultdict(set)
     for landing in landings:
         if landing.strand in body_of and landing.how not in {"through", "beside"}:

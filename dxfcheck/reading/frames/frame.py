@@ -34,20 +34,22 @@ def find_frame_symbols(
     marks: Collection[int],
     landings: Sequence[Landing],
     boxes: Collection[int] = (),
+    outlines: Collection[int] = (),
 ) -> FrameSymbols:
     """Frame symbols among the linework that hangs together with pins (``relevant`` strands, no ``marks``).
 
     ``boxes`` are strands of rectangles that may slide: a single rod that ends on one is no leg, the two of a triangle
-    are.
+    are. ``outlines`` are strands of outlines with holes: a stroke that ends on the side of one that lies over the symbol
+    is a stroke still, and a corner that comes to lie on a base makes no leg of one.
     """
     strands, tolerance = sheet.strands, sheet.tolerance
     ignored = sheet.ring_strands.union(marks)
     landed = {(landing.strand, landing.end) for landing in landings}
     links = on_two_pins(landings)
-    standing = list(strokes_on_bases(sheet, relevant, ignored, landed))
+    standing = list(strokes_on_bases(sheet, relevant, ignored, landed, outlines))
     plain = [stroke for stroke in standing if stroke.base.strand not in links]
     bases, strokes = accept_bases(strands, plain, {})
-    loose = list(loose_strokes(sheet, relevant, ignored, bases, strokes, landed, links))
+    loose = list(loose_strokes(sheet, relevant, ignored.union(outlines), bases, strokes, landed, links))
     # A link that passes close by the strokes of a symbol is their base only where no other line is.
     placed = strokes.keys() | {stroke.strand for stroke in loose if stroke.base.strand not in links}
     loose.extend(stroke for stroke in standing if stroke.base.strand in links and stroke.strand not in placed)
@@ -58,7 +60,7 @@ def find_frame_symbols(
     lines = [*bases, *hatched]
     legs = [
         *legs_of(sheet, lines, landings, boxes),
-        *polyline_legs_of(strands, lines, landings, sheet.pins, tolerance),
+        *polyline_legs_of(strands, lines, landings, sheet.pins, tolerance, outlines),
     ]
     new = (leg for leg in legs if leg not in reasons and leg not in strokes)
     reasons.update(dict.fromkeys(new, LEG))

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections import defaultdict
+from collections import Counter, defaultdict
 from collections.abc import Collection, Iterator, Sequence
 
 import numpy as np
@@ -58,8 +58,12 @@ def polyline_legs_of(
     landings: Sequence[Landing],
     pins: Sequence[PinSite],
     tolerance: Tolerance,
+    outlines: Collection[int] = (),
 ) -> Iterator[int]:
-    """Triangles of one polyline that land on a pin and have corners on a base, other than at their pins."""
+    """Triangles of one polyline that land on a pin and have corners on a base, other than at their pins.
+
+    Of ``outlines`` with holes one corner on a base is not enough: a triangle round its pin has a side there.
+    """
     base_strands = {base.strand for base in bases}
     # What is on two pins is a link, though one of its corners may come to lie on a base.
     apart = base_strands | on_two_pins(landings)
@@ -80,4 +84,5 @@ def polyline_legs_of(
         starts = np.array([piece_of(strands, base).start for base in bases], dtype=np.complex128)
         ends = np.array([piece_of(strands, base).end for base in bases], dtype=np.complex128)
         on_base, _ = near_pairs(places, reach, starts, ends)
-        yield from sorted({corners[each][0] for each in on_base.tolist()})
+        standing = Counter(corners[each][0] for each in set(on_base.tolist()))
+        yield from sorted(path for path, feet in standing.items() if feet > 1 or path not in outlines)

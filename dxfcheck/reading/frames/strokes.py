@@ -59,14 +59,19 @@ def _as_stroke(strands: Sequence[Strand], index: int, base: Base, near: int, *, 
 
 
 def strokes_on_bases(
-    sheet: Sheet, candidates: Iterable[int], ignored: Collection[int], landed: Collection[tuple[int, int | None]]
+    sheet: Sheet,
+    candidates: Iterable[int],
+    ignored: Collection[int],
+    landed: Collection[tuple[int, int | None]],
+    outlines: Collection[int] = (),
 ) -> Iterator[Stroke]:
-    """Lines with one end on another line and the other end free.
+    """Lines with one end on another line and the other end free, or on the side of one of the ``outlines`` laid over.
 
     A stroke may well begin inside the ring of a pin, where its base runs through the pin, or even end there.
     """
     strands = sheet.strands
     links = {index for index, end in landed if end == 0 and (index, 1) in landed}
+    outlines_only = frozenset(outlines)
     for index in candidates:
         strand = strands[index]
         if not isinstance(strand.primitive, Segment) or index in links:
@@ -74,7 +79,7 @@ def strokes_on_bases(
         closing = [_closest(_near(sheet, ignored, index, end), sheet.tolerance) for end in (0, 1)]
         for end in (0, 1):
             firm = (index, 1 - end) not in landed
-            if firm and closing[1 - end]:
+            if firm and not outlines_only.issuperset(closing[1 - end]):
                 continue
             for target in closing[end]:
                 base = _base_at(strands[target], strand.ends[end])

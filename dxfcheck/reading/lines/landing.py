@@ -84,9 +84,13 @@ def find_landings(pins: Sequence[PinSite], linework: Linework, tolerance: Tolera
 
 
 class _Rims(NamedTuple):
-    """How far from a pin's centre what meets its rings may lie: within ``rim`` of each radius, loosely ``close``."""
+    """How far from a pin's centre what meets its rings may lie: within ``rim`` of each radius, loosely ``close``.
+
+    An end is at its centre within ``t``, a line runs on through it within ``through``.
+    """
 
     t: float
+    through: float
     furthest: float
     bands: tuple[tuple[float, float, float], ...]
 
@@ -94,7 +98,8 @@ class _Rims(NamedTuple):
     def of(cls, radii: Sequence[float], tolerance: Tolerance) -> _Rims:
         """The radii of a pin, each with its two tolerances."""
         bands = tuple((radius, tolerance.rim(radius), tolerance.close(radius)) for radius in radii)
-        return cls(tolerance.t, max(radius + max(rim, close) for radius, rim, close in bands), bands)
+        furthest = max(radius + max(rim, close) for radius, rim, close in bands)
+        return cls(tolerance.t, tolerance.through(radii[0]), furthest, bands)
 
     def met(self, away: float) -> bool:
         """Whether what lies so far from the centre is on a rim."""
@@ -173,14 +178,14 @@ def _aim_offset(piece: Segment | Arc, point: Point, centre: Point) -> float:
 def _land_on(pin: PinSite, strand: Strand, piece: Segment | Arc, rims: _Rims) -> Landing | None:
     """A piece that runs on through a pin's centre, or past its ring touching it from one side."""
     if isinstance(piece, Arc):
-        through = abs(abs(pin.at - piece.centre) - piece.radius) <= rims.t and _covers(piece, pin.at)
+        through = abs(abs(pin.at - piece.centre) - piece.radius) <= rims.through and _covers(piece, pin.at)
         return Landing(strand.number, pin.number, "through", None, 0.0) if through else None
     parameter = parameter_on_line(pin.at, piece.start, piece.end)
     if not 0.0 < parameter < 1.0:
         return None
     foot = piece.start + parameter * (piece.end - piece.start)
     away = abs(foot - pin.at)
-    if away <= rims.t:
+    if away <= rims.through:
         return Landing(strand.number, pin.number, "through", None, away)
     if away < pin.radius and not rims.met(away):
         return Landing(strand.number, pin.number, "across", None, away)

@@ -5,6 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 
+import numpy as np
+
 from dxfcheck.drawing.primitives import Fill
 from dxfcheck.reading.lines.landing import Landings, find_landings
 from dxfcheck.reading.lines.linework import Linework, Strand, make_linework
@@ -12,6 +14,7 @@ from dxfcheck.reading.lines.pins import PinSite, PinSites, find_pins, rings_of_a
 from dxfcheck.reading.lines.sorting import Sorted
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches, find_touches
+from dxfcheck.reading.lines.typed import typed_step
 
 __all__ = ["Sheet", "lay_out"]
 
@@ -48,6 +51,7 @@ def lay_out(kinds: Sorted, tolerance: Tolerance) -> Sheet:
     """Rings, strands and where they meet."""
     frame = {number for number, (index, _) in enumerate(kinds.lines) if index in kinds.frame_lines}
     linework = make_linework((primitive for _, primitive in kinds.lines), frame)
+    tolerance = _for_typed(kinds, linework, tolerance)
     touching = find_touches(linework, tolerance, tolerance.close)
     arcs = [strand for strand in linework.strands if len(strand.pieces) == 1]
     made = rings_of_arcs(arcs, tolerance)
@@ -72,3 +76,13 @@ def lay_out(kinds: Sorted, tolerance: Tolerance) -> Sheet:
         fills=tuple(fill for _, fill in kinds.fills),
         tolerance=tolerance,
     )
+
+
+def _for_typed(kinds: Sorted, linework: Linework, tolerance: Tolerance) -> Tolerance:
+    """The tolerance with the step to which rings, and rings and lines, were typed."""
+    rings = np.array([ring.centre for _, ring in kinds.rings], dtype=np.complex128)
+    of_rings = typed_step(rings) if rings.size > 1 else 0.0
+    if not of_rings:
+        return tolerance
+    every = typed_step(np.concatenate((rings, linework.piece_starts, linework.piece_ends)))
+    return tolerance._replace(typed_rings=of_rings, typed=every)

@@ -26,12 +26,25 @@ class Tolerance(NamedTuple):
     """Lengths in the drawing's unit.
 
     ``t`` is for ends that meet, ``shape`` for rectangles, obrounds and frame symbols, ``gap`` is how far off an end may
-    stop and still be taken to have been meant to meet.
+    stop and still be taken to have been meant to meet. Where all rings, or all rings and line ends, were typed to so
+    many decimals, ``typed_rings`` and ``typed`` are that step (else 0): what was meant to lie on a line misses it by
+    as much, however exact t is.
     """
 
     t: float
     shape: float
     gap: float
+    typed_rings: float = 0.0
+    typed: float = 0.0
+
+    @property
+    def on_line(self) -> float:
+        """How far an end may lie from a line and still meet it."""
+        return max(self.t, min(self.typed, self.shape))
+
+    def through(self, radius: float) -> float:
+        """How far a line may run past the centre of a ring of this radius and still run through it."""
+        return max(self.t, min(self.typed_rings, RIM_OF_RADIUS * radius))
 
     def close(self, size: float) -> float:
         """How far apart the parts of a symbol of this size may lie: the shape tolerance, but no more than 3 % of it.

@@ -94,7 +94,7 @@ def find_touches(
     points = np.array([end for each in looked for end in each.ends], dtype=np.complex128)
     reach = np.array([within(each.length) for each in looked for _ in each.ends])
     ends, targets, gaps = _on_lines(linework, numbers, points, reach)
-    meets = gaps <= tolerance.t
+    meets = gaps <= tolerance.on_line
     if linework.chord_strand.size and points.size:
         on_arcs = _on_arcs(linework, numbers, points, tolerance, reach)
         ends = np.concatenate((ends, np.array([each[0] for each in on_arcs], dtype=np.int64)))
@@ -109,8 +109,8 @@ def find_touches(
     ends, targets, gaps, meets = ends[new], targets[new], gaps[new], meets[new]
     # An end that meets something exactly does not meet an arc beside it as well, by the wider reach of arcs.
     exact = np.zeros(2 * len(strands), dtype=np.bool_)
-    exact[ends[gaps <= tolerance.t]] = True
-    meets &= (gaps <= tolerance.t) | ~exact[ends]
+    exact[ends[gaps <= tolerance.on_line]] = True
+    meets &= (gaps <= tolerance.on_line) | ~exact[ends]
     first = np.searchsorted(ends, np.arange(2 * len(strands) + 1))
     return Touches(first.tolist(), targets.tolist(), gaps.tolist(), meets.tolist())
 

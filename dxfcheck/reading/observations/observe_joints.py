@@ -13,6 +13,10 @@ from dxfcheck.reading.shapes.contact import Oddity
 __all__ = ["observe_joints"]
 
 
+OF_LINKAGES = frozenset({"block-without-guide"})
+"""Kinds that say nothing where the pin is no linkage's: a plate with one hole is no block."""
+
+
 def observe_joints(sketch: Sketch, seen: Seen, parts: Parts) -> Iterator[Observation]:
     """The oddities of the joints of linkages, and of what would have been one."""
     for oddity in parts.oddities:
@@ -22,6 +26,8 @@ def observe_joints(sketch: Sketch, seen: Seen, parts: Parts) -> Iterator[Observa
         mechanism = seen.mechanisms.get(oddity.body) if oddity.body is not None else None
         if mechanism is None and site is not None:
             mechanism = seen.site_mechanisms.get(site)
+        if mechanism is None and oddity.kind in OF_LINKAGES:
+            continue
         handles = [seen.handles[strand] for strand in oddity.strands]
         handles += [sketch.handles(sketch.primitives[ring]) for ring in oddity.rings]
         yield Observation(

@@ -25,9 +25,11 @@ def _aims(seen: Seen) -> Iterator[Observation]:
     """Ends that land on a pin but point past its centre, and lines that run through a ring off its centre."""
     laid_over = set(seen.bodies.laid_over)
     held: defaultdict[int, set[int]] = defaultdict(set)
+    ending: defaultdict[int, set[int]] = defaultdict(set)
     for landing in seen.bodies.landings:
         if landing.how != "across":
             held[seen.body_of[landing.strand]].add(landing.pin)
+            ending[landing.pin].add(seen.body_of[landing.strand])
     for landing in seen.landings:
         number = seen.body_of.get(landing.strand)
         if number is None or landing.pin not in seen.pin_names:
@@ -37,6 +39,8 @@ def _aims(seen: Seen) -> Iterator[Observation]:
             continue  # a stroke at a corner, or a leg: its body lands on that pin by other linework
         if landing.how == "end" and not frame and number in seen.body_names:
             yield from _end_off_centre(seen, landing)
+        elif landing.how == "across" and any(held[number] & held[other] for other in ending[landing.pin] - {number}):
+            continue  # a folded link passes close by the pivot of its neighbour
         elif landing.how == "across" and (landing.strand, landing.pin) not in laid_over:
             yield from _line_off_centre(seen, landing, "fixed there" if frame else "not pinned there")
 

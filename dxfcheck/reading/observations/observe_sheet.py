@@ -126,7 +126,8 @@ def _floating(sheet: Sheet, parts: Parts, model: Model) -> Iterator[Observation]
 
 
 def _place_of(assembly: Assembly, sheet: Sheet) -> Point:
-    return min((sheet.pins[site].at for site in assembly.sites), key=lambda at: (at.real, at.imag))
+    places = [sheet.pins[site].at for site in assembly.sites] or [contact.at for contact in assembly.contacts]
+    return min(places, key=lambda at: (at.real, at.imag))
 
 
 def _specks(sheet: Sheet, parts: Parts, model: Model) -> Iterator[Observation]:

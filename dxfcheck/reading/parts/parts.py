@@ -6,12 +6,12 @@ guides, and last welds and joints. Each step is a pure function of the ones befo
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping, Sequence
 from collections.abc import Set as AbstractSet
 from dataclasses import dataclass, replace
 from typing import NamedTuple
 
-from dxfcheck.reading.bodies.bodies import Bodies, make_bodies
+from dxfcheck.reading.bodies.bodies import Bodies, Known, make_bodies
 from dxfcheck.reading.frames.frame import FrameSymbols, find_frame_symbols
 from dxfcheck.reading.frames.marks import find_marks
 from dxfcheck.reading.frames.weld_marks import weld_marks, welds_on_rings
@@ -67,16 +67,15 @@ def find_parts(kinds: Sorted, sheet: Sheet, settings: Settings) -> Parts:
     landings = [each for each in outlined.landings if (each.strand, each.pin) not in dropped]
     landings.extend(slides.landings)
     slots = [slot for slot in outlined.slots if not _holds_a_block(slot, slides)]
-    bodies = make_bodies(
-        sheet,
-        lines.active,
-        landings,
-        {index: why for index, why in lines.frame.items() if index in lines.active},
-        outlined.bars,
+    known = Known(
+        outlines=outlined.bars,
         groups=[*outlined.groups, *slides.groups],
         never=slides.never | outlined.never,
         kept={*slides.strands, *(strand for slot in slots for strand in (*slot.strands, *slot.block)), *kinds.racks},
+        runs_in=list(_runs_in(slides, slots)),
     )
+    frame = {index: why for index, why in lines.frame.items() if index in lines.active}
+    bodies = make_bodies(sheet, lines.active, landings, frame, known)
     stated = bool(settings.frame_pins)
     joints = find_joints(
         kinds, sheet, bodies.bodies, slides, slots, outlined.empty, lines.frame.keys(), frame_stated=stated
@@ -104,6 +103,15 @@ def find_parts(kinds: Sorted, sheet: Sheet, settings: Settings) -> Parts:
     )
 
 
+def _runs_in(slides: Slides, slots: Sequence[Slot]) -> Iterator[tuple[int, int]]:
+    """Slots and moving guides, by a strand of each, with the pins that slide in them."""
+    for slot in slots:
+        yield from ((slot.strands[0], site) for site in slot.sites)
+    for slide in slides.slides:
+        if slide.guide.rails and not slide.guide.frame:
+            yield from ((slide.guide.strands[0], site) for site in slide.box.sites)
+
+
 class _Roles(NamedTuple):
     """What single strands are: marks, symbols, frame (with reasons), boxes and guides; ``active`` ones may be parts."""
 
@@ -121,7 +129,8 @@ def _roles(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mapping[in
     landings = [each for each in outlined.landings if (each.strand, each.pin) not in held]
     marks = find_marks(sheet, ground.reached, landings)
     plain = [index for index in ground.reached if index not in marks]
-    symbols = find_frame_symbols(sheet, plain, marks, landings, in_boxes)
+    holed = {strand for outline in outlined.bars for strand in outline}
+    symbols = find_frame_symbols(sheet, plain, marks, landings, in_boxes, holed)
     ground = without_plinths(ground, symbols, sheet)
     hatched = hatched_boxes(ground.boxes, symbols, sheet)
     frame = {**by_layer, **{strand: why for strand, why in symbols.frame.items() if strand not in hatched.sides}}

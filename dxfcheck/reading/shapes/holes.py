@@ -9,8 +9,8 @@ Glossary
 from __future__ import annotations
 
 import math
-from collections import defaultdict
-from collections.abc import Collection, Iterable, Sequence
+from collections import Counter, defaultdict
+from collections.abc import Collection, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from typing import NamedTuple
 
@@ -24,6 +24,8 @@ from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
+from dxfcheck.reading.shapes.bar_axes import beside_axis
+from dxfcheck.reading.shapes.borders import find_borders
 from dxfcheck.reading.shapes.contact import Oddity
 from dxfcheck.reading.shapes.contours import Contour
 from dxfcheck.reading.shapes.obrounds import Channel
@@ -84,13 +86,16 @@ def find_outline_links(
     for number, bar in bar_of.items():
         inside[number] = list(bar.sites)
     cornered = _with_pins_at_corners(contours, strands, firm, pins) - bar_of.keys()
+    beside = _beside_axes(contours, inside, {*cornered, *bar_of}, pins_of, pins, voids, tolerance)
+    for number, sites in beside.items():
+        inside[number] = [site for site in inside[number] if site not in sites]
     holed = [
         number
         for number, sites in enumerate(inside)
         if number not in cornered
         and (len(sites) > 1 or (sites and not any(pins_of.get(each) for each in contours[number].strands)))
     ]
-    borders = _borders(contours, inside, holed, strands, pins_of, frame) - bar_of.keys()
+    borders = find_borders(contours, inside, holed, strands, pins, pins_of, frame) - bar_of.keys()
     plain = [number for number in holed if number not in borders]
     ends = {place for place, number in enumerate(plain) if number in bar_of}
     holes = _share([contours[each] for each in plain], [inside[each] for each in plain], pins, strands, tolerance, ends)
@@ -110,8 +115,47 @@ def find_outline_links(
         held=tuple(Landing(lines[0], site, "corner", None, 0.0) for lines, sites in links for site in sites),
         groups=tuple(lines for lines, sites in links if sites),
         void=frozenset((each.strand, each.pin) for each in landings if each.strand in passing),
-        oddities=holes.oddities,
+        oddities=(*holes.oddities, *_laid_over(beside, contours, held, pins)),
     )
+
+
+def _beside_axes(
+    contours: Sequence[Contour],
+    inside: Sequence[Sequence[int]],
+    apart: Collection[int],
+    pins_of: Mapping[int, Collection[int]],
+    pins: Sequence[PinSite],
+    voids: Sequence[Channel],
+    tolerance: Tolerance,
+) -> dict[int, tuple[int, ...]]:
+    """For contours that are bars, but those ``apart``, the pins of other links over which they merely lie."""
+    on_site: defaultdict[int, set[int]] = defaultdict(set)
+    for strand, sites in pins_of.items():
+        for site in sites:
+            on_site[site].add(strand)
+    around = Counter(site for sites in inside for site in sites)
+    found = {}
+    for number, contour in enumerate(contours):
+        if number not in apart and inside[number]:
+            cuts = [void for void in voids if _cut_from(void, contour) and void.strands[0] not in contour.strands]
+            carried = [each for each in inside[number] if around[each] > 1 or on_site[each].difference(contour.strands)]
+            sites = beside_axis(contour, inside[number], cuts, pins, carried, tolerance)
+            if sites:
+                found[number] = sites
+    return found
+
+
+def _laid_over(
+    beside: Mapping[int, Sequence[int]],
+    contours: Sequence[Contour],
+    held: Mapping[int, Sequence[int]],
+    pins: Sequence[PinSite],
+) -> Iterator[Oddity]:
+    """What is said of pins of other links inside a bar."""
+    for number, sites in beside.items():
+        for site in sites if number in held else ():
+            detail = "an outline with holes on its axis lies over it, off that axis: read as no hole of that outline"
+            yield Oddity("doubtful-hole", pins[site].at, detail, site=site, strands=contours[number].strands)
 
 
 def _bars_among(contours: Sequence[Contour], bars: Sequence[Bar]) -> dict[int, Bar]:
@@ -327,33 +371,3 @@ def _is_kink(contour: Contour, corner: Point) -> bool:
         piece.end - piece.start if isinstance(piece, Segment) else (corner - piece.centre) * 1j for piece in nearest
     ]
     return len(headings) < 2 or angle_between_lines(*headings) > math.radians(SMOOTH_JOINT_DEGREES)
-
-
-def _borders(
-    contours: Sequence[Contour],
-    inside: Sequence[Sequence[int]],
-    holed: Collection[int],
-    strands: Sequence[Strand],
-    pins_of: dict[int, set[int]],
-    frame: Collection[int],
-) -> set[int]:
-    """The contours on which nothing lands and that enclose whole other links."""
-    outline_links = [number for number in holed if len(inside[number]) > 1]
-    of_outlines = {strand for number in outline_links for strand in contours[number].strands}
-    linking = [strand for strand, sites in sorted(pins_of.items()) if len(sites) > 1]
-    lines = [strands[each] for each in linking if each not in frame and each not in of_outlines]
-    ends = [[end for piece in line.pieces for end in (piece.start, piece.end)] for line in lines]
-    links: list[tuple[Sequence[Point], Collection[int]]] = [
-        *((points, (line.number,)) for points, line in zip(ends, lines, strict=True)),
-        *((contours[number].points, contours[number].strands) for number in outline_links),
-    ]
-    firsts = np.array([points[0] for points, _ in links], dtype=np.complex128)
-    found = set()
-    for number, contour in enumerate(contours):
-        if any(pins_of.get(strand) for strand in contour.strands) and number not in holed:
-            continue
-        middle, reach = contour.circle_round()
-        near = np.nonzero(np.abs(firsts - middle) <= reach)[0].tolist()
-        if any(set(contour.strands).isdisjoint(links[each][1]) and contour.encloses(links[each][0]) for each in near):
-            found.add(number)
-    return found

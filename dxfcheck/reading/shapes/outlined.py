@@ -2,10 +2,14 @@
 
 from __future__ import annotations
 
+from collections import defaultdict
 from collections.abc import Collection, Sequence
 from dataclasses import dataclass
 
+import numpy as np
+
 from dxfcheck.reading.lines.landing import Landing
+from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.shapes.contact import Oddity
 from dxfcheck.reading.shapes.contours import Contour, find_contours
@@ -51,11 +55,12 @@ def find_outlined(sheet: Sheet, frame: Collection[int], part_blocks: Sequence[st
     cuts = cut_slots(found.slots, sheet.touching, drawn, frame)
     used = {strand for slot in found.slots for strand in (*slot.strands, *slot.block)}
     solid = [contour for contour in contours if used.isdisjoint(contour.strands)]
+    solid = _parts_among(solid, sheet)
     voids = [slot.shape for slot in cuts]
     links = find_outline_links(solid, sheet.strands, drawn, sheet.pins, frame, sheet.tolerance, voids, found.bars)
     owners = [(slot.strands[0], owner_of_cut(slot.shape, solid, links.borders)) for slot in cuts]
     return Outlined(
-        landings=_that_count(drawn, slots, links),
+        landings=_that_count(drawn, slots, links, {first for first, owner in owners if owner is not None}),
         borders=links.borders,
         slots=slots,
         empty=found.empty,
@@ -75,6 +80,31 @@ def find_outlined(sheet: Sheet, frame: Collection[int], part_blocks: Sequence[st
         closed=frozenset(used.union(*(contour.strands for contour in contours))),
         oddities=(*found.oddities, *links.oddities),
     )
+
+
+def _parts_among(contours: Sequence[Contour], sheet: Sheet) -> list[Contour]:
+    """The contours that show that they are parts: drawn in one piece, or with holes as bars and plates have them.
+
+    Four loose lines round a few rings are as well a table, a housing or a border. Loose lines make a part where a hole
+    is drawn with a ring of its own on another part's, or lies in another outline too, or has a rounded end about it.
+    """
+    if not any(len(contour.strands) > 1 for contour in contours):
+        return list(contours)
+    middles, reaches = zip(*(contour.circle_round() for contour in contours), strict=True)
+    places = np.array([pin.at for pin in sheet.pins], dtype=np.complex128)
+    pairs = near_pairs(np.array(middles), np.array(reaches), places, places)
+    holders: defaultdict[int, list[int]] = defaultdict(list)
+    for number, site in zip(*(each.tolist() for each in pairs), strict=True):
+        if contours[number].contains(sheet.pins[site].at):
+            holders[site].append(number)
+    parts = {number for number, contour in enumerate(contours) if len(contour.strands) == 1}
+    for site, numbers in holders.items():
+        pin = sheet.pins[site]
+        within = sheet.tolerance.rim(pin.radius)
+        if len(numbers) > 1 or len(pin.rings) > 1:
+            parts.update(numbers)
+        parts.update(number for number in numbers if contours[number].rounds(pin.at, pin.radius, within))
+    return [contour for number, contour in enumerate(contours) if number in parts]
 
 
 def _of_parts(sheet: Sheet, parts: Sequence[PartGroup], in_parts: Collection[int]) -> list[Landing]:
@@ -109,11 +139,18 @@ def _slots(
     return found, (*found.slots, *forks)
 
 
-def _that_count(drawn: Sequence[Landing], slots: Sequence[Slot], links: OutlineLinks) -> tuple[Landing, ...]:
-    """Landings but those of borders and of what a pin slides in, with holes, pivots of levers and blocks in slots."""
+def _that_count(
+    drawn: Sequence[Landing], slots: Sequence[Slot], links: OutlineLinks, cut_out: Collection[int]
+) -> tuple[Landing, ...]:
+    """Landings but those of borders and of what a pin slides in, with holes, pivots of levers and blocks in slots.
+
+    The sides of a slot that is ``cut_out`` of an outline (its first strand) land on nothing they pass by.
+    """
     out = {(strand, site) for slot in slots for site in slot.sites for strand in (*slot.strands, *slot.block)}
     out |= links.void
-    kept = (each for each in drawn if (each.strand, each.pin) not in out and each.strand not in links.borders)
+    edges = {strand for slot in slots if slot.strands[0] in cut_out for strand in slot.strands}
+    apart = edges | links.borders
+    kept = (each for each in drawn if (each.strand, each.pin) not in out and each.strand not in apart)
     pivots = [Landing(slot.strands[0], slot.pinned, "corner", None, 0.0) for slot in slots if slot.pinned is not None]
     blocks = [Landing(slot.block[0], site, "corner", None, 0.0) for slot in slots if slot.block for site in slot.sites]
     return (*kept, *links.held, *pivots, *blocks)

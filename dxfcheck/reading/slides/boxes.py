@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections import Counter, defaultdict
+from collections.abc import Iterator, Mapping, Sequence
 from collections.abc import Set as AbstractSet
 from typing import NamedTuple
 
@@ -12,6 +13,7 @@ from dxfcheck.drawing.primitives import Arc, Segment
 from dxfcheck.geometry import Point, cross, dot
 from dxfcheck.reading.frames.frame import FrameSymbols
 from dxfcheck.reading.lines.landing import Landing
+from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.sheet import Sheet
@@ -19,7 +21,10 @@ from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.shapes.rectangles import Rectangle
 from dxfcheck.settings import RIM_OF_RADIUS
 
-__all__ = ["Box", "Hatched", "boxes_of", "hatched_boxes"]
+__all__ = ["Anchor", "Box", "Hatched", "anchors_of", "boxes_of", "hatched_boxes"]
+
+Anchor = tuple[int, int]
+"""A strand and the end of it (0 or 1) that meets a box."""
 
 
 class Box(NamedTuple):
@@ -84,6 +89,27 @@ def boxes_of(
     return [box._replace(number=number) for number, box in enumerate(boxes)]
 
 
+def anchors_of(boxes: Sequence[Box], sheet: Sheet) -> list[list[Anchor]]:
+    """For each box the ends of other strands that meet its sides, or lie within its slack of them."""
+    found: dict[int, dict[Anchor, None]] = {each.number: {} for each in boxes}
+    slack = {each.number: each.slack for each in boxes}
+    own = {each.number: each.strands for each in boxes}
+    owners: defaultdict[int, list[int]] = defaultdict(list)
+    for each in boxes:
+        for strand in each.strands:
+            owners[strand].append(each.number)
+    ends, targets, gaps, meets = sheet.touching.as_pairs()
+    wanted = np.zeros(len(sheet.strands), dtype=np.bool_)
+    wanted[list(owners)] = True
+    chosen = wanted[targets]
+    measured = (each[chosen].tolist() for each in (ends, targets, gaps, meets))
+    for end, target, gap, met in zip(*measured, strict=True):
+        for box in owners[target]:
+            if (met or gap <= slack[box]) and end // 2 not in own[box]:
+                found[box].setdefault((end // 2, end % 2))
+    return [list(found[each.number]) for each in boxes]
+
+
 class Hatched(NamedTuple):
     """Boxes (numbers) on whose own sides hatch strokes stand, or a hatch lies; ``sides`` are all their strands.
 
@@ -96,7 +122,7 @@ class Hatched(NamedTuple):
 
 
 def hatched_boxes(boxes: Sequence[Box], symbols: FrameSymbols, sheet: Sheet) -> Hatched:
-    """Which boxes have hatch strokes, or a hatch, along a side."""
+    """Which boxes have hatch strokes, or a hatch, along a side, or section strokes from side to side."""
     bases = {strand for strand, _ in symbols.bases}
     axes: dict[int, tuple[int, ...]] = {}
     sides: set[int] = set()
@@ -110,7 +136,37 @@ def hatched_boxes(boxes: Sequence[Box], symbols: FrameSymbols, sheet: Sheet) -> 
         numbers.add(box.number)
         if len(found) <= SIDES_OF_A_CORNER:
             axes[box.number] = tuple(sorted(set(found)))
+    for box, strokes in _sections(boxes, symbols, sheet):
+        numbers.add(box.number)
+        sides.update((*box.strands, *strokes))
+        axes.pop(box.number, None)
     return Hatched(frozenset(numbers), axes, frozenset(sides))
+
+
+def _sections(boxes: Sequence[Box], symbols: FrameSymbols, sheet: Sheet) -> Iterator[tuple[Box, set[int]]]:
+    """Boxes with oblique strokes from side to side, which nothing else ends on: bars and walls in section."""
+    plain = [box for box in boxes if not box.sites and not box.frame]
+    if not plain:
+        return
+    apart = {*symbols.strokes, *(strand for box in boxes if box.sites for strand in box.strands)}
+    for box, anchors in zip(plain, anchors_of(plain, sheet), strict=True):
+        ends = Counter(strand for strand, _ in anchors)
+        across = {strand for strand, count in ends.items() if count == 2 and _is_oblique(box, sheet.strands[strand])}
+        if len(across) >= STROKES_OF_A_SECTION and all(
+            strand in across or strand in apart or box.holds(sheet.strands[strand].ends[1 - end])
+            for strand, end in anchors
+        ):
+            yield box, across
+
+
+STROKES_OF_A_SECTION = 3
+
+
+def _is_oblique(box: Box, strand: Strand) -> bool:
+    if not isinstance(strand.primitive, Segment):
+        return False
+    along = strand.ends[1] - strand.ends[0]
+    return min(abs(dot(along, axis)) for axis in box.axes) > box.slack
 
 
 SIDES_OF_A_CORNER = 2

@@ -29,7 +29,7 @@ def empty_guides(
     if not free:
         return
     slots = {strand for shape in empty for strand in shape.strands}
-    wanted = _idle_frame_lines(sheet, bodies)
+    wanted = _idle_frame_lines(sheet, bodies, contacts)
     wanted[list(slots)] = True
     chosen = wanted[sheet.linework.piece_strand]
     starts, ends = sheet.linework.piece_starts[chosen], sheet.linework.piece_ends[chosen]
@@ -57,11 +57,21 @@ def _beside(sheet: Sheet, site: int, strand: int, away: float, limit: float, *, 
     return Oddity("empty-guide", sheet.pins[site].at, detail, away, limit, site=site, strands=(strand,))
 
 
-def _idle_frame_lines(sheet: Sheet, bodies: Sequence[Body]) -> NDArray[np.bool_]:
-    """Strands (N,) of no body that lie on a frame layer, or on which several lines stand, as hatch strokes do."""
+def _idle_frame_lines(sheet: Sheet, bodies: Sequence[Body], contacts: Sequence[Contact]) -> NDArray[np.bool_]:
+    """Strands (N,) of no link that lie on a frame layer, or on which several lines stand, as hatch strokes do.
+
+    What holds a pin, or guides something, is not idle; nor is what meets such linework.
+    """
     ends, targets, _, _ = sheet.touching.as_pairs()
     alone = np.ones(len(sheet.strands), dtype=np.bool_)
-    alone[[strand for body in bodies for strand in body.strands]] = False
+    alone[[strand for body in bodies if not body.frame for strand in body.strands]] = False
+    busy = [each.strand for each in sheet.landings.landings if each.how != "across"]
+    busy += [strand for contact in contacts for strand in contact.strands]
+    held = np.zeros(alone.size, dtype=np.bool_)
+    held[busy] = True
+    held[targets[held[ends // 2]]] = True
+    held[(ends // 2)[held[targets]]] = True
+    alone &= ~held
     standing = np.bincount(targets[alone[ends // 2]], minlength=alone.size)
     frame = np.array([strand.frame for strand in sheet.strands], dtype=np.bool_)
     straight = np.zeros(alone.size, dtype=np.bool_)

@@ -57,9 +57,14 @@ def choose_guide(box: Box, rails: Sequence[Rail], frame: Collection[int], hatche
     found += [Guide(axis, (), STROKES, 4, frame=True, offset=box.halves[1 - axis], ends=None) for axis in hatched]
     if not found:
         return None
-    found.sort(key=lambda guide: (-guide.strength, not guide.frame, abs(guide.offset)))
+    found.sort(key=lambda guide: (-guide.strength, not guide.frame, _loose(guide, frame), abs(guide.offset)))
     best = found[0]
     return Rivals(best, tuple(guide for guide in found[1:] if _rivals(best, guide)))
+
+
+def _loose(guide: Guide, frame: Collection[int]) -> bool:
+    """Whether one of the pieces of an interrupted guide is not frame: it may be a rod in line with the other piece."""
+    return guide.how == INTERRUPTED and any(strand not in frame for strand in guide.strands)
 
 
 def _rivals(best: Guide, other: Guide) -> bool:

@@ -10,11 +10,13 @@ from __future__ import annotations
 
 import math
 from collections import defaultdict
-from collections.abc import Collection, Iterator, Sequence
+from collections.abc import Collection, Iterator, Mapping, Sequence
 from typing import Literal, NamedTuple
 
 import numpy as np
 
+from dxfcheck.drawing.primitives import Segment
+from dxfcheck.geometry import angle_between_lines, dot
 from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.lines.linework import Linework, Strand
 from dxfcheck.reading.lines.nearness import near_pairs
@@ -66,17 +68,48 @@ def rails_of(
         if strand in boxes[box].strands or strand in apart:
             continue
         rail = _rail(boxes[box], strand, axis, *measures)
-        if rail is not None and (rail.how != "stops" or _stops_at(boxes[box], linework.strands[strand], touching)):
+        if rail is not None and (
+            rail.how != "stops" or _stops_at(boxes[box], axis, linework.strands, strand, touching, pinned)
+        ):
             found[box].append(rail._replace(pinned=ends_at_pin))
     return found
 
 
-def _stops_at(box: Box, strand: Strand, touching: Touches) -> bool:
-    """Whether the end of a strand nearer to a box meets nothing, or nothing but the box."""
+def _stops_at(
+    box: Box,
+    axis: int,
+    strands: Sequence[Strand],
+    number: int,
+    touching: Touches,
+    pinned: Mapping[int, Collection[int]],
+) -> bool:
+    """Whether the end of a strand nearer to a box meets nothing but the box, and links in line with it.
+
+    At a dead centre the rod to the box's pin, or one trimmed at the box, lies over its guide.
+    """
+    strand = strands[number]
     if not strand.ends:
         return False
     end = min((0, 1), key=lambda each: abs(strand.ends[each] - box.centre))
-    return all(touch.strand in box.strands for touch in touching.at(strand.number, end) if touch.meets)
+    return all(
+        touch.strand in box.strands
+        or any(touch.strand in pinned.get(site, ()) for site in box.sites)
+        or _overlap(box, axis, strand, strands[touch.strand])
+        for touch in touching.at(number, end)
+        if touch.meets
+    )
+
+
+def _overlap(box: Box, axis: int, one: Strand, other: Strand) -> bool:
+    """Whether two lines along an axis of a box lie on the same side of it, the one over the other."""
+    if not isinstance(other.primitive, Segment):
+        return False
+    along = box.axes[axis]
+    if angle_between_lines(other.ends[1] - other.ends[0], along) > math.radians(GUIDE_TURN_DEGREES):
+        return False
+    first = sorted(dot(end - box.centre, along) for end in one.ends)
+    second = sorted(dot(end - box.centre, along) for end in other.ends)
+    return min(first[1], second[1]) - max(first[0], second[0]) > box.slack
 
 
 def _parallel(boxes: Sequence[Box], linework: Linework) -> Iterator[tuple[int, int, int, tuple[float, float, float]]]:

@@ -20,7 +20,7 @@ from dxfcheck.settings import (
     SLEEVE_WIDTH_OF_LENGTH,
 )
 
-__all__ = ["lines_beside_rods", "sleeves_of"]
+__all__ = ["lines_beside_rods", "sleeves_of", "sleeves_of_bars"]
 
 
 def lines_beside_rods(sheet: Sheet, reached: Sequence[int]) -> list[int]:
@@ -88,3 +88,43 @@ def sleeves_of(sheet: Sheet, frame: Collection[int], used: Collection[int]) -> I
                 frame=True,
                 slack=RIM_OF_RADIUS * min(abs(along), width) / 2.0,
             )
+
+
+def sleeves_of_bars(bars: Sequence[Box]) -> Iterator[Box]:
+    """Pairs of hatched rectangles that face one another, with a gap for a rod, as boxes on the frame."""
+    taken: set[int] = set()
+    for place, one in enumerate(bars):
+        for two in bars[place + 1 :]:
+            sleeve = None if taken & {one.number, two.number} else _between(one, two)
+            if sleeve is not None:
+                taken |= {one.number, two.number}
+                yield sleeve._replace(number=len(taken) // 2 - 1)
+
+
+def _between(one: Box, two: Box) -> Box | None:
+    """The sleeve of two bars that are level and alike in length."""
+    axis = 0 if one.halves[0] >= one.halves[1] else 1
+    along, across = one.axes[axis], 1j * one.axes[axis]
+    level = min((0, 1), key=lambda each: abs(cross(along, two.axes[each])))
+    half = one.halves[axis]
+    askew, apart = dot(two.centre - one.centre, along), dot(two.centre - one.centre, across)
+    first = one.halves[1 - axis] * math.copysign(1.0, apart)
+    second = apart - two.halves[1 - level] * math.copysign(1.0, apart)
+    gap = abs(second - first)
+    if (
+        abs(cross(along, two.axes[level])) > math.sin(math.radians(GUIDE_TURN_DEGREES))
+        or max(abs(two.halves[level] - half), abs(askew) / 2.0) > SLEEVE_LIKENESS * half
+        or (second - first) * apart <= 0.0
+        or gap > 2.0 * half * SLEEVE_WIDTH_OF_LENGTH
+    ):
+        return None
+    return Box(
+        number=0,
+        strands=(*one.strands, *two.strands),
+        centre=one.centre + along * askew / 2.0 + across * (first + second) / 2.0,
+        axes=(along, across),
+        halves=(min(half, two.halves[level]), gap / 2.0),
+        sites=(),
+        frame=True,
+        slack=min(one.slack, two.slack),
+    )

@@ -9,7 +9,8 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.shapes.contact import Contact, directed
 from dxfcheck.reading.slides.boxes import Box
 from dxfcheck.reading.slides.guides import ENDS_INSIDE, Guide
-from dxfcheck.reading.slides.slides import Slide, Slides
+from dxfcheck.reading.slides.slide import Slide
+from dxfcheck.reading.slides.slides import Slides
 
 __all__ = ["slide_contacts"]
 
@@ -34,7 +35,7 @@ def slide_contacts(
                 at=_at(box, pins),
                 direction=direction,
                 why=f"{_what(box, guide)}: its guide {guide.how}",
-                site=box.sites[0] if box.sites else None,
+                site=box.sites[0] if box.sites and not slide.is_barrel else None,
                 strands=(*box.strands, *guide.strands),
                 room=_room(slide, direction),
             ),

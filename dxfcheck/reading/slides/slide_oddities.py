@@ -12,7 +12,8 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.shapes.contact import Contact, Oddity
 from dxfcheck.reading.slides.boxes import Box
-from dxfcheck.reading.slides.slides import Slide, Slides
+from dxfcheck.reading.slides.slide import Slide
+from dxfcheck.reading.slides.slides import Slides
 from dxfcheck.settings import GUIDE_BESIDE_OF_WIDTH, GUIDE_LOOKED_FOR_IN_BLOCKS, GUIDE_TURN_DEGREES
 
 __all__ = ["slide_oddities"]

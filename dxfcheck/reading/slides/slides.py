@@ -9,37 +9,21 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Collection, Iterator, Mapping, Sequence
 from dataclasses import dataclass
-from typing import NamedTuple
 
 import numpy as np
 
-from dxfcheck.geometry import cross
 from dxfcheck.reading.lines.landing import Landing
-from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.sheet import Sheet
-from dxfcheck.reading.slides.boxes import Box, Hatched
-from dxfcheck.reading.slides.guides import ENDS_INSIDE, STROKES, Guide, choose_guide
+from dxfcheck.reading.slides.apart import beside_the_guide, inside, never_weld
+from dxfcheck.reading.slides.boxes import Anchor, Box, Hatched, anchors_of
+from dxfcheck.reading.slides.guides import STROKES, Guide, choose_guide
+from dxfcheck.reading.slides.held import held_by, off_guides
 from dxfcheck.reading.slides.rails import Rail, rails_of
-from dxfcheck.reading.slides.sleeves import sleeves_of
+from dxfcheck.reading.slides.sleeves import sleeves_of, sleeves_of_bars
+from dxfcheck.reading.slides.slide import Slide
 
 __all__ = ["Slide", "Slides", "anchors_of", "find_slides"]
-
-Anchor = tuple[int, int]
-"""A strand and the end of it (0 or 1) that meets a box."""
-
-
-class Slide(NamedTuple):
-    """A box and what it slides along, or what slides in it; ``rivals`` are other guides that fit as well."""
-
-    box: Box
-    guide: Guide
-    rivals: tuple[Guide, ...]
-
-    @property
-    def is_barrel(self) -> bool:
-        """Whether a rod enters the box and ends in it: a telescope."""
-        return self.guide.how == ENDS_INSIDE and not self.guide.frame
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -79,24 +63,6 @@ class Slides:
         return {*guides, *(strand for box in self.boxes for strand in box.strands)}
 
 
-def anchors_of(boxes: Sequence[Box], sheet: Sheet) -> list[list[Anchor]]:
-    """For each box the ends of other strands that meet its sides."""
-    found: list[list[Anchor]] = [[] for _ in boxes]
-    owners: defaultdict[int, list[int]] = defaultdict(list)
-    for each in boxes:
-        for strand in each.strands:
-            owners[strand].append(each.number)
-    ends, targets, _, meets = sheet.touching.as_pairs()
-    wanted = np.zeros(len(sheet.strands), dtype=np.bool_)
-    wanted[list(owners)] = True
-    chosen = meets & wanted[targets]
-    for end, target in zip(ends[chosen].tolist(), targets[chosen].tolist(), strict=True):
-        for box in owners[target]:
-            if end // 2 not in boxes[box].strands:
-                found[box].append((end // 2, end % 2))
-    return found
-
-
 def find_slides(
     sheet: Sheet,
     boxes: Sequence[Box],
@@ -115,30 +81,41 @@ def find_slides(
     known = {*frame, *hatched.sides}
     slides, unguided = _choose(boxes, rails, anchors, known, hatched, strokes)
     guides = {strand for slide in slides for strand in slide.guide.strands}
-    sleeves = list(_sleeves(sheet, boxes, known, guides, landings))
+    idle = [box for box in boxes if box.number in hatched.numbers and guides.isdisjoint(box.strands)]
+    idle = [box for box in idle if not any(slide.box.number == box.number for slide in slides)]
+    sleeves = list(_sleeves(sheet, boxes, idle, known, guides, landings))
     slides.extend(slide for slide, _ in sleeves)
     rails = [*rails, *(near for _, near in sleeves)]
     anchors.extend([] for _ in sleeves)
-    every = {slide.box.number: slide for slide in slides}
+    every = {slide.box.number: slide.guide.strands for slide in slides}
     ending: defaultdict[int, set[int]] = defaultdict(set)
     for landing in landings:
-        if landing.how in {"end", "corner"}:
+        if landing.how in {"end", "corner"} and landing.strand not in strokes:
             ending[landing.pin].add(landing.strand)
+    held = [
+        landing
+        for box in [*(slide.box for slide in slides), *unguided]
+        for landing in held_by(box, every.get(box.number, ()), anchors[box.number], sheet, ending)
+    ]
     barrels = [slide.box for slide in slides if slide.is_barrel]
     return Slides(
         slides=tuple(slides),
         unguided=tuple(unguided),
         frame=dict(_frame_rails(slides)),
-        never=frozenset(_never(slides, rails, anchors, sheet, ending)),
-        dropped=frozenset(_dropped(slides, unguided, rails)),
+        never=frozenset(never_weld(slides, rails, anchors, sheet, _with(ending, held), known)),
+        dropped=frozenset((*_dropped(slides, unguided, rails), *off_guides(slides, boxes, sheet, landings))),
         passing=frozenset(_passing(slides, landings, sheet.pins, known)),
-        inside=frozenset(strand for box in barrels for strand in _inside(box, anchors[box.number], sheet)),
-        landings=tuple(
-            landing
-            for box in [*(slide.box for slide in slides), *unguided]
-            for landing in _held(box, every.get(box.number), anchors[box.number], sheet, ending)
-        ),
+        inside=frozenset(strand for box in barrels for strand in inside(box, anchors[box.number], sheet)),
+        landings=tuple(held),
     )
+
+
+def _with(ending: Mapping[int, Collection[int]], landings: Sequence[Landing]) -> dict[int, set[int]]:
+    """The strands that end at each pin, with those of further landings."""
+    every = {site: set(strands) for site, strands in ending.items()}
+    for landing in landings:
+        every.setdefault(landing.pin, set()).add(landing.strand)
+    return every
 
 
 def _choose(
@@ -162,6 +139,8 @@ def _choose(
         held = [each for each in ends if each[0] not in strokes]
         sleeve = drawn.number in hatched.numbers and not drawn.sites and not held
         box = drawn._replace(frame=True) if sleeve else drawn
+        if sleeve:
+            near = [rail for rail in near if rail.strand not in hatched.sides]
         rivals = choose_guide(box, near, known, () if sleeve else hatched.axes.get(box.number, ()))
         if rivals is None or not _plain_enough(box, rivals.guide, held):
             if box.sites:
@@ -173,16 +152,24 @@ def _choose(
 
 
 def _sleeves(
-    sheet: Sheet, boxes: Sequence[Box], known: Collection[int], guides: Collection[int], landings: Sequence[Landing]
+    sheet: Sheet,
+    boxes: Sequence[Box],
+    bars: Sequence[Box],
+    known: Collection[int],
+    guides: Collection[int],
+    landings: Sequence[Landing],
 ) -> Iterator[tuple[Slide, list[Rail]]]:
-    """Pairs of frame lines that guide nothing else, with a rod between them; numbered on after the boxes."""
+    """Pairs of frame lines, or of hatched ``bars``, that guide nothing else, with a rod between them.
+
+    They are numbered on after the boxes.
+    """
     pinned = {landing.strand for landing in landings if landing.how != "across"}
     ends, targets, _, _ = sheet.touching.as_pairs()
     on_pins = np.zeros(len(sheet.strands), dtype=np.bool_)
     on_pins[list(pinned)] = True
     used = {*guides, *pinned, *np.unique(targets[on_pins[ends // 2]]).tolist()}
     used.update(strand for box in boxes for strand in box.strands)
-    found = list(sleeves_of(sheet, known, used))
+    found = [*sleeves_of(sheet, known, used), *sleeves_of_bars(bars)]
     number = len(boxes)
     for box, near in zip(found, rails_of(found, sheet.linework, sheet.touching, landings, known), strict=True):
         through = [rail for rail in near if rail.how == "through" and rail.axis == 0]
@@ -209,48 +196,6 @@ def _frame_rails(slides: Sequence[Slide]) -> Iterator[tuple[int, str]]:
                 yield strand, "guide of a slide on the frame"
 
 
-def _never(
-    slides: Sequence[Slide],
-    rails: Sequence[Sequence[Rail]],
-    anchors: Sequence[Sequence[Anchor]],
-    sheet: Sheet,
-    ending: Mapping[int, Collection[int]],
-) -> Iterator[tuple[int, int]]:
-    """A box does not weld to its guide, nor a barrel to what its rod carries inside it.
-
-    Nor does a guide weld to a link it is in line with: at a dead centre its end lies on a rod or a crank.
-    """
-    links = {strand for strands in ending.values() for strand in strands}
-    for slide in slides:
-        for guide in slide.guide.strands if slide.guide.frame else ():
-            for end in range(len(sheet.strands[guide].ends)):
-                for touch in sheet.touching.at(guide, end):
-                    if touch.strand in links:
-                        yield guide, touch.strand
-                        yield touch.strand, guide
-        along = {rail.strand for rail in rails[slide.box.number] if _same_kind(rail, slide.guide)}
-        apart = {*slide.guide.strands, *along}
-        if slide.guide.how == ENDS_INSIDE:
-            apart.update(_inside(slide.box, anchors[slide.box.number], sheet))
-        for one in slide.box.strands:
-            for other in apart:
-                yield one, other
-                yield other, one
-
-
-def _same_kind(rail: Rail, guide: Guide) -> bool:
-    """Whether a rail runs along the box beside its guide: rails of a pair that are not the nearest ones."""
-    return rail.axis == guide.axis and rail.how == "beside"
-
-
-def _inside(box: Box, anchors: Sequence[Anchor], sheet: Sheet) -> Iterator[int]:
-    """Strands that meet a box from within: the piston at the end of a rod."""
-    for number in dict.fromkeys(strand for strand, _ in anchors):
-        strand = sheet.strands[number]
-        if strand.ends and all(box.holds(point) for point in (*strand.ends, *strand.corners)):
-            yield number
-
-
 def _dropped(
     slides: Sequence[Slide], unguided: Sequence[Box], rails: Sequence[Sequence[Rail]]
 ) -> Iterator[tuple[int, int]]:
@@ -260,7 +205,7 @@ def _dropped(
             for strand in box.strands:
                 yield strand, site
     for slide in slides:
-        along = [rail.strand for rail in rails[slide.box.number] if _same_kind(rail, slide.guide)]
+        along = beside_the_guide(rails[slide.box.number], slide.guide)
         for site in slide.box.sites:
             rivals = (strand for rival in slide.rivals for strand in rival.strands)
             for strand in (*slide.guide.strands, *along, *rivals):
@@ -279,33 +224,3 @@ def _passing(
     for landing in landings:
         if landing.strand in rods and landing.how in {"through", "beside"} and landing.pin in fixed:
             yield landing.strand, landing.pin
-
-
-def _held(
-    box: Box, slide: Slide | None, anchors: Sequence[Anchor], sheet: Sheet, ending: Mapping[int, Collection[int]]
-) -> Iterator[Landing]:
-    """The box on its own pin; and rods trimmed at the box that aim at its pin, where no link ends on it.
-
-    ``ending`` are the strands that end at each pin.
-    """
-    guide = set(slide.guide.strands) if slide is not None else set()
-    for site in box.sites:
-        yield Landing(box.strands[0], site, "corner", None, 0.0)
-        own = {*box.strands, *guide}
-        if not own.issuperset(ending.get(site, ())):
-            continue
-        for strand, end in anchors:
-            offset = _aim(sheet.strands[strand], end, sheet.pins[site])
-            if strand not in own and offset is not None and offset <= sheet.tolerance.rim(sheet.pins[site].radius):
-                yield Landing(strand, site, "end", end, offset)
-
-
-def _aim(strand: Strand, end: int, pin: PinSite) -> float | None:
-    """How far a straight strand, run on past an end, passes a pin's centre; None where it points away from it."""
-    piece = strand.pieces[0] if end == 0 else strand.pieces[-1]
-    tip = strand.ends[end]
-    outward = tip - max(piece.start, piece.end, key=lambda point: abs(point - tip))
-    ahead = pin.at - tip
-    if not outward or (ahead * outward.conjugate()).real <= 0.0:
-        return None
-    return abs(cross(outward, ahead)) / abs(outward)

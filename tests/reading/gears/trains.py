@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Sequence
 
-from dxfcheck.reading.bodies.bodies import make_bodies
+from dxfcheck.reading.bodies.bodies import Known, make_bodies
 from dxfcheck.reading.bodies.body import Body
 from dxfcheck.reading.gears.gearing import Gearing, find_gearing
 from dxfcheck.reading.lines.sheet import Sheet, lay_out
@@ -40,7 +40,7 @@ def laid(*things: Drawn) -> tuple[Sorted, Sheet, tuple[Body, ...]]:
     sheet = lay_out(kinds, tolerance_for(drawn.diagonal, Settings()))
     frame = {strand.number: "layer" for strand in sheet.strands if strand.frame}
     active = {strand.number for strand in sheet.strands} - sheet.ring_strands
-    return kinds, sheet, make_bodies(sheet, active, sheet.landings.landings, frame, ()).bodies
+    return kinds, sheet, make_bodies(sheet, active, sheet.landings.landings, frame, Known()).bodies
 
 
 def geared(*things: Drawn, slides: Sequence[Contact] = ()) -> Gearing:

@@ -1,5 +1,8 @@
 from __future__ import annotations
 
+import cmath
+import math
+
 import pytest
 
 from dxfcheck.reading.lines.sheet import lay_out
@@ -49,6 +52,12 @@ def shown(*things: Drawn) -> str:
 )
 def test_what_a_sheet_without_a_linkage_shows(things: list[Drawn], words: str) -> None:
     assert shown(*things, line(-100 + 90j, 100 + 90j)) == words
+
+
+def test_a_curved_slot_counts_as_an_obround() -> None:
+    ends = (cmath.rect(50, math.radians(20)), cmath.rect(50, math.radians(70)))
+    sides = [arc(0j, radius, 20, 50) for radius in (46, 54)]
+    assert shown(*sides, arc(ends[0], 4, 200, 180), arc(ends[1], 4, 70, 180), line(-99 + 90j, 99 + 90j)) == SLOT
 
 
 def test_several_are_counted_and_kinds_are_listed() -> None:

@@ -87,6 +87,12 @@ def test_the_lines_along_a_block_are_looked_at_though_nothing_meets_them() -> No
     assert ground(*crank_and_rod(), *drawn[-5:])[1].reached == [0, 1]
 
 
+def test_a_border_round_a_link_is_no_box() -> None:
+    link = (ring(-20 + 0j), ring(20 + 0j), line(-16 + 0j, 16 + 0j))
+    assert ground(*link, rectangle(0j, 80, 60))[1].boxes == ()
+    assert len(ground(*link, rectangle(20 + 0j, 20, 14))[1].boxes) == 1
+
+
 LEGS = (
     line(A + 4 * cmath.exp(-2j), A - 10 - 20j, handle="leg"),
     line(A + 4 * cmath.exp(-1.14j), A + 10 - 20j, handle="other leg"),

@@ -125,9 +125,9 @@ def assembly() -> list[Drawn]:
     return [*parts, *own, rod(120 + 50j, 180 + 0j, handle="rod"), *named(**pins)]
 
 
-def names_with(*patterns: str) -> list[list[str]]:
+def names_with(*patterns: str, extra: Drawn | None = None) -> list[list[str]]:
     """The links of each linkage; what has one handle in common is one entity."""
-    drawn = sketch(*assembly())
+    drawn = sketch(*assembly(), *([extra] if extra is not None else []))
     first: dict[BlockUse, int] = {}
     primitives: list[Primitive] = []
     for primitive in drawn.primitives:
@@ -149,6 +149,12 @@ def names_with(*patterns: str) -> list[list[str]]:
 )
 def test_references_to_part_blocks_are_links(patterns: tuple[str, ...], expected: list[list[str]]) -> None:
     assert names_with(*patterns) == expected
+
+
+def test_a_part_has_the_pins_of_its_own_rings_and_no_others() -> None:
+    """A pointer of the arm comes to lie on the ring of C, which is drawn on the sheet and in the bar."""
+    pointer = line(30 + 8j, 116 + 50j)._replace(block="ARM", handle="arm")
+    assert names_with("arm", "BAR*", extra=pointer) == [["frame", "A-B", "B-C", "C-D"]]
 
 
 # --- sheets that hold more ---

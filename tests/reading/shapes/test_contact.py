@@ -40,3 +40,8 @@ def test_it_lies_along_its_line_and_is_the_same_both_ways(degrees: int) -> None:
 def test_what_is_nearly_upright_is_not_turned_round_by_more_than_rounding() -> None:
     assert directed(1e-6 - 1j).imag < 0
     assert directed(-1e-6 - 1j).imag > 0
+
+
+def test_rounding_is_taken_off() -> None:
+    assert directed(-5 + 1e-15j) == 1
+    assert directed(1e-15 - 5j) == 1j

@@ -80,8 +80,8 @@ def test_a_hole_that_another_bar_merely_passes_over_is_said_to_be_doubtful() -> 
     (odd,) = links.oddities
     assert odd.kind == "doubtful-hole"
     assert odd.site == 2
-    assert odd.strands == (0, 1, 2, 3, 4, 5, 6, 7)
-    assert odd.detail == ("2 outlines lie over it but 1 ring is drawn: read as a hole of the one with an arc about it")
+    assert odd.strands == (0, 1, 2, 3)
+    assert odd.detail == "an outline with holes on its axis lies over it, off that axis: read as no hole of that outline"
 
 
 def test_with_two_rings_drawn_there_both_have_it() -> None:

@@ -76,6 +76,13 @@ def test_a_plate_has_the_holes_in_it_but_not_what_slides_in_its_slot() -> None:
     assert found.closed == {1, 2}
 
 
+def test_a_plate_that_passes_by_a_pin_has_it_not() -> None:
+    """The ring of the third pin touches its side from outside."""
+    holes = [ring(at, 2.0) for at in (-30 + 0j, 30 + 0j)]
+    found = outlined(*holes, ring(12j, 2.0), line(14j, 70j), rectangle(0j, 80, 20))
+    assert {(strand, pin) for strand, pin, _ in landed(found)} == {(0, 2), (1, 0), (1, 1)}
+
+
 def test_an_outline_round_whole_links_is_a_border_on_which_nothing_lands() -> None:
     link = (ring(-20 + 0j, 2.0), ring(20 + 0j, 2.0), line(-18 + 0j, 18 + 0j))
     found = outlined(*link, rectangle(0j, 80, 60))
@@ -93,3 +100,38 @@ def test_a_fork_is_a_slot_open_at_one_end() -> None:
 @pytest.mark.parametrize("layer", ["0", "FRAME"])
 def test_a_slot_on_the_frame_is_a_slot_as_well(layer: str) -> None:
     assert len(outlined(ring(0j, 5.0), line(5j, 60j), SLOT._replace(layer=layer)).slots) == 1
+
+
+def bar_outline(one: complex, other: complex, half: float) -> Drawn:
+    """A closed rectangle round two pins, as a bar is drawn."""
+    along = (other - one) / abs(other - one) * half
+    side = along * 1j
+    return path(one - along - side, other + along - side, other + along + side, one - along + side, closed=True)
+
+
+def test_a_bar_that_covers_a_short_crank_is_no_border() -> None:
+    """The crank from site 0 to 1 lies inside the coupler from 1 to 2, but its pivot's ring juts out."""
+    crank = (ring(-20 + 4j, 2.0), ring(0j, 2.0), line(-18 + 3.6j, -2 + 0.4j))
+    coupler = bar_outline(-30 + 0j, 60 + 0j, 5.0)
+    rocker = (ring(60 + 0j, 2.0), line(62 + 0j, 90 + 60j), ring(90 + 60j, 2.0))
+    found = outlined(*crank, coupler, *rocker)
+    assert found.borders == frozenset()
+    assert {(strand, pin) for strand, pin, _ in landed(found) if strand == 1} == {(1, 1), (1, 2)}
+
+
+def test_a_slotted_lever_that_covers_the_crank_is_no_border_and_has_not_its_pivot() -> None:
+    """The crank's pivot, site 0, lies inside the lever but off its axis; the lever's own is site 2."""
+    crank = (ring(3 + 0j, 2.0), ring(30j, 2.0), line(2.8 + 2j, 0.2 + 28j))
+    lever = (bar_outline(-80j, 60j, 8.0), obround(14j, 50j, 4.0), ring(-80j, 2.0), line(-82j, -100j))
+    found = outlined(*crank, *lever)
+    assert found.borders == frozenset()
+    assert {(strand, pin) for strand, pin, _ in landed(found) if strand == 1} == {(1, 2)}
+    assert [odd.site for odd in found.oddities if odd.kind == "doubtful-hole"] == [0]
+
+
+def test_the_corners_of_a_slot_cut_out_of_a_lever_land_on_no_ring_they_pass_by() -> None:
+    pivot = (ring(3.5 + 0j, 2.0), line(3.5 + 2j, 30j))
+    lever = (bar_outline(-80j, 60j, 8.0), obround(0j, 50j, 4.0), ring(-80j, 2.0), line(-82j, -100j))
+    found = outlined(*pivot, ring(30j, 3.5), *lever)
+    (slot,) = found.slots
+    assert not any(strand in slot.strands for strand, _, _ in landed(found))

@@ -5,6 +5,7 @@ import pytest
 from tests.reading.slides.sliders import B, C, crank_and_rod, dibber, guide, named, strokes
 from tests.sketches import Drawn, line, obround, observed, ring, rod
 
+SLOT = obround(130 + 0j, 180 + 0j, 4.5)._replace(layer="FRAME")
 REACH = 48.0
 """Six diameters of the pin's ring."""
 
@@ -61,6 +62,11 @@ def test_a_slot_that_holds_nothing() -> None:
         ),
         pytest.param(
             [*crank_and_rod(), ring(C, 3.0, layer="FRAME"), guide(90 - 30j, 210 - 30j)], id="a pin on the frame"
+        ),
+        pytest.param([*crank_and_rod(), SLOT, guide(90 - 30j, 210 - 30j)], id="a pin in a slot"),
+        pytest.param(
+            [*crank_and_rod(), line(-4j, 90 - 30j, layer="FRAME"), guide(90 - 30j, 210 - 30j)],
+            id="a line of a bracket that holds a pin",
         ),
         pytest.param([*crank_and_rod(), line(90 - 30j, 210 - 30j)], id="a line that is not frame"),
     ],

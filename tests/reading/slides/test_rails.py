@@ -83,6 +83,12 @@ def test_a_line_that_stops_at_the_box_and_at_other_linework_is_no_interrupted_gu
     assert how(line(-12 + 0j, -40 + 0j), stop) == []
 
 
+@pytest.mark.parametrize("gap", [0.09, 0.06])
+def test_one_that_merely_comes_near_other_linework_is(gap: float) -> None:
+    """Within the shape tolerance of a line that it does not meet."""
+    assert how(line(-40 + 0j, -12 + 0j), line(-12 + gap - 5j, -12 + gap + 5j)) == [("stops", 0)]
+
+
 def test_what_is_used_up_otherwise_is_no_rail() -> None:
     drawn = [line(-40 + 0j, 40 + 0j), line(-40 + 8j, 40 + 8j)]
     assert [rail.strand for rail in rails(*drawn)] == [1, 2]

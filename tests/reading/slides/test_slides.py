@@ -9,6 +9,7 @@ from dxfcheck.linkage import Linkage
 from dxfcheck.settings import Settings
 from tests.reading.slides.sliders import (
     A,
+    B,
     C,
     Slid,
     block,
@@ -129,6 +130,27 @@ def test_a_stroke_that_stops_at_the_block_where_another_rod_ends_on_its_pin_is_p
     assert "C-E" in links(*drawn)
 
 
+def test_a_mark_inside_a_block_is_part_of_it_and_not_pinned_in_it() -> None:
+    """It ends at the block's side as a trimmed rod does, but from within: it points away from the pin."""
+    found = linkage(*crank_and_rod(rod_end=135 + 5j), block(), BELOW, line(141 + 0j, 135 + 0j, handle="mark"))
+    assert {link.name: set(link.handles) for link in found.links}["block at C"] == {"block", "mark"}
+
+
+def test_a_line_along_a_block_beside_its_guide_is_not_welded_to_it() -> None:
+    drawn = (*crank_and_rod(), *loose_rectangle(C, 30, 20), guide(), line(90 - 10j, 210 - 10j, handle="edge"))
+    (held,) = [link for link in linkage(*drawn).links if link.name == "block at C"]
+    assert set(held.handles) == {f"side {number}" for number in range(4)}
+
+
+def test_a_ring_as_wide_as_its_block_touches_its_guide_without_being_pinned_to_it() -> None:
+    """The guide is drawn in two lines that overlap."""
+    halves = (guide(90 - 10j, 170 - 10j), guide(130 - 10j, 210 - 10j, handle="other half"))
+    wide = (ring(A, layer="FRAME"), ring(B), ring(C, 10.0), rod(A, B), line(B, C), *named(A=A, B=B, C=C))
+    found = linkage(*wide, block(), *halves)
+    assert [pin.name for pin in found.pins if pin.fixed] == ["A"]
+    assert slides_in(found) == [ALONG_X]
+
+
 # --- guides on links, and links that are guides ---
 
 FOOT, CRANK_END = -60j, 40 + 0j
@@ -198,7 +220,7 @@ def test_a_rectangle_round_a_rod_is_no_link_that_slides_on_it() -> None:
 
 
 def test_a_slat_with_a_pin_in_it_is_the_guide_beside_a_block_and_no_block_itself() -> None:
-    slat = (rectangle(160 - 19j, 140, 8, handle="slat"), ring(222 - 19j, 2.0, layer="FRAME"), *named(F=222 - 19j))
+    slat = (rectangle(160 - 18j, 140, 6, handle="slat"), ring(222 - 18j, 2.0, layer="FRAME"), *named(F=222 - 18j))
     drawn = (*crank_and_rod(), rectangle(C, 34, 30, handle="block"), *slat)
     assert {*slid(*drawn)[0][:2]} == {"block at C", "F"}
     assert observed("block-without-guide", *drawn) == []

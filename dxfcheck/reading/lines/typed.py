@@ -1,0 +1,30 @@
+"""Whether coordinates were typed to so many decimals: then what lies on a line misses it by up to a step."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from dxfcheck.reading.lines.nearness import ComplexArray, FloatArray
+from dxfcheck.settings import TYPED_NOISE, TYPED_STEPS
+
+__all__ = ["typed_step"]
+
+GLANCE = 64
+"""So many coordinates are looked at first: one that is off the grid settles it."""
+
+
+def typed_step(points: ComplexArray) -> float:
+    """The coarsest grid of decimals on which all coordinates of the points (P,) lie.
+
+    0 for whole numbers (nothing was rounded), for full precision and where there are no points.
+    """
+    values = np.concatenate((points.real, points.imag))
+    for step in (1.0, *TYPED_STEPS):
+        if _on_grid(values[:GLANCE], step) and _on_grid(values, step):
+            return 0.0 if step == 1.0 or not values.size else step
+    return 0.0
+
+
+def _on_grid(values: FloatArray, step: float) -> bool:
+    off = np.abs(values / step - np.rint(values / step)) * step
+    return bool((off <= TYPED_NOISE * np.maximum(1.0, np.abs(values))).all())
