@@ -66,11 +66,18 @@ in a strip of hundreds of crossed bars the true values themselves come down so f
 RANK_NOISE = 1e-11
 """Below this part of the greatest every singular value is rounding error and zero."""
 
-CONSTRUCTION_LINETYPES = ("CENTER*", "DASHDOT*", "PHANTOM*", "HIDDEN*", "DIVIDE*")
-"""Linetypes of construction linework: axes, hidden edges, other positions of a moving part (ISO 128, from memory)."""
+CHAIN_LINETYPES = ("CENTER*", "DASHDOT*", "CHAIN*", "ACAD_ISO04W100", "ACAD_ISO08W100", "ACAD_ISO10W100")
+"""Linetypes in which a ring may be a pitch circle (ISO 128 long-dashed dotted line, from memory; the numbered names are
+those of the ISO linetypes in the templates of common drafting programs, from memory)."""
 
-CHAIN_LINETYPES = ("CENTER*", "DASHDOT*")
-"""Linetypes in which a ring may be a pitch circle (ISO 128 long-dashed dotted line, from memory)."""
+PHANTOM_LINETYPES = ("PHANTOM*", "DIVIDE*", "ACAD_ISO05W100", "ACAD_ISO09W100")
+"""Linetypes of other positions of a moving part (ISO 128 long-dashed double-dotted line, from memory)."""
+
+HIDDEN_LINETYPES = ("HIDDEN*", "ACAD_ISO02W100", "ACAD_ISO03W100")
+"""Linetypes of hidden edges (ISO 128 dashed lines, from memory)."""
+
+CONSTRUCTION_LINETYPES = (*CHAIN_LINETYPES, *PHANTOM_LINETYPES, *HIDDEN_LINETYPES)
+"""Linetypes of construction linework: axes, hidden edges, other positions of a moving part."""
 
 CONSTRUCTION_LAYERS = ("DEFPOINTS", "DIM*", "CENTER*", "CONSTR*", "TITLE*", "BORDER*", "NOTE*", "TEXT*")
 """Layers whose linework is never a link."""
@@ -346,3 +353,25 @@ SLEEVE_STROKES = 2
 
 BAR_LENGTH_OF_WIDTH = 3.0
 """An outline that is symmetric about its long axis and at least so many times as long as it is wide is a bar."""
+
+BUSH_GAPS_ALIKE = 2.0
+"""Of a rectangle inside another round the same pin: the gaps along and across are alike up to this factor, or it is no
+bush but a block with room to slide."""
+
+CENTRE_MARK_OF_BLOCK = 1.5
+"""Two lines that cross at a block's pin are centre marks where they are at most so many times as long as the block."""
+
+SHARED_SIDE_OF_BLOCK = 1.5
+"""A line that is one side of a block and its guide as well is at least so many times as long as that side."""
+
+PISTON_BORES = 2.0
+"""A line across between two frame lines is a piston where both are at least so many times as long as it is."""
+
+PISTON_OF_BORE = 0.05
+"""So thick is a piston that is drawn as a single line taken to be, as a part of its length."""
+
+ROUNDING_OF_BLOCK = 0.5
+"""The corners of a block are rounded with at most this part of the straight part of its shortest side."""
+
+FORK_CLEARANCE_OF_RADIUS = 1.5
+"""The lines of a fork that is joined at one end lie no further from its pin's centre than so many radii."""

@@ -70,9 +70,7 @@ class Told(NamedTuple):
 def habit_of(seed: int) -> Habit:
     """A random habit on a sheet that is neither moved nor shuffled."""
     habit = random_habit(seed)
-    return dataclasses.replace(
-        habit, motion=Motion(), unit="mm", order=None, reversal=None, radius=RADIUS
-    )
+    return dataclasses.replace(habit, motion=Motion(), unit="mm", order=None, reversal=None, radius=RADIUS)
 
 
 def told(name: str, habit: Habit) -> Told:

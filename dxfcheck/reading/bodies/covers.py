@@ -83,6 +83,8 @@ def cover_bodies(sheet: Sheet, bodies: Sequence[Body], pins_of_fill: Sequence[Co
             own = [body for body in pool.on(pins) if _drawn_along(sheet, pool.parts[body], pins, edges)]
             pool.join(own, pins, fills=(number,))
     for number, disc in enumerate(sheet.sites.discs):
+        if disc.rim:
+            continue
         own = [body for body, part in pool.parts.items() if not part.frame and _belongs_to(sheet, part, disc)]
         if (disc.holds or own) and not _is_bubble([pool.parts[body] for body in own], disc):
             pool.join(own, disc.holds, discs=(number,))

@@ -18,6 +18,8 @@ __all__ = ["Aim", "Lookup", "aim_of", "make_lookup"]
 NAMES_TOLD = 8
 """At most so many names of links are told where a name fits none."""
 
+WHEEL = "wheel at "
+
 CHOICES_TOLD = 4
 """At most so many links are told where a drive could belong to several."""
 
@@ -48,7 +50,7 @@ def aim_of(statement: DriveStatement, lookup: Lookup, near: Near, reach: float) 
     """The one thing a statement moves. ``near`` are the links around a note, ``reach`` how far it speaks unnamed."""
     if statement.doubt is not None:
         return Aim(None, statement.doubt)
-    name = _name_of(statement)
+    name = _name_of(statement, lookup, near)
     if name is not None:
         targets = _named(statement, name, lookup, near)
     else:
@@ -65,9 +67,19 @@ def aim_of(statement: DriveStatement, lookup: Lookup, near: Near, reach: float) 
     return Aim(None, _why_unnamed(statement, name, lookup) if not places else _why_none(statement, places, lookup))
 
 
-def _name_of(statement: DriveStatement) -> str | None:
-    """The name a statement gives; the number in 'ω_2' is none, as links are not numbered here."""
-    return None if statement.name is None or statement.name.isdecimal() else statement.name
+def _name_of(statement: DriveStatement, lookup: Lookup, near: Near) -> str | None:
+    """The name a statement gives.
+
+    The number in a note 'ω_2' is none, as links are not numbered here; an option may well name a link that goes by a
+    handle of digits. A wheel is named by its pin.
+    """
+    name = statement.name
+    if name is None:
+        return None
+    known = lookup.slides.homes(name) if statement.kind == "slide" else lookup.names.homes(name)
+    if name.isdecimal() and (near or not known):
+        return None
+    return name.removeprefix(WHEEL) if not known else name
 
 
 def _named(statement: DriveStatement, name: str, lookup: Lookup, near: Near) -> list[Target]:

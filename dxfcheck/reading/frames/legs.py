@@ -32,13 +32,13 @@ def legs_of(
 ) -> Iterator[int]:
     """Lines from a base to a pin: the sides of a triangle, whatever angle they meet the ring at."""
     base_strands = {base.strand for base in bases}
-    landed = {(landing.strand, landing.end) for landing in landings if landing.how != "loose"}
+    landed = {(landing.strand, landing.end): landing.pin for landing in landings if landing.how != "loose"}
     on_box: defaultdict[tuple[int, int], list[int]] = defaultdict(list)
     for landing in landings:
         strand = sheet.strands[landing.strand]
         if landing.end is None or strand.number in base_strands:
             continue
-        if (strand.number, 1 - landing.end) in landed:
+        if landed.get((strand.number, 1 - landing.end), landing.pin) != landing.pin:
             continue  # a link between two pins, one of which sits on the base line itself
         feet = [
             touch.strand for touch in sheet.touching.at(strand.number, 1 - landing.end) if touch.strand in base_strands

@@ -6,12 +6,14 @@ import math
 from collections import defaultdict
 from collections.abc import Iterator, Mapping, Sequence
 
+import numpy as np
+
 from dxfcheck.drawing.primitives import Segment
 from dxfcheck.geometry import Point, angle_between_lines, cross, dot
 from dxfcheck.reading.frames.arrows import find_arrows
 from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.lines.linework import Strand
-from dxfcheck.reading.lines.pins import PinSite, PinSites
+from dxfcheck.reading.lines.pins import PinSites
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.settings import (
@@ -30,7 +32,7 @@ def find_marks(sheet: Sheet, among: Sequence[int], landings: Sequence[Landing]) 
     for strand in (strands[index] for index in among):
         if not strand.closed and strand.length <= SHORT_OF_COINCIDENCE * tolerance.t:
             marks[strand.number] = "a speck, too short to be a link"
-    for index in _inside_rings(strands, sites.pins, landings):
+    for index in _inside_rings(sheet, landings):
         marks.setdefault(index, "a mark inside a ring")
     for index in _centre_crosses(strands, among, sites, landings, tolerance):
         marks.setdefault(index, "a centre cross")
@@ -39,20 +41,39 @@ def find_marks(sheet: Sheet, among: Sequence[int], landings: Sequence[Landing]) 
     return marks
 
 
-def _inside_rings(strands: Sequence[Strand], pins: Sequence[PinSite], landings: Sequence[Landing]) -> Iterator[int]:
-    """Strands that begin and end on one pin's rings: lines across a ring, arcs of rotation arrows on its rim."""
+def _inside_rings(sheet: Sheet, landings: Sequence[Landing]) -> Iterator[int]:
+    """Strands that begin and end on one pin's rings: lines across a ring, arcs of rotation arrows on its rim.
+
+    The legs of a frame symbol may by chance end on the greater of two rings, where its base is.
+    """
     ends_on: defaultdict[tuple[int, int], set[int | None]] = defaultdict(set)
     for landing in landings:
         ends_on[landing.strand, landing.pin].add(landing.end)
     for (index, pin), ends in ends_on.items():
-        strand = strands[index]
+        strand = sheet.strands[index]
+        rings = sheet.pins[pin].radii
         if not strand.closed:
-            if {0, 1} <= ends and not strand.corners:
+            if {0, 1} <= ends and not strand.corners and (len(rings) == 1 or not _stands_on_a_base(sheet, strand)):
                 yield index
             continue
-        largest = pins[pin].radii[-1]
-        if strand.corners and all(abs(corner - pins[pin].at) < largest for corner in strand.corners):
+        if strand.corners and all(abs(corner - sheet.pins[pin].at) < rings[-1] for corner in strand.corners):
             yield index
+
+
+def _stands_on_a_base(sheet: Sheet, leg: Strand) -> bool:
+    """Whether a line ends on another on which two more stand: a base with its strokes."""
+    met = {number for end in (0, 1) for number in sheet.touching.met(leg.number, end)}
+    if not met:
+        return False
+    ends, targets, _, meets = sheet.touching.as_pairs()
+    standing: defaultdict[int, set[int]] = defaultdict(set)
+    chosen = np.isin(targets, np.array(sorted(met), dtype=np.int64)) & meets
+    for end, target in zip(ends[chosen].tolist(), targets[chosen].tolist(), strict=True):
+        standing[target].add(end // 2)
+    return any(len(lines - {leg.number}) >= STROKES_ON_BASE for lines in standing.values())
+
+
+STROKES_ON_BASE = 2
 
 
 def _centre_crosses(

@@ -183,6 +183,7 @@ class _Train:
             frame_strands=self.frame_strands,
         )
         owners, doubts = find_owners(engaged, self.sheet, self.pool)
+        self._give_crank_pins(owners)
         rolling = Rolling(
             self.wheels, owners, self.pool, self.frame_strands, self.fixed, self.slides, self.sheet.tolerance
         )
@@ -196,6 +197,32 @@ class _Train:
             idle_rings=tuple(sorted(idle)),
             moved=tuple(index[key] for key in range(self.given)),
         )
+
+    def _give_crank_pins(self, owners: Mapping[int, int]) -> None:
+        """Pins inside a pitch circle that nothing else carries are the wheel's: it is a crank plate."""
+        pins, pool = self.sheet.pins, self.pool
+        sliding = {body for slide in self.slides for body in slide.bodies}
+        centres = {wheel.site for wheel in self.wheels}
+        loose = [
+            pin
+            for pin in pins
+            if pin.number not in centres and pin.number not in self.fixed
+            if len(pool.pinned_at(pin.number)) == 1
+            if sliding.isdisjoint(pool.pinned_at(pin.number)) and self._joints(pool.pinned_at(pin.number)[0]) == 1
+        ]
+        turning = [self.wheels[each] for each in owners if owners[each] != pool.frame] if loose else []
+        for pin in loose:
+            carried = pool.parts[pool.pinned_at(pin.number)[0]].pins
+            over = [wheel for wheel in turning if abs(wheel.at - pin.at) < wheel.radius]
+            round_it = {owners[wheel.number] for wheel in over}
+            # A link on the wheel's own pin turns beside it.
+            if len(round_it) == 1 and not any(wheel.site in carried for wheel in over):
+                pool.give(min(round_it), pins=(pin.number,))
+
+    def _joints(self, key: int) -> int:
+        """How many pins of a body are the frame's or another body's as well."""
+        pins = self.pool.parts[key].pins
+        return sum(pin in self.fixed or len(self.pool.pinned_at(pin)) > 1 for pin in pins)
 
 
 def _renumbered(contact: Contact, index: Mapping[int, int]) -> Contact:

@@ -53,14 +53,17 @@ class Rolling:
         return [self._mesh_contact(mesh) for mesh in meshes if owners[mesh.first] != owners[mesh.second]]
 
     def _mesh_contact(self, mesh: Mesh) -> Contact:
-        one, other = self._wheels[mesh.first], self._wheels[mesh.second]
+        rings = (*self._wheels[mesh.first].rings, *self._wheels[mesh.second].rings)
+        # In the order in which the contact names their bodies at last.
+        one, other = sorted(
+            (self._wheels[mesh.first], self._wheels[mesh.second]), key=lambda wheel: self._owners[wheel.number]
+        )
         if not mesh.exact(self._tolerance):
             self.oddities.append(_off_tangency(mesh, one, other, self._tolerance.t))
         if not self._held_apart(one, other):
             detail = (
                 f"no link holds the centres of the pitch circles of radius {one.radius:g} and {other.radius:g} apart"
             )
-            rings = (*one.rings, *other.rings)
             self.oddities.append(Oddity("gear-centres", one.at, detail, site=one.site, rings=rings, severity="warning"))
         larger, smaller = (one, other) if one.radius >= other.radius else (other, one)
         along = smaller.at - larger.at
@@ -74,7 +77,7 @@ class Rolling:
             at=at,
             direction=directed(along * 1j),
             why=f"pitch circle of radius {one.radius:g} rolls on that of radius {other.radius:g}, {where}",
-            rings=(*one.rings, *other.rings),
+            rings=rings,
         )
 
     def _held_apart(self, one: Wheel, other: Wheel) -> bool:

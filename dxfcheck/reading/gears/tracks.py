@@ -98,7 +98,8 @@ def _symbols(sites: Collection[int | None], frame_strands: Collection[int], shee
     for landing in sheet.landings.landings:
         if landing.pin not in sites or landing.strand not in frame_strands or landing.end is None:
             continue
-        met = [each for each in sheet.touching.met(landing.strand, 1 - landing.end) if each in frame_strands]
+        near = sheet.touching.at(landing.strand, 1 - landing.end)
+        met = [touch.strand for touch in near if touch.strand in frame_strands]
         if met:
             found.setdefault(landing.pin, set()).update((landing.strand, *met))
     return found

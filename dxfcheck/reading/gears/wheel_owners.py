@@ -119,7 +119,7 @@ class _Owners:
             return
         if free:
             how_many = f"could belong to any of {len(free)} links pinned at its centre"
-            self._doubt(shaft, f"{how_many}; read as a link of its own (draw a spoke that touches both)")
+            self._doubt(shaft, f"{how_many}; read as a link of its own")
             self.settle(shaft, self._own(shaft), told=False)
             return
         clashing = {other.owner for other in others if self._clash(shaft, other.shaft)}
@@ -225,7 +225,7 @@ class _Owners:
         shafts = [*untold, shaft]
         radii = " and ".join(f"{self._engaged.wheels[each].radius:g}" for one in shafts for each in one.wheels)
         detail = f"nothing shows whether the pitch circles of radius {radii} about one pin turn together; {read_as}"
-        self._note("shared-axis", shafts, f"{detail} (draw a spoke that touches both if they do)", "warning")
+        self._note("shared-axis", shafts, detail, "warning")
 
     def _note(self, kind: str, shafts: Sequence[Shaft], detail: str, severity: Literal["warning", "note"]) -> None:
         wheels = [self._engaged.wheels[wheel] for shaft in shafts for wheel in shaft.wheels]

@@ -48,11 +48,13 @@ class PinSite(NamedTuple):
 class Disc(NamedTuple):
     """A ring that holds other pins off its centre: a crank plate, an eccentric.
 
-    ``holds`` are indices of pin sites, the one on its own centre among them.
+    ``holds`` are indices of pin sites, the one on its own centre among them. ``rim`` says that a pitch circle
+    has the same centre: it shows the body of that wheel, no part of its own.
     """
 
     ring: Ring
     holds: tuple[int, ...]
+    rim: bool = False
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -169,8 +171,11 @@ def _circle_through(lines: Sequence[Strand], tolerance: Tolerance) -> Ring | Non
     return Ring(lines[0].primitive.source, centre, radius)
 
 
-def find_pins(rings: Sequence[Ring], tolerance: Tolerance) -> PinSites:
-    """Pins from rings: concentric ones are one pin, one that holds another pin off its centre is a disc."""
+def find_pins(rings: Sequence[Ring], tolerance: Tolerance, pitch: Sequence[Ring] = ()) -> PinSites:
+    """Pins from rings: concentric ones are one pin, one that holds another pin off its centre is a disc.
+
+    One that lies about the centre of a ``pitch`` circle as well is the rim of that wheel.
+    """
     groups = [[rings[index] for index in members] for members in _concentric(rings, tolerance)]
     holds = _rings_that_hold(groups)
     pins: list[PinSite] = []
@@ -190,7 +195,12 @@ def find_pins(rings: Sequence[Ring], tolerance: Tolerance) -> PinSites:
         for ring in group
         if id(ring) in holds
     ]
+    discs = [disc._replace(rim=_is_rim(disc.ring, pitch, tolerance)) for disc in discs] if pitch else discs
     return PinSites(pins=tuple(pins), discs=tuple(discs), stacked=tuple(_stacked(pins)))
+
+
+def _is_rim(ring: Ring, pitch: Sequence[Ring], tolerance: Tolerance) -> bool:
+    return any(abs(each.centre - ring.centre) <= tolerance.rim(each.radius) for each in pitch)
 
 
 def _concentric(rings: Sequence[Ring], tolerance: Tolerance) -> Iterable[list[int]]:

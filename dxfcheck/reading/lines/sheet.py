@@ -60,7 +60,7 @@ def lay_out(kinds: Sorted, tolerance: Tolerance) -> Sheet:
     of_ring: dict[int, tuple[int, ...]] = {id(ring): (index,) for index, ring in kinds.rings}
     of_ring.update({id(ring): tuple(kinds.lines[strand][0] for strand in strands) for ring, strands in made})
     used = frozenset(strand for _, strands in made for strand in strands)
-    sites = find_pins(rings, tolerance)
+    sites = find_pins(rings, tolerance, [ring for _, ring in kinds.pitch_rings])
     found = find_landings(sites.pins, linework, tolerance)
     landings = Landings(
         landings=tuple(each for each in found.landings if each.strand not in used),

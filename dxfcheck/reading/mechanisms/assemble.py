@@ -211,7 +211,7 @@ def _contact_joints(
     found = []
     for contact in assembly.contacts:
         one, other = (link_of.get(body, 0) for body in contact.bodies)
-        pin = pin_of[contact.site] if contact.site is not None else None
+        pin = pin_of.get(contact.site) if contact.site is not None else None
         if contact.kind == "pin in slot" and pin is not None:
             # A pin of several links runs in the slot as the first of them.
             other = next(link for link in pins[pin].links if link != one)

@@ -5,6 +5,7 @@ A sheet may hold tens of thousands of lines of other parts; only what is reached
 
 from __future__ import annotations
 
+from collections import defaultdict
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import NamedTuple
 
@@ -39,6 +40,7 @@ def find_ground(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mappi
     apart = outlined.borders | sheet.ring_strands
     touched = [each.strand for each in outlined.landings if each.how != "across" or each.strand in by_layer]
     touched.extend(kinds.racks)
+    touched.extend(outlined.slotted)
     touched.extend(strand for slot in outlined.slots for strand in (*slot.strands, *slot.block))
     touched.extend(strands_at_wheels(kinds.pitch_rings, sheet))
     touched.extend(_on_discs([disc.ring for disc in sheet.sites.discs], sheet))
@@ -48,18 +50,38 @@ def find_ground(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mappi
     reached.extend(_reached(lines_beside_rods(sheet, reached), sheet, neighbours, seen))
     carrying = {landing.pin for landing in outlined.landings}
     used = [pin for pin in sheet.pins if pin.number in carrying]
+    no_boxes = apart | outlined.slotted
+    on_pins: defaultdict[int, set[int]] = defaultdict(set)
+    for landing in outlined.landings:
+        if landing.how == "end":
+            on_pins[landing.strand].add(landing.pin)
     rectangles = [
         each
         for each in find_rectangles(sheet.linework, sheet.touching, used, sheet.tolerance, reached)
-        if apart.isdisjoint(each.strands)
+        if no_boxes.isdisjoint(each.strands) and not _welds_arms(each.strands, on_pins, sheet)
     ]
     if not rectangles:
         return Ground(sorted(reached), (), ())
-    boxes = boxes_of(rectangles, used, sheet.landings.landings, by_layer.keys(), sheet.tolerance)
+    boxes = boxes_of(rectangles, sheet.pins, sheet.landings.landings, by_layer.keys(), sheet.tolerance)
     rails = rails_of(boxes, sheet.linework, sheet.touching, sheet.landings.landings, apart)
     beside = {rail.strand for each in rails for rail in each} | {each for box in boxes for each in box.strands}
     reached.extend(_reached(sorted(beside), sheet, neighbours, seen))
     return Ground(sorted(reached), boxes, rails)
+
+
+def _welds_arms(sides: Sequence[int], on_pins: Mapping[int, set[int]], sheet: Sheet) -> bool:
+    """Whether four lines are the weld strokes of a spider: each ends on arms, and all arms run from one pin."""
+    shared: set[int] | None = None
+    together: set[int] = set()
+    for side in sides:
+        for end in range(len(sheet.strands[side].ends)):
+            arms = [each for each in sheet.touching.met(side, end) if each not in sides and each in on_pins]
+            if not arms:
+                return False
+            pins = set().union(*(on_pins[each] for each in arms))
+            shared = pins if shared is None else shared & pins
+            together.update(arms)
+    return bool(shared) and len(together) >= len(sides)
 
 
 def without_plinths(ground: Ground, symbols: FrameSymbols, sheet: Sheet) -> Ground:

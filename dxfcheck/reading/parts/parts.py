@@ -6,13 +6,16 @@ guides, and last welds and joints. Each step is a pure function of the ones befo
 
 from __future__ import annotations
 
+from collections import defaultdict
 from collections.abc import Iterator, Mapping, Sequence
 from collections.abc import Set as AbstractSet
 from dataclasses import dataclass, replace
 from typing import NamedTuple
 
+import numpy as np
+
 from dxfcheck.reading.bodies.bodies import Bodies, Known, make_bodies
-from dxfcheck.reading.frames.frame import FrameSymbols, find_frame_symbols
+from dxfcheck.reading.frames.frame import FrameSymbols, find_frame_symbols, symbols_apart
 from dxfcheck.reading.frames.marks import find_marks
 from dxfcheck.reading.frames.weld_marks import weld_marks, welds_on_rings
 from dxfcheck.reading.lines.landing import Landing
@@ -24,6 +27,7 @@ from dxfcheck.reading.shapes.contact import Contact, Oddity
 from dxfcheck.reading.shapes.outlined import Outlined, find_outlined
 from dxfcheck.reading.shapes.slots import Slot
 from dxfcheck.reading.slides.boxes import hatched_boxes
+from dxfcheck.reading.slides.held import trimmed_rods
 from dxfcheck.reading.slides.slides import Slides, find_slides
 from dxfcheck.settings import Settings
 
@@ -64,13 +68,15 @@ def find_parts(kinds: Sorted, sheet: Sheet, settings: Settings) -> Parts:
     lines = _roles(kinds, sheet, outlined, by_layer)
     slides = lines.slides
     dropped = slides.dropped | slides.passing
+    slots = [slot for slot in outlined.slots if not _holds_a_block(slot, slides)]
+    dropped |= set(_stems(sheet, slots, outlined.landings, lines.frame.keys()))
+    dropped |= set(_under_links(slides, outlined.landings, lines.frame.keys()))
     landings = [each for each in outlined.landings if (each.strand, each.pin) not in dropped]
     landings.extend(slides.landings)
-    slots = [slot for slot in outlined.slots if not _holds_a_block(slot, slides)]
     known = Known(
         outlines=outlined.bars,
         groups=[*outlined.groups, *slides.groups],
-        never=slides.never | outlined.never,
+        never=slides.never | outlined.never | symbols_apart(lines.symbols, outlined.bars, sheet.touching),
         kept={*slides.strands, *(strand for slot in slots for strand in (*slot.strands, *slot.block)), *kinds.racks},
         runs_in=list(_runs_in(slides, slots)),
     )
@@ -103,6 +109,58 @@ def find_parts(kinds: Sorted, sheet: Sheet, settings: Settings) -> Parts:
     )
 
 
+def _stems(
+    sheet: Sheet, slots: Sequence[Slot], landings: Sequence[Landing], frame: AbstractSet[int]
+) -> Iterator[tuple[int, int]]:
+    """Lines that end on a slot's side, and so on the rim of the pin that fills it, though they carry the slot.
+
+    That is so where nothing else holds the slot and another link ends on the pin.
+    """
+    ending: defaultdict[int, list[Landing]] = defaultdict(list)
+    for landing in landings:
+        if landing.how in {"end", "corner"}:
+            ending[landing.pin].append(landing)
+    for slot in slots:
+        own = {*slot.strands, *slot.block}
+        if slot.pinned is not None or slot.block or not frame.isdisjoint(own):
+            continue
+        held = {
+            (each.strand, end)
+            for site in slot.sites
+            for each in ending[site]
+            for end in ((0, 1) if each.end is None else (each.end,))
+            if end < len(sheet.strands[each.strand].ends)
+            and any(touch.meets and touch.strand in own for touch in sheet.touching.at(each.strand, end))
+        }
+        for site in slot.sites:
+            stems = {each.strand for each in ending[site] if (each.strand, each.end) in held}
+            others = {each.strand for each in ending[site]} - stems - own
+            if stems and others and not _held_elsewhere(sheet, own, stems):
+                yield from ((strand, site) for strand in stems)
+
+
+def _under_links(slides: Slides, landings: Sequence[Landing], frame: AbstractSet[int]) -> Iterator[tuple[int, int]]:
+    """Guides on the frame that run on under the pin between two links: at a dead centre crank and rod lie over them.
+
+    A pivot on such a line has one link; the pin of the block itself is no matter of landings.
+    """
+    guides = {strand for slide in slides.slides if slide.guide.frame for strand in slide.guide.strands}
+    links: defaultdict[int, set[int]] = defaultdict(set)
+    for landing in landings:
+        if landing.how in {"end", "corner"} and landing.strand not in frame:
+            links[landing.pin].add(landing.strand)
+    for landing in landings:
+        if landing.strand in guides and landing.how in {"through", "beside"} and len(links[landing.pin]) > 1:
+            yield landing.strand, landing.pin
+
+
+def _held_elsewhere(sheet: Sheet, own: AbstractSet[int], stems: AbstractSet[int]) -> bool:
+    """Whether other lines than the stems end on a slot."""
+    ends, targets, _, meets = sheet.touching.as_pairs()
+    wanted = np.isin(targets, sorted(own)) & meets
+    return bool(set((ends[wanted] // 2).tolist()) - own - stems)
+
+
 def _runs_in(slides: Slides, slots: Sequence[Slot]) -> Iterator[tuple[int, int]]:
     """Slots and moving guides, by a strand of each, with the pins that slide in them."""
     for slot in slots:
@@ -127,6 +185,7 @@ def _roles(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mapping[in
     in_boxes = {strand for box in ground.boxes for strand in box.strands}
     held = {(strand, site) for box in ground.boxes for site in box.sites for strand in box.strands}
     landings = [each for each in outlined.landings if (each.strand, each.pin) not in held]
+    landings.extend(trimmed_rods(ground.boxes, sheet, landings))
     marks = find_marks(sheet, ground.reached, landings)
     plain = [index for index in ground.reached if index not in marks]
     holed = {strand for outline in outlined.bars for strand in outline}

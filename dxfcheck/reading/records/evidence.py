@@ -89,8 +89,12 @@ def _links(
         kinds = Counter(_kind(sheet.strands[index].primitive) for index in body.strands)
         drawn = [f"{count} {kind}{'s' if count > 1 else ''}" for kind, count in kinds.items()]
         drawn.extend(["a solid fill"] * bool(body.fills) + ["a disc"] * bool(body.discs))
+        if body.wheels:
+            drawn.append("a pitch circle" if len(body.wheels) == 1 else f"{len(body.wheels)} pitch circles")
         how = dict.fromkeys(
-            HOW[landing.how].format(model.names.names[landing.pin])
+            ("holds {}" if body.block and landing.how == "corner" else HOW[landing.how]).format(
+                model.names.names[landing.pin]
+            )
             for index in body.strands
             for landing in by_strand.get(index, ())
         )
@@ -103,8 +107,11 @@ def _links(
             )
         )
         welded = sum(kinds.values()) > 1
+        if not how:
+            how.update(dict.fromkeys(f"about {linkage.pins[pin].name}" for pin in link.pins))
         why = f"{' and '.join(drawn)}{' welded together' if welded else ''}: {', '.join(how)}".rstrip(": ")
-        yield Evidence("link", link.name, 4 if welded else 3, why, link.handles, None, linkage.name)
+        rule = 6 if body.wheels or body.block else 4 if welded else 3
+        yield Evidence("link", link.name, rule, why, link.handles, None, linkage.name)
 
 
 def _kind(primitive: object) -> str:
@@ -135,5 +142,6 @@ def _contact_reason(contact: Contact) -> str:
     """Why two links slide or roll on one another, and how far they can go."""
     why = contact.why
     if contact.room is not None and min(contact.room) >= 0.0:
-        why += f"; {contact.room[0]:.6g} from one end of its guide, {contact.room[1]:.6g} from the other"
+        where = "the slot" if contact.kind == "pin in slot" else "its guide"
+        why += f"; {contact.room[0]:.6g} from one end of {where}, {contact.room[1]:.6g} from the other"
     return why

@@ -18,7 +18,7 @@ from dxfcheck.reading.shapes.contours import Contour
 from dxfcheck.reading.shapes.obrounds import Channel
 from dxfcheck.settings import BAR_LENGTH_OF_WIDTH
 
-__all__ = ["Axis", "beside_axis", "long_axis"]
+__all__ = ["Axis", "beside_axis", "is_on_axis", "long_axis"]
 
 
 class Axis(NamedTuple):
@@ -37,15 +37,15 @@ class Axis(NamedTuple):
         return dot(along, point - self.start), dot(along, self.end - point)
 
 
-def long_axis(contour: Contour, tolerance: Tolerance) -> Axis | None:
-    """The axis of an outline that is symmetric about it, and at least three times as long as it is wide, or None."""
+def long_axis(contour: Contour, tolerance: Tolerance, slender: float = BAR_LENGTH_OF_WIDTH) -> Axis | None:
+    """The axis of an outline that is symmetric about it, and at least so many times as long as it is wide, or None."""
     middle, direction = _principal(contour.points)
     if direction == 0:
         return None
     offsets = [(point - middle) * direction.conjugate() for point in contour.points]
     low, high = min(each.real for each in offsets), max(each.real for each in offsets)
     width = max(each.imag for each in offsets) - min(each.imag for each in offsets)
-    if high - low < BAR_LENGTH_OF_WIDTH * width:
+    if high - low < slender * width:
         return None
     within = tolerance.close(high - low)
     mirrored = (middle + each.conjugate() * direction for each in offsets)
@@ -73,6 +73,15 @@ def _principal(points: Sequence[Point]) -> tuple[Point, Point]:
     centroid = first / area
     spread = (square - area * centroid * centroid) / area
     return origin + centroid, unit(spread**0.5) if spread else 0j
+
+
+def is_on_axis(contour: Contour, pin: PinSite, others: Collection[PinSite], tolerance: Tolerance) -> bool:
+    """Whether a pin and one more lie on the axis of an outline that is longer than it is wide."""
+    axis = long_axis(contour, tolerance, 1.0) if others else None
+    if axis is None:
+        return False
+    off = [axis.aside(each.at) / max(tolerance.rim(each.radius), tolerance.close(each.radius)) for each in others]
+    return min(off) <= 1.0 and axis.aside(pin.at) <= max(tolerance.rim(pin.radius), tolerance.close(pin.radius))
 
 
 def beside_axis(

@@ -8,22 +8,31 @@ Glossary
 from __future__ import annotations
 
 import math
-from collections import defaultdict
+from collections import Counter, defaultdict
 from collections.abc import Collection, Iterator, Sequence
 from dataclasses import dataclass
 from itertools import combinations
 from typing import NamedTuple
 
+import numpy as np
+
 from dxfcheck.drawing.primitives import Arc, Segment
 from dxfcheck.geometry import Point, angle_between_lines, dot, parameter_on_line, unit
 from dxfcheck.reading.lines.landing import Landings
 from dxfcheck.reading.lines.linework import Linework, Strand
+from dxfcheck.reading.lines.nearness import near_pairs, pair_distances
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
 from dxfcheck.reading.shapes.obrounds import Obround
 from dxfcheck.reading.shapes.slots import Slot
-from dxfcheck.settings import FORK_LIKENESS, FORK_PAST_RADII, RIGHT_ANGLE_DEGREES
+from dxfcheck.settings import (
+    FORK_CLEARANCE_OF_RADIUS,
+    FORK_LIKENESS,
+    FORK_PAST_RADII,
+    RIGHT_ANGLE_DEGREES,
+    RIM_OF_RADIUS,
+)
 
 __all__ = ["Fork", "find_forks"]
 
@@ -55,8 +64,8 @@ def find_forks(
     """Pins between two parallel lines that touch a ring of theirs from opposite sides.
 
     Both lines run on past the ring by a ring's diameter towards the same side; they are about equally long or joined
-    at one end, not at both. ``apart`` are strands used up otherwise (slots, rectangles), ``taken`` sites that sit in a
-    block. A pin that fits in two forks is in none.
+    at one end, not at both. Joined at one end, they may leave the pin some room. ``apart`` are strands used up
+    otherwise (slots, rectangles), ``taken`` sites that sit in a block. A pin that fits in two forks is in none.
     """
     beside: defaultdict[int, dict[int, None]] = defaultdict(dict)
     for landing in landings.landings:
@@ -71,36 +80,82 @@ def find_forks(
             forks = list(_forks_at(pins[number], sorted(strands), linework.strands, touching, tolerance))
             if len(forks) == 1:
                 found.append(Slot(forks[0], (number,)))
+    settled = {site for slot in found for site in slot.sites}.union(taken)
+    for number, passing in _with_clearance(pins, linework, tolerance, settled, apart):
+        roomy = list(_forks_at(pins[number], passing, linework.strands, touching, tolerance, roomy=True))
+        if len(roomy) == 1:
+            found.append(Slot(roomy[0], (number,)))
     return found
 
 
+def _with_clearance(
+    pins: Sequence[PinSite],
+    linework: Linework,
+    tolerance: Tolerance,
+    settled: Collection[int],
+    apart: Collection[int],
+) -> Iterator[tuple[int, list[int]]]:
+    """Pins with two or more lines that pass their smallest ring a little further off than its rim."""
+    radii = np.array([pin.radius for pin in pins])
+    centres = np.array([pin.at for pin in pins], dtype=np.complex128)
+    which, piece = near_pairs(centres, FORK_CLEARANCE_OF_RADIUS * radii, linework.piece_starts, linework.piece_ends)
+    if not which.size:
+        return
+    gaps = pair_distances(centres[which], linework.piece_starts[piece], linework.piece_ends[piece])
+    outside = gaps > radii[which] + np.maximum(tolerance.t, RIM_OF_RADIUS * radii[which])
+    passing: defaultdict[int, set[int]] = defaultdict(set)
+    pieces: Counter[int] = Counter(which[outside].tolist())
+    for number, strand in zip(which[outside].tolist(), linework.piece_strand[piece[outside]].tolist(), strict=True):
+        if pieces[number] > 1 and number not in settled and strand not in apart:
+            passing[number].add(strand)
+    for number, strands in sorted(passing.items()):
+        yield number, sorted(strands)
+
+
 def _forks_at(
-    pin: PinSite, beside: Sequence[int], strands: Sequence[Strand], touching: Touches, tolerance: Tolerance
+    pin: PinSite,
+    beside: Sequence[int],
+    strands: Sequence[Strand],
+    touching: Touches,
+    tolerance: Tolerance,
+    *,
+    roomy: bool = False,
 ) -> Iterator[Fork]:
-    """The forks round a pin."""
-    for radius in dict.fromkeys(pin.radii):
-        rails = [rail for each in beside for rail in _rails(strands[each], pin.at, radius, tolerance)]
+    """The forks round a pin; ``roomy`` ones are joined at one end and leave the pin as much room on either side."""
+    radii = (pin.radius,) if roomy else dict.fromkeys(pin.radii)
+    for radius in radii:
+        most = FORK_CLEARANCE_OF_RADIUS * radius if roomy else radius
+        rails = [rail for each in beside for rail in _rails(strands[each], pin.at, (radius, most), tolerance)]
         for one, other in combinations(rails, 2):
-            fork = _fork(one, other, pin.at, radius, strands, touching)
-            if fork is not None:
+            fork = _fork(one, other, pin.at, radius, strands, touching, roomy=roomy)
+            level = not roomy or abs(abs(one.away) - abs(other.away)) <= tolerance.rim(radius)
+            if fork is not None and level:
                 yield fork
 
 
-def _rails(strand: Strand, at: Point, radius: float, tolerance: Tolerance) -> Iterator[_Rail]:
-    """The pieces of an open strand that pass a ring, touching it: the pin's foot lies between their ends."""
-    within = tolerance.rim(radius)
+def _rails(strand: Strand, at: Point, span: tuple[float, float], tolerance: Tolerance) -> Iterator[_Rail]:
+    """The pieces of an open strand that pass a pin as far off as the span says: its foot lies between their ends."""
+    least, most = span
+    within = tolerance.rim(least)
     for number, piece in enumerate(() if strand.closed else strand.pieces):
         if isinstance(piece, Segment) and piece.start != piece.end:
             parameter = parameter_on_line(at, piece.start, piece.end)
             foot = piece.start + parameter * (piece.end - piece.start)
-            touches = abs(abs(foot - at) - radius) <= within
+            touches = least - within <= abs(foot - at) <= most + within
             # A line that ends where it touches is a belt.
             if touches and within < parameter * abs(piece.end - piece.start) < abs(piece.end - piece.start) - within:
                 yield _Rail(strand, number, piece, foot - at)
 
 
 def _fork(
-    one: _Rail, other: _Rail, at: Point, radius: float, strands: Sequence[Strand], touching: Touches
+    one: _Rail,
+    other: _Rail,
+    at: Point,
+    radius: float,
+    strands: Sequence[Strand],
+    touching: Touches,
+    *,
+    roomy: bool,
 ) -> Fork | None:
     """Two rails as a fork round a pin, or None where they are none."""
     vectors = [rail.piece.end - rail.piece.start for rail in (one, other)]
@@ -114,7 +169,7 @@ def _fork(
     # Joined at both ends they are a box round the pin, not a fork.
     if max(high, -low) < FORK_PAST_RADII * radius or all(joints.values()):
         return None
-    if longer > FORK_LIKENESS * shorter and not any(joints.values()):
+    if (roomy or longer > FORK_LIKENESS * shorter) and not any(joints.values()):
         return None
     # The pin stops at the far side of a straight cross-piece, and in the middle of a round one.
     low += radius if isinstance(joints[False], Segment) else 0.0

@@ -24,7 +24,7 @@ from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
-from dxfcheck.reading.shapes.bar_axes import beside_axis
+from dxfcheck.reading.shapes.bar_axes import beside_axis, is_on_axis
 from dxfcheck.reading.shapes.borders import find_borders
 from dxfcheck.reading.shapes.contact import Oddity
 from dxfcheck.reading.shapes.contours import Contour
@@ -72,7 +72,8 @@ def find_outline_links(
 
     Of an outline with two holes or more, landings of its sides are mere passing by and do not count. An outline none
     of whose pins lies inside with its whole ring has those whose centres lie inside, unless it lands on others.
-    Frame outlines (strands in ``frame``) keep all their landings. ``voids`` are slots; ``bars`` have their two pins
+    Frame outlines (strands in ``frame``) keep all their landings. ``voids`` are slots, of which those
+    in ``frame`` are cut out of frame outlines only; ``bars`` have their two pins
     whatever else lies inside, and are links even where they are no contours.
     """
     if not contours and not bars:
@@ -81,7 +82,7 @@ def find_outline_links(
     pins_of: defaultdict[int, set[int]] = defaultdict(set)
     for each in firm:
         pins_of[each.strand].add(each.pin)
-    inside = _wholly_inside(contours, pins, tolerance, voids)
+    inside = _wholly_inside(contours, pins, tolerance, voids, frame)
     bar_of = _bars_among(contours, bars)
     for number, bar in bar_of.items():
         inside[number] = list(bar.sites)
@@ -103,7 +104,7 @@ def find_outline_links(
     held.update((number, bar.sites) for number, bar in bar_of.items())
     for number, contour in enumerate(contours):
         if not inside[number] and number not in borders and number not in cornered:
-            around = _centres_inside(contour, pins, voids)
+            around = _centres_inside(contour, pins, voids, frame)
             if {site for each in contour.strands for site in pins_of.get(each, ())} <= set(around):
                 held[number] = around
     links = [(contours[number].strands, sites) for number, sites in sorted(held.items())]
@@ -175,8 +176,8 @@ def holes_of(
     """Give each pin to the contours it is a hole of.
 
     Where as many rings are drawn on one centre as outlines hold it, all have it. Where rings are fewer, outlines with
-    an arc about the hole have it, as the end of a bar does, and those drawn with it (in one block reference, or alone
-    on its layer); unless all holders have such an arc, an oddity 'doubtful-hole' says how it was read.
+    an arc about the hole or the hole on their axis have it, as bars do, and those drawn with it (in one block
+    reference, or alone on its layer); unless all holders are such bars, an oddity 'doubtful-hole' says how it was read.
     """
     return _share(contours, _wholly_inside(contours, pins, tolerance, voids), pins, strands, tolerance)
 
@@ -194,11 +195,19 @@ def _share(
     for number, sites in enumerate(inside):
         for site in sites:
             holders[site].append(number)
+
+    def axial(number: int, site: int) -> bool:
+        others = [pins[each] for each in inside[number] if each != site]
+        return is_on_axis(contours[number], pins[site], others, tolerance)
+
     held: list[list[int]] = [[] for _ in contours]
     oddities = []
     for site, candidates in sorted(holders.items()):
         outer = _without_features(contours, inside, candidates)
-        chosen, odd = _owners(pins[site], outer, contours, strands, tolerance, bars)
+        on_axis = [each for each in outer if len(outer) > len(pins[site].rings) and axial(each, site)]
+        # A link has two pins: an outline with one other hole needs this one.
+        needy = [each for each in outer if len(inside[each]) == 2]
+        chosen, odd = _owners(pins[site], outer, contours, strands, tolerance, {*bars, *on_axis}, needy)
         for number in chosen:
             held[number].append(site)
         if odd is not None:
@@ -206,10 +215,8 @@ def _share(
     return Holes(tuple(tuple(sites) for sites in held), tuple(oddities))
 
 
-def cut_slots(
-    slots: Sequence[Slot], touching: Touches, landings: Sequence[Landing], frame: Collection[int]
-) -> list[Slot]:
-    """The slots that may be cut out of an outline: not frame, and nothing else ends on their sides.
+def cut_slots(slots: Sequence[Slot], touching: Touches, landings: Sequence[Landing]) -> list[Slot]:
+    """The slots that may be cut out of an outline: nothing else ends on their sides.
 
     A slot with hatch strokes on it, or one at the end of a rod, merely lies under the outline that is drawn over it.
     """
@@ -225,20 +232,23 @@ def cut_slots(
         on_pin = any((end // 2, end % 2, site) in landed for site in slots[number].sites)
         if owner_of.get(end // 2) != number and not on_pin:
             attached.add(number)
-    return [
-        slot
-        for number, slot in enumerate(slots)
-        if number not in attached and not any(strand in frame for strand in slot.strands)
-    ]
+    return [slot for number, slot in enumerate(slots) if number not in attached]
 
 
-def owner_of_cut(shape: Channel, contours: Sequence[Contour], borders: Collection[int] = ()) -> int | None:
-    """The contour (its index) out of which a slot is cut: the smallest that encloses it and is no border."""
+def owner_of_cut(
+    shape: Channel, contours: Sequence[Contour], borders: Collection[int] = (), frame: Collection[int] = ()
+) -> int | None:
+    """The contour (its index) out of which a slot is cut: the smallest that encloses it and is no border.
+
+    A slot in ``frame`` is cut out of frame outlines only.
+    """
     extremes = [centre + shape.radius * out for centre in shape.centres for out in (1, 1j, -1, -1j)]
     around = [
         (_size(contour), number)
         for number, contour in enumerate(contours)
-        if not set(contour.strands) & {*shape.strands, *borders} and contour.encloses(extremes)
+        if not set(contour.strands) & {*shape.strands, *borders}
+        and (shape.strands[0] not in frame or contour.strands[0] in frame)
+        and contour.encloses(extremes)
     ]
     return min(around)[1] if around else None
 
@@ -250,7 +260,11 @@ def _size(contour: Contour) -> float:
 
 
 def _wholly_inside(
-    contours: Sequence[Contour], pins: Sequence[PinSite], tolerance: Tolerance, voids: Sequence[Channel]
+    contours: Sequence[Contour],
+    pins: Sequence[PinSite],
+    tolerance: Tolerance,
+    voids: Sequence[Channel],
+    frame: Collection[int] = (),
 ) -> list[list[int]]:
     """For each contour, the sites whose smallest ring lies inside it and in none of its slots."""
     found: list[list[int]] = [[] for _ in contours]
@@ -262,18 +276,22 @@ def _wholly_inside(
     for number, site in zip(*(each.tolist() for each in pairs), strict=True):
         contour, pin = contours[number], pins[site]
         clear = contour.contains(pin.at) and contour.clearance(pin.at) >= pin.radius - tolerance.rim(pin.radius)
-        if clear and not any(_cut_from(void, contour) for void in voids if void.contains(pin.at)):
+        if clear and not any(_cut_from(void, contour, frame) for void in voids if void.contains(pin.at)):
             found[number].append(site)
     return found
 
 
-def _cut_from(void: Channel, contour: Contour) -> bool:
-    """Whether a slot is cut out of a contour, or is that contour itself."""
+def _cut_from(void: Channel, contour: Contour, frame: Collection[int] = ()) -> bool:
+    """Whether a slot is cut out of a contour, or is that contour itself; what moves over a frame slot is not cut."""
+    if void.strands[0] in frame and contour.strands[0] not in frame:
+        return False
     return void.strands[0] in contour.strands or contour.encloses(void.centres)
 
 
-def _centres_inside(contour: Contour, pins: Sequence[PinSite], voids: Sequence[Channel]) -> tuple[int, ...]:
-    own = [void for void in voids if _cut_from(void, contour)]
+def _centres_inside(
+    contour: Contour, pins: Sequence[PinSite], voids: Sequence[Channel], frame: Collection[int]
+) -> tuple[int, ...]:
+    own = [void for void in voids if _cut_from(void, contour, frame)]
     middle, reach = contour.circle_round()
     return tuple(
         pin.number
@@ -304,8 +322,9 @@ def _owners(
     strands: Sequence[Strand],
     tolerance: Tolerance,
     bars: Collection[int],
+    needy: Collection[int],
 ) -> tuple[Sequence[int], Oddity | None]:
-    """Which of its holders a pin belongs to."""
+    """Which of its holders a pin belongs to: ``bars`` surely, those ``needy`` where its source tells nothing."""
     if len(pin.rings) >= len(holders):
         return holders, None
     within = max(tolerance.rim(pin.radius), tolerance.close(pin.radius))
@@ -316,22 +335,22 @@ def _owners(
         [ring.source for ring in pin.rings],
         {number: strands[contours[number].strands[0]].primitive.source for number in holders},
     )
-    chosen = sorted({*rounded, *drawn_with})
+    chosen = sorted({*rounded, *(drawn_with or needy)})
     rings = "1 ring is" if len(pin.rings) == 1 else f"{len(pin.rings)} rings are"
-    how = _reason(len(chosen), len(holders), by_arc=bool(rounded), by_source=bool(drawn_with))
+    how = _reason(len(chosen), len(holders), by_form=bool(rounded), by_source=bool(drawn_with))
     detail = f"{len(holders)} outlines lie over it but {rings} drawn: {how}"
     lines = tuple(strand for number in holders for strand in contours[number].strands)
     return chosen or holders, Oddity("doubtful-hole", pin.at, detail, site=pin.number, strands=lines)
 
 
-def _reason(chosen: int, holders: int, *, by_arc: bool, by_source: bool) -> str:
+def _reason(chosen: int, holders: int, *, by_form: bool, by_source: bool) -> str:
     """How a doubtful hole was read, in words."""
     if not chosen or chosen == holders:
         return "read as a hole of all of them"
     outlines = "the one" if chosen == 1 else f"the {chosen}"
-    arc = f"{'with an arc' if chosen == 1 else 'with arcs'} about it" if by_arc else ""
-    source = "drawn in its block or on its layer" if by_source else ""
-    return f"read as a hole of {outlines} {' or '.join(filter(None, (arc, source)))}"
+    form = f"with {'an arc' if chosen == 1 else 'arcs'} about it or {'its axis' if chosen == 1 else 'axes'} through it"
+    source = "drawn in its block or on its layer"
+    return f"read as a hole of {outlines} {' or '.join([form] * by_form + [source] * by_source) or 'with one other'}"
 
 
 def _drawn_with(rings: Iterable[Source], outlines: dict[int, Source]) -> list[int]:

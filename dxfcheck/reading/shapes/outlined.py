@@ -8,9 +8,12 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from dxfcheck.drawing.primitives import Path, Segment
 from dxfcheck.reading.lines.landing import Landing
+from dxfcheck.reading.lines.linework import Strand, arc_middle
 from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.sheet import Sheet
+from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.shapes.contact import Oddity
 from dxfcheck.reading.shapes.contours import Contour, find_contours
 from dxfcheck.reading.shapes.forks import find_forks
@@ -29,7 +32,8 @@ class Outlined:
     ``landings`` are all that count so far, holes of outlines and ends of bars among them; ``borders`` strands drawn
     round whole links; ``slots`` hold pins that slide in them, ``empty`` ones hold none; ``bars`` are the strands of
     bars, plates and part blocks, ``groups`` other strands of one part whatever their ends do, ``never`` pairs of
-    strands that slide on one another. ``parts`` are the part blocks; ``closed`` the strands of all outlines and slots.
+    strands that slide on one another. ``parts`` are the part blocks; ``closed`` the strands of all outlines and slots,
+    ``slotted`` those of outlines out of which a slot with a pin in it is cut.
     """
 
     landings: tuple[Landing, ...]
@@ -41,6 +45,7 @@ class Outlined:
     never: frozenset[tuple[int, int]]
     parts: tuple[PartGroup, ...]
     closed: frozenset[int]
+    slotted: frozenset[int]
     oddities: tuple[Oddity, ...]
 
 
@@ -52,15 +57,16 @@ def find_outlined(sheet: Sheet, frame: Collection[int], part_blocks: Sequence[st
     apart = sheet.ring_strands | in_parts
     contours = find_contours(sheet.linework, sheet.touching, sheet.tolerance, apart, sheet.pins, drawn)
     found, slots = _slots(sheet, drawn, contours, apart)
-    cuts = cut_slots(found.slots, sheet.touching, drawn, frame)
+    cuts = cut_slots(found.slots, sheet.touching, drawn)
     used = {strand for slot in found.slots for strand in (*slot.strands, *slot.block)}
     solid = [contour for contour in contours if used.isdisjoint(contour.strands)]
     solid = _parts_among(solid, sheet)
     voids = [slot.shape for slot in cuts]
     links = find_outline_links(solid, sheet.strands, drawn, sheet.pins, frame, sheet.tolerance, voids, found.bars)
-    owners = [(slot.strands[0], owner_of_cut(slot.shape, solid, links.borders)) for slot in cuts]
+    owners = [(slot.strands[0], owner_of_cut(slot.shape, solid, links.borders, frame)) for slot in cuts]
+    cut_out = {first for first, owner in owners if owner is not None}
     return Outlined(
-        landings=_that_count(drawn, slots, links, {first for first, owner in owners if owner is not None}),
+        landings=_that_count(drawn, slots, links, cut_out, sheet),
         borders=links.borders,
         slots=slots,
         empty=found.empty,
@@ -77,6 +83,7 @@ def find_outlined(sheet: Sheet, frame: Collection[int], part_blocks: Sequence[st
             for pair in ((one, other), (other, one))
         ),
         parts=tuple(parts),
+        slotted=frozenset(each for _, owner in owners if owner is not None for each in solid[owner].strands),
         closed=frozenset(used.union(*(contour.strands for contour in contours))),
         oddities=(*found.oddities, *links.oddities),
     )
@@ -140,17 +147,40 @@ def _slots(
 
 
 def _that_count(
-    drawn: Sequence[Landing], slots: Sequence[Slot], links: OutlineLinks, cut_out: Collection[int]
+    drawn: Sequence[Landing], slots: Sequence[Slot], links: OutlineLinks, cut_out: Collection[int], sheet: Sheet
 ) -> tuple[Landing, ...]:
     """Landings but those of borders and of what a pin slides in, with holes, pivots of levers and blocks in slots.
 
-    The sides of a slot that is ``cut_out`` of an outline (its first strand) land on nothing they pass by.
+    The sides of a slot that is ``cut_out`` of an outline (its first strand) land on nothing they pass by, and a line
+    drawn along the side of a slot does not hold the pin in it.
     """
     out = {(strand, site) for slot in slots for site in slot.sites for strand in (*slot.strands, *slot.block)}
     out |= links.void
     edges = {strand for slot in slots if slot.strands[0] in cut_out for strand in slot.strands}
     apart = edges | links.borders
+    slots_at: defaultdict[int, list[Channel]] = defaultdict(list)
+    for slot in slots:
+        for site in slot.sites:
+            slots_at[site].append(slot.shape)
+    out |= {
+        (each.strand, each.pin)
+        for each in drawn
+        if each.how in {"beside", "loose"} and each.pin in slots_at
+        if any(_lies_along(sheet.strands[each.strand], shape, sheet.tolerance) for shape in slots_at[each.pin])
+    }
     kept = (each for each in drawn if (each.strand, each.pin) not in out and each.strand not in apart)
     pivots = [Landing(slot.strands[0], slot.pinned, "corner", None, 0.0) for slot in slots if slot.pinned is not None]
     blocks = [Landing(slot.block[0], site, "corner", None, 0.0) for slot in slots if slot.block for site in slot.sites]
     return (*kept, *links.held, *pivots, *blocks)
+
+
+def _lies_along(strand: Strand, shape: Channel, tolerance: Tolerance) -> bool:
+    """Whether a line or arc lies on a side of a slot."""
+    if isinstance(strand.primitive, Path):
+        return False
+    middle = (
+        (strand.ends[0] + strand.ends[1]) / 2 if isinstance(strand.primitive, Segment) else arc_middle(strand.primitive)
+    )
+    asides = [shape.aside(point) for point in (*strand.ends, middle)]
+    within = max(tolerance.rim(shape.radius), tolerance.close(shape.radius))
+    return all(abs(abs(each) - shape.radius) <= within for each in asides) and min(asides) * max(asides) > 0.0

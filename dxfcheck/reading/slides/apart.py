@@ -95,16 +95,27 @@ def _belongs_to_guide(
         return guide.how == ENDS_INSIDE
     if strand in known:
         return guide.frame and not box.frame
+    if any(each in guide.strands for each in sheet.touching.met(strand, 1 - end)):
+        # It stands on the guide, as a hatch stroke beside the box does.
+        return True
     own = {strand, *box.strands}
     held = any(not own.issuperset(ending.get(site, ())) for site in box.sites)
     lands = any(strand in ending.get(site, ()) for site in box.sites)
-    if not held or lands or not any(each in guide.strands for each in sheet.touching.met(strand, end)):
-        return False
+    on_both = any(each in guide.strands for each in sheet.touching.met(strand, end))
+    return held and not lands and on_both and _leads_off(slide, strand, end, ending, sheet)
+
+
+def _leads_off(slide: Slide, strand: int, end: int, ending: Mapping[int, Collection[int]], sheet: Sheet) -> bool:
+    """Whether a strand that starts where a box meets its guide leads away from the box.
+
+    One in line with the guide does not; where the guide runs through the box, a link does not that stands on the frame.
+    """
+    box, guide = slide.box, slide.guide
     piece = sheet.strands[strand].pieces[0 if end == 0 else -1]
     along = box.axes[guide.axis]
     if angle_between_lines(piece.end - piece.start, along) <= math.radians(GUIDE_TURN_DEGREES):
         return False
-    away = [box.place(point)[1 - guide.axis] for point in sheet.strands[strand].ends]
     if abs(guide.offset) >= box.halves[1 - guide.axis] - box.slack:
-        return abs(away[1 - end] - guide.offset) > box.slack and (away[1 - end] - guide.offset) * guide.offset > 0.0
+        far = box.place(sheet.strands[strand].ends[1 - end])[1 - guide.axis] - guide.offset
+        return abs(far) > box.slack and far * guide.offset > 0.0
     return not guide.frame or not any(strand in strands for strands in ending.values())

@@ -31,7 +31,8 @@ class Box(NamedTuple):
     """A rectangle: ``axes`` are unit vectors along its sides, ``halves`` half its lengths along them.
 
     ``sites`` are the pins whose centres lie inside it, ``frame`` says that its layer makes it frame. ``slack`` is how
-    far off its sides what meets them may lie.
+    far off its sides what meets them may lie. Of one that is ``open`` the
+    side where the first axis begins is missing.
     """
 
     number: int
@@ -42,6 +43,7 @@ class Box(NamedTuple):
     sites: tuple[int, ...]
     frame: bool
     slack: float
+    open: bool = False
 
     def place(self, point: Point) -> tuple[float, float]:
         """A point's coordinates in the box's own axes, from its centre."""
@@ -84,7 +86,9 @@ def boxes_of(
         slack = max(tolerance.close(min(lengths)), RIM_OF_RADIUS * min(lengths) / 2.0)
         centre = (first + second + third + fourth) / 4.0
         halves = (lengths[0] / 2.0, lengths[1] / 2.0)
-        boxes.append(Box(0, rectangle.strands, centre, axes, halves, tuple(sites), fixed, slack))
+        rungs = len(rectangle.strands) == 2 and not sites
+        if not rungs and not (rectangle.open and sites):
+            boxes.append(Box(0, rectangle.strands, centre, axes, halves, tuple(sites), fixed, slack, rectangle.open))
     boxes.sort(key=lambda box: (box.halves[0] * box.halves[1], box.strands))
     return [box._replace(number=number) for number, box in enumerate(boxes)]
 
@@ -128,7 +132,7 @@ def hatched_boxes(boxes: Sequence[Box], symbols: FrameSymbols, sheet: Sheet) -> 
     sides: set[int] = set()
     numbers: set[int] = set()
     for box in boxes:
-        if bases.isdisjoint(box.strands) or box.frame:
+        if bases.isdisjoint(box.strands) or box.frame or box.open:
             continue
         pieces = [sheet.strands[strand].pieces[number] for strand, number in symbols.bases if strand in box.strands]
         found = [_axis_of(box, piece) for piece in pieces]
@@ -145,7 +149,7 @@ def hatched_boxes(boxes: Sequence[Box], symbols: FrameSymbols, sheet: Sheet) -> 
 
 def _sections(boxes: Sequence[Box], symbols: FrameSymbols, sheet: Sheet) -> Iterator[tuple[Box, set[int]]]:
     """Boxes with oblique strokes from side to side, which nothing else ends on: bars and walls in section."""
-    plain = [box for box in boxes if not box.sites and not box.frame]
+    plain = [box for box in boxes if not (box.sites or box.frame or box.open)]
     if not plain:
         return
     apart = {*symbols.strokes, *(strand for box in boxes if box.sites for strand in box.strands)}

@@ -55,11 +55,22 @@ def choose_guide(box: Box, rails: Sequence[Rail], frame: Collection[int], hatche
     least = 2 if box.sites else 3
     found = [guide for axis in (0, 1) for guide in _guides(box, axis, rails, frame) if guide.strength >= least]
     found += [Guide(axis, (), STROKES, 4, frame=True, offset=box.halves[1 - axis], ends=None) for axis in hatched]
+    if box.open:
+        found = [guide for guide in found if _enters_open_end(box, guide)]
     if not found:
         return None
     found.sort(key=lambda guide: (-guide.strength, not guide.frame, _loose(guide, frame), abs(guide.offset)))
+    if found[0].how == STROKES and len(found) > 1 and found[1].axis == found[0].axis and found[1].frame:
+        # The strokes stand on the rails that the box touches: the drawn lines say more.
+        found[:2] = found[1::-1]
     best = found[0]
     return Rivals(best, tuple(guide for guide in found[1:] if _rivals(best, guide)))
+
+
+def _enters_open_end(box: Box, guide: Guide) -> bool:
+    """Whether a rod runs in where a side is missing, and ends before the bottom."""
+    deepest = max((rail.high for rail in guide.rails), default=box.halves[0])
+    return guide.how == ENDS_INSIDE and guide.axis == 0 and deepest < box.halves[0] - box.slack
 
 
 def _loose(guide: Guide, frame: Collection[int]) -> bool:
@@ -89,11 +100,28 @@ def _guides(box: Box, axis: int, rails: Sequence[Rail], frame: Collection[int]) 
         if rail.how == "through":
             yield _of((rail,), THROUGH, 4, fixed)
         elif rail.how == "enters":
-            yield _of((rail,), ENDS_INSIDE, 4 if fixed else 3, fixed)
+            rod = (rail, *_other_side(box, rail, along))
+            fixed = any(each.strand in frame for each in rod)
+            if rail == min(rod):
+                yield _of(rod, ENDS_INSIDE, 4 if fixed else 3, fixed)
         elif rail.how == "stops" and fixed:
             yield _of((rail,), ENDS, 3, fixed)
     yield from _interrupted(along, frame, level)
     yield from _beside(along, frame, level)
+
+
+def _other_side(box: Box, rail: Rail, along: Sequence[Rail]) -> list[Rail]:
+    """The other side of a thick rod that enters a box: a line as deep in it, from the same end."""
+    ahead = rail.high > box.halves[rail.axis] + box.slack
+    depth = rail.low if ahead else rail.high
+    return [
+        other
+        for other in along
+        if other.how == "enters"
+        and other is not rail
+        and (other.high > box.halves[rail.axis] + box.slack) == ahead
+        and abs((other.low if ahead else other.high) - depth) <= box.slack
+    ][:1]
 
 
 def _of(rails: tuple[Rail, ...], how: str, strength: int, frame: bool) -> Guide:  # noqa: FBT001 (a plain fact)

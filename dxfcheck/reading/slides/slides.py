@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Collection, Iterator, Mapping, Sequence
+from collections.abc import Set as AbstractSet
 from dataclasses import dataclass
 
 import numpy as np
@@ -19,9 +20,12 @@ from dxfcheck.reading.slides.apart import beside_the_guide, inside, never_weld
 from dxfcheck.reading.slides.boxes import Anchor, Box, Hatched, anchors_of
 from dxfcheck.reading.slides.guides import STROKES, Guide, choose_guide
 from dxfcheck.reading.slides.held import held_by, off_guides
+from dxfcheck.reading.slides.nests import with_their_own
+from dxfcheck.reading.slides.pistons import pistons_of
 from dxfcheck.reading.slides.rails import Rail, rails_of
 from dxfcheck.reading.slides.sleeves import sleeves_of, sleeves_of_bars
 from dxfcheck.reading.slides.slide import Slide
+from dxfcheck.settings import GUIDE_LEVEL_OF_WIDTH
 
 __all__ = ["Slide", "Slides", "anchors_of", "find_slides"]
 
@@ -77,16 +81,19 @@ def find_slides(
     ``frame`` are the strands known to be frame, ``hatched`` the boxes on which hatch strokes stand, ``strokes`` the
     strokes themselves, ``landings`` those that count so far.
     """
-    anchors = anchors_of(boxes, sheet)
     known = {*frame, *hatched.sides}
-    slides, unguided = _choose(boxes, rails, anchors, known, hatched, strokes)
+    boxes, rails, parts = with_their_own(boxes, rails, known, sheet.pins)
+    anchors = anchors_of(boxes, sheet)
+    slides, unguided = _choose(boxes, rails, anchors, known, hatched, strokes, parts)
     guides = {strand for slide in slides for strand in slide.guide.strands}
     idle = [box for box in boxes if box.number in hatched.numbers and guides.isdisjoint(box.strands)]
     idle = [box for box in idle if not any(slide.box.number == box.number for slide in slides)]
     sleeves = list(_sleeves(sheet, boxes, idle, known, guides, landings))
-    slides.extend(slide for slide, _ in sleeves)
-    rails = [*rails, *(near for _, near in sleeves)]
     anchors.extend([] for _ in sleeves)
+    pistons = list(_pistons(sheet, boxes, len(boxes) + len(sleeves), known, landings))
+    anchors.extend(ends for _, _, ends in pistons)
+    slides.extend([*(slide for slide, _ in sleeves), *(slide for slide, _, _ in pistons)])
+    rails = [*rails, *(near for _, near in sleeves), *(near for _, near, _ in pistons)]
     every = {slide.box.number: slide.guide.strands for slide in slides}
     ending: defaultdict[int, set[int]] = defaultdict(set)
     for landing in landings:
@@ -99,7 +106,7 @@ def find_slides(
     ]
     barrels = [slide.box for slide in slides if slide.is_barrel]
     return Slides(
-        slides=tuple(slides),
+        slides=tuple(_by_its_pins(slide) for slide in slides),
         unguided=tuple(unguided),
         frame=dict(_frame_rails(slides)),
         never=frozenset(never_weld(slides, rails, anchors, sheet, _with(ending, held), known)),
@@ -122,28 +129,35 @@ def _choose(
     boxes: Sequence[Box],
     rails: Sequence[Sequence[Rail]],
     anchors: Sequence[Sequence[Anchor]],
-    known: Collection[int],
+    known: AbstractSet[int],
     hatched: Hatched,
     strokes: Collection[int],
+    parts: Collection[int],
 ) -> tuple[list[Slide], list[Box]]:
-    """The boxes with their guides, and those round a pin that fit none.
+    """The boxes with their guides, and those round a pin that fit none; ``parts`` are boxes that belong to others.
 
     The smallest box comes first: what a piston slides in is its cylinder and no block itself.
     """
     slides: list[Slide] = []
     unguided: list[Box] = []
     containers: set[int] = set()
+    # The end of a barrel runs through a thick rod that enters it.
+    walls = {strand for box in boxes for strand in box.strands}
     for drawn, near, ends in zip(boxes, rails, anchors, strict=True):
-        if len(drawn.sites) > 1 or not containers.isdisjoint(drawn.strands):
+        if drawn.number in parts or not containers.isdisjoint(drawn.strands):
             continue
-        held = [each for each in ends if each[0] not in strokes]
+        held = [each for each in ends if each[0] not in strokes and each[0] not in hatched.sides]
         sleeve = drawn.number in hatched.numbers and not drawn.sites and not held
-        box = drawn._replace(frame=True) if sleeve else drawn
+        fixed = sleeve or (drawn.open and not known.isdisjoint(drawn.strands))
+        box = drawn._replace(frame=True) if fixed else drawn
+        fit = near
         if sleeve:
-            near = [rail for rail in near if rail.strand not in hatched.sides]
-        rivals = choose_guide(box, near, known, () if sleeve else hatched.axes.get(box.number, ()))
-        if rivals is None or not _plain_enough(box, rivals.guide, held):
-            if box.sites:
+            fit = [rail for rail in near if rail.strand not in hatched.sides]
+        elif not box.sites:
+            fit = [rail for rail in near if rail.how != "through" or rail.strand not in walls]
+        rivals = choose_guide(box, fit, known, () if sleeve else hatched.axes.get(box.number, ()))
+        if rivals is None or not _plain_enough(box, rivals.guide, held, known):
+            if len(box.sites) == 1:
                 unguided.append(box)
             continue
         slides.append(Slide(box, rivals.guide, rivals.others))
@@ -179,11 +193,39 @@ def _sleeves(
             number += 1
 
 
-def _plain_enough(box: Box, guide: Guide, anchors: Sequence[Anchor]) -> bool:
-    """Whether a box without a pin slides: it is frame, or part of a link that is welded to it elsewhere."""
+def _pistons(
+    sheet: Sheet, boxes: Sequence[Box], first: int, known: Collection[int], landings: Sequence[Landing]
+) -> Iterator[tuple[Slide, list[Rail], list[Anchor]]]:
+    """Single lines across between two frame lines, with a rod; numbered from ``first`` on."""
+    used = {strand for box in boxes for strand in box.strands}
+    used.update(landing.strand for landing in landings if landing.how != "across")
+    found = list(pistons_of(sheet, known, used))
+    near = rails_of(found, sheet.linework, sheet.touching, landings, ())
+    for number, (box, rails, ends) in enumerate(zip(found, near, anchors_of(found, sheet), strict=True), first):
+        walls = [rail for rail in rails if rail.axis == 0 and rail.how == "beside" and rail.strand in known]
+        rivals = choose_guide(box, walls, known, ())
+        if rivals is not None:
+            yield Slide(box._replace(number=number), rivals.guide, ()), walls, ends
+
+
+def _plain_enough(box: Box, guide: Guide, anchors: Sequence[Anchor], known: Collection[int]) -> bool:
+    """Whether a box slides: it holds one pin, or is frame, or part of a link that is welded to it elsewhere.
+
+    One that holds two pins, as a bar does, slides only on frame lines that its sides lie on.
+    """
+    if len(box.sites) > 1:
+        side = box.halves[1 - guide.axis]
+        level = max(box.slack, GUIDE_LEVEL_OF_WIDTH * side)
+        on_sides = all(abs(abs(rail.offset) - side) <= level and rail.how == "beside" for rail in guide.rails)
+        return bool(guide.rails) and on_sides and all(rail.strand in known for rail in guide.rails)
     if box.sites or box.frame:
         return True
     return any(strand not in guide.strands for strand, _ in anchors)
+
+
+def _by_its_pins(slide: Slide) -> Slide:
+    """A block with two pins is a link that slides, called by its pins as other links are."""
+    return slide._replace(box=slide.box._replace(sites=()), rivals=()) if len(slide.box.sites) > 1 else slide
 
 
 def _frame_rails(slides: Sequence[Slide]) -> Iterator[tuple[int, str]]:

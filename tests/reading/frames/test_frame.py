@@ -206,3 +206,20 @@ def test_a_frame_pin_that_is_not_there_is_told() -> None:
     (seen,) = observed("unknown-frame-pin", *PLAIN, settings=Settings(frame_pins=("A", "Z")))
     assert seen.subject == "Z"
     assert "A, B, C, D" in seen.detail
+
+
+def test_an_outline_that_lies_over_a_symbol_is_neither_leg_nor_welded_to_it() -> None:
+    """A bar upwards from A covers the symbol there, and a stroke ends on its side."""
+    symbol = (*legs(A), base_line(A - 12j), *strokes(A - 12j, angle=60, length=8))
+    end = A + 60j
+    bar = path(A - 6 - 22j, A + 5 - 22j, end + 5 + 8j, end - 6 + 8j, closed=True, handle="bar")
+    drawn = (*symbol, ring(A), bar, ring(end), rod(end, end + 80), ring(end + 80, layer="FRAME"))
+    assert fates(*drawn)["bar"].read_as == "link"
+    (bar_link,) = (each for each in linkage(*drawn).links if "bar" in each.handles)
+    assert bar_link.kind == "link"
+
+
+def test_legs_that_end_on_a_greater_ring_about_their_pin_are_legs_still() -> None:
+    """The root circle of a gear passes through the feet of the legs."""
+    feet = abs(-7 - 12j)
+    assert fixed(*PLAIN, ring(A, feet), *TRIANGLE, *strokes(A - 12j)) == ["A", "D"]

@@ -373,3 +373,31 @@ def test_a_wheel_rolls_on_a_line_that_a_symbol_makes_frame() -> None:
     assert find_gearing(kinds.pitch_rings, kinds.racks, sheet, bodies, ()).contacts == ()
     (contact,) = find_gearing(kinds.pitch_rings, kinds.racks, sheet, bodies, [0]).contacts
     assert contact.full
+
+
+def test_a_pin_inside_a_pitch_circle_that_nothing_else_carries_is_the_wheels() -> None:
+    """A rod from a crank pin inside a pitch circle, site 1, to a rocker; no spoke is drawn."""
+    crank, far = 10 + 15j, 40 + 60j
+    wheels = [fixed_pin(0j), pitch(0j, 40.0), fixed_pin(60 + 0j), pitch(60 + 0j, 20.0)]
+    rod = [pin(crank), pin(far), line(crank, far)]
+    rocker = [line(far, 90 + 0j), fixed_pin(90 + 0j)]
+    assert sorted(pins for pins, wheels in bodies_of(geared(*wheels, *rod, *rocker)) if wheels) == [(0, 2), (1,)]
+    traced = [pin(crank), pin(far), path(crank, far, 100 + 40j), pin(100 + 40j), fixed_pin(100 - 20j)]
+    held = [line(100 + 40j, 100 - 20j), *rocker]
+    assert sorted(pins for pins, wheels in bodies_of(geared(*wheels, *traced, *held)) if wheels) == [(0,), (1,)]
+
+
+def test_a_rim_drawn_round_an_annulus_is_no_disc() -> None:
+    train = geared(*PLANETARY, pitch(HUB, ANNULUS), ring(HUB, 80.0), ring(HUB, 74.0))
+    assert len(train.bodies) == len(geared(*PLANETARY, pitch(HUB, ANNULUS)).bodies)
+    assert mobility(train) == 2
+
+
+def test_a_rolling_contact_names_the_wheel_of_its_first_body_first() -> None:
+    for radii in ((36.0, 24.0), (24.0, 36.0)):
+        cranks = [fixed_pin(0j), fixed_pin(60 + 0j), pin(40j), pin(60 + 40j), line(60 + 0j, 60 + 40j), line(0j, 40j)]
+        train = geared(*cranks, pitch(0j, radii[0]), pitch(60 + 0j, radii[1]))
+        (contact,) = train.contacts
+        sites = train.bodies[contact.bodies[0]].pins
+        first = radii[0] if 0 in sites else radii[1]
+        assert contact.why.startswith(f"pitch circle of radius {first:g} rolls on")

@@ -56,6 +56,13 @@ def test_a_ring_that_holds_another_pin_off_its_centre_is_a_disc() -> None:
     assert [pin.at for pin in sites.pins] == [20 + 0j, -20 + 0j, 60 + 0j]
 
 
+def test_a_ring_about_the_centre_of_a_pitch_circle_is_the_rim_of_that_wheel() -> None:
+    rings = [Ring(SOURCE, 0j, 70.0), Ring(SOURCE, 35 + 0j, 3.0), Ring(SOURCE, 0j, 3.0)]
+    for centre, rim in ((0.5 + 0j, True), (35 + 0j, False)):
+        (disc,) = find_pins(rings, TOLERANCE, [Ring(SOURCE, centre, 60.0)]).discs
+        assert disc.rim is rim
+
+
 @pytest.mark.parametrize(("off", "discs", "stacked"), [(7.4, 0, 1), (7.6, 1, 0)])
 def test_rings_nearly_on_one_centre_were_meant_to_be_and_make_no_disc(off: float, discs: int, stacked: int) -> None:
     sites = pins((0j, 30.0), (complex(off, 0), 10.0))

@@ -37,6 +37,12 @@ def test_the_linetype_is_told_before_the_layer() -> None:
     assert construction_reason(source()) is None
 
 
+@pytest.mark.parametrize("number", ["02", "03", "04", "05", "08", "09", "10"])
+def test_the_broken_linetypes_of_iso_templates_are_construction(number: str) -> None:
+    assert construction_reason(source("0", f"ACAD_ISO{number}W100")) is not None
+    assert construction_reason(source("0", "ACAD_ISO01W100")) is None
+
+
 def test_brackets_in_a_layer_name_are_no_pattern() -> None:
     assert construction_reason(source("[DIM]")) is None
 
@@ -46,7 +52,11 @@ def test_brackets_in_a_layer_name_are_no_pattern() -> None:
     [
         pytest.param("PITCH_1", "CONTINUOUS", True, id="layer"),
         pytest.param("0", "CENTERX2", True, id="chain linetype"),
+        pytest.param("0", "ACAD_ISO10W100", True, id="a chain linetype of ISO templates"),
+        pytest.param("0", "Chain", True, id="chain by name"),
         pytest.param("0", "PHANTOM", False, id="other positions"),
+        pytest.param("PITCH", "ACAD_ISO05W100", False, id="other positions in ISO templates"),
+        pytest.param("PITCH", "ACAD_ISO02W100", False, id="hidden in ISO templates"),
         pytest.param("0", "CONTINUOUS", False, id="plain"),
     ],
 )

@@ -93,6 +93,19 @@ def test_a_border_round_a_link_is_no_box() -> None:
     assert len(ground(*link, rectangle(20 + 0j, 20, 14))[1].boxes) == 1
 
 
+def test_a_plate_with_a_slot_in_it_is_no_box_and_is_looked_at() -> None:
+    pin = (ring(0j, 5.0), line(5j, 70j))
+    _, found = ground(*pin, rectangle(0j, 80, 40), obround(-15 + 0j, 15 + 0j, 5))
+    assert (found.boxes, found.reached) == ((), [0, 1, 2])
+
+
+def test_the_weld_strokes_of_a_spider_are_no_box() -> None:
+    arms = [line(2 * turn, 40 * turn) for turn in (1, 1j, -1, -1j)]
+    strokes_between = [line(8 * turn, 8j * turn) for turn in (1, 1j, -1, -1j)]
+    assert ground(ring(0j, 2.0), *arms, *strokes_between)[1].boxes == ()
+    assert len(ground(ring(0j, 2.0), *arms[:1], *strokes_between)[1].boxes) == 1
+
+
 LEGS = (
     line(A + 4 * cmath.exp(-2j), A - 10 - 20j, handle="leg"),
     line(A + 4 * cmath.exp(-1.14j), A + 10 - 20j, handle="other leg"),

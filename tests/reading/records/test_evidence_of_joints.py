@@ -69,7 +69,7 @@ SLOT = obround(130 + 0j, 180 + 0j, 4.5, handle="slot")._replace(layer="FRAME")
         pytest.param(
             (*crank_and_rod(), SLOT),
             "frame / B-C",
-            "a pin in a slot; 20 from one end of its guide, 30 from the other",
+            "a pin in a slot; 20 from one end of the slot, 30 from the other",
             id="slot",
         ),
         pytest.param(
@@ -123,5 +123,5 @@ def test_a_pin_joint_at_a_block_is_told_by_its_pin() -> None:
 
 def test_a_block_is_told_by_its_outline() -> None:
     links = {each.name: each for each in read(*dibber(guide())).evidence if each.subject == "link"}
-    assert links["block at C"].why == "1 outline: has a corner or hole at C"
+    assert links["block at C"].why == "1 outline: holds C"
     assert links["block at C"].handles == ("block",)

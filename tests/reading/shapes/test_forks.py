@@ -101,3 +101,21 @@ def test_a_pin_that_fits_in_two_forks_is_in_none() -> None:
 
 def test_a_ring_within_a_ring_touches_with_either() -> None:
     assert len(forks(PIN, ring(0j, 2.0), *lines(RAILS))) == 1
+
+
+@pytest.mark.parametrize(
+    ("above", "below", "joined", "found"),
+    [(5.0, -5.0, True, 1), (5.0, -5.0, False, 0), (6.5, -6.5, True, 0), (5.0, -5.5, True, 0)],
+    ids=["joined", "open at both ends", "too wide", "the pin off its middle"],
+)
+def test_a_fork_joined_at_one_end_may_leave_its_pin_some_room(
+    above: float,
+    below: float,
+    joined: bool,  # noqa: FBT001 - a table
+    found: int,
+) -> None:
+    rails = [line(-20 + above * 1j, 30 + above * 1j), line(-20 + below * 1j, 30 + below * 1j)]
+    across = [line(-20 + above * 1j, -20 + below * 1j)] if joined else []
+    made = forks(PIN, *rails, *across)
+    assert len(made) == found
+    assert all(fork.shape.radius == pytest.approx(above) for fork in made)

@@ -81,7 +81,9 @@ def test_a_hole_that_another_bar_merely_passes_over_is_said_to_be_doubtful() -> 
     assert odd.kind == "doubtful-hole"
     assert odd.site == 2
     assert odd.strands == (0, 1, 2, 3)
-    assert odd.detail == "an outline with holes on its axis lies over it, off that axis: read as no hole of that outline"
+    assert (
+        odd.detail == "an outline with holes on its axis lies over it, off that axis: read as no hole of that outline"
+    )
 
 
 def test_with_two_rings_drawn_there_both_have_it() -> None:
@@ -95,10 +97,22 @@ def test_with_nothing_to_tell_by_all_have_it_and_that_is_said() -> None:
         path(-10 - 10j, 60 - 10j, 60 + 10j, -10 + 10j, closed=True),
         path(20 - 30j, 20 + 50j, 40 + 50j, 40 - 30j, closed=True),
     ]
-    links, _, _ = outlines(*holes(0j, 30 + 0j, 30 + 40j), *plates)
+    links, _, _ = outlines(*holes(0j, 30 + 4j, 34 + 40j), *plates)
     assert held(links) == {0: [0, 1], 1: [1, 2]}
     (odd,) = links.oddities
     assert odd.detail.endswith("read as a hole of all of them")
+
+
+def test_a_common_ring_on_the_axes_of_flat_bars_is_a_hole_of_both() -> None:
+    """A flat bar and a rounded one that meet, and a rounded one with a third hole in its middle."""
+    flat = path(-10 - 10j, 110 - 10j, 110 + 10j, -10 + 10j, closed=True)
+    links, _, _ = outlines(*holes(P, Q, R), flat, *bar(Q, R))
+    assert held(links) == {0: [0, 1], 1: [1, 2]}
+    assert links.oddities == ()
+    middle, end = 50 + 0j, 50 - 80j
+    links, _, _ = outlines(*holes(P, Q, middle, end), *bar(P, Q), *bar(middle, end))
+    assert held(links) == {0: [0, 1, 2], 4: [2, 3]}
+    assert links.oddities == ()
 
 
 def square(low: complex, high: complex) -> Contour:
@@ -280,16 +294,15 @@ def test_bars_that_overhang_share_a_common_ring_without_doubt() -> None:
 
 
 @pytest.mark.parametrize(
-    ("extra", "frame", "cut"),
+    ("extra", "cut"),
     [
-        pytest.param([], frozenset(), True, id="bare"),
-        pytest.param([line(50 + 4j, 50 + 60j)], frozenset(), True, id="a rod ends on its pin"),
-        pytest.param([line(60 + 5j, 65 + 10j)], frozenset(), False, id="a stroke ends on its side"),
-        pytest.param([], frozenset({0}), False, id="on a frame layer"),
+        pytest.param([], True, id="bare"),
+        pytest.param([line(50 + 4j, 50 + 60j)], True, id="a rod ends on its pin"),
+        pytest.param([line(60 + 5j, 65 + 10j)], False, id="a stroke ends on its side"),
     ],
 )
-def test_which_slots_may_be_cut_out_of_an_outline(extra: list[Drawn], frame: frozenset[int], cut: bool) -> None:  # noqa: FBT001
+def test_which_slots_may_be_cut_out_of_an_outline(extra: list[Drawn], cut: bool) -> None:  # noqa: FBT001
     sheet, _ = laid_out(obround(30 + 0j, 70 + 0j, 5.0), *holes(50 + 0j), *extra, FAR)
     shapes = find_obrounds(sheet.strands, sheet.touching)
     slots = find_slots(shapes, sheet.pins, sheet.linework, sheet.tolerance).slots
-    assert len(cut_slots(slots, sheet.touching, sheet.landings.landings, frame)) == (1 if cut else 0)
+    assert len(cut_slots(slots, sheet.touching, sheet.landings.landings)) == (1 if cut else 0)

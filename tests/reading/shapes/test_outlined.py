@@ -135,3 +135,23 @@ def test_the_corners_of_a_slot_cut_out_of_a_lever_land_on_no_ring_they_pass_by()
     found = outlined(*pivot, ring(30j, 3.5), *lever)
     (slot,) = found.slots
     assert not any(strand in slot.strands for strand, _, _ in landed(found))
+
+
+@pytest.mark.parametrize("plate_layer", ["0", "FRAME"])
+@pytest.mark.parametrize("slot_layer", ["0", "FRAME"])
+def test_a_slot_is_cut_out_of_a_plate_unless_the_plate_moves_over_a_slot_of_the_frame(
+    plate_layer: str, slot_layer: str
+) -> None:
+    plate = rectangle(0j, 80, 40)._replace(layer=plate_layer)
+    pin = (ring(0j, 5.0), line(5j, 70j))
+    found = outlined(*pin, SLOT._replace(layer=slot_layer), plate)
+    moves_over = (plate_layer, slot_layer) == ("0", "FRAME")
+    assert ((2, 0) in {(strand, pin) for strand, pin, _ in landed(found)}) == moves_over
+    assert found.slotted == (frozenset() if moves_over else {2})
+
+
+def test_a_line_along_the_side_of_a_slot_does_not_hold_its_pin() -> None:
+    slotted = (ring(0j, 5.0), line(5j, 60j), SLOT)
+    along = [line(-12 - 5j, 12 - 5j), line(-12 - 5j, 12 - 5j, layer="FRAME")]
+    assert [{strand for strand, _, _ in landed(outlined(*slotted, each))} for each in along] == [{0}, {0}]
+    assert {strand for strand, _, _ in landed(outlined(*slotted, line(-12 - 7j, 12 - 3j)))} == {0, 2}

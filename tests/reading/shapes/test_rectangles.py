@@ -5,6 +5,7 @@ import math
 
 import pytest
 
+from dxfcheck.drawing.primitives import Arc, Path, Segment, Source
 from dxfcheck.reading.shapes.rectangles import Rectangle, find_rectangles
 from tests.sketches import Drawn, laid_out, line, path, rectangle, ring
 
@@ -16,6 +17,23 @@ FAR = line(-100 + 50j, 100 + 50j)
 def rectangles(*things: Drawn) -> list[Rectangle]:
     sheet, _ = laid_out(ring(0j, 2.0), FAR, *things)
     return find_rectangles(sheet.linework, sheet.touching, sheet.pins, sheet.tolerance)
+
+
+def rounded_rectangle(centre: complex, length: float, width: float, radius: float) -> Drawn:
+    """A closed polyline of four sides and four quarter arcs."""
+    across = [complex(1, -1), complex(1, 1), complex(-1, 1), complex(-1, -1)]
+    middles = [centre + complex(way.real * (length / 2 - radius), way.imag * (width / 2 - radius)) for way in across]
+    out = [-1j, 1, 1j, -1]
+
+    def make(source: Source) -> Path:
+        pieces: list[Segment | Arc] = []
+        for number, middle in enumerate(middles):
+            pieces.append(Segment(source, middles[number - 1] + radius * out[number], middle + radius * out[number]))
+            pieces.append(Arc(source, middle, radius, cmath.phase(out[number]), math.pi / 2))
+        corners = tuple(piece.start for piece in pieces if isinstance(piece, Segment))
+        return Path(source, tuple(pieces), corners, closed=True, curved=False)
+
+    return Drawn("LWPOLYLINE", make)
 
 
 def four_lines(*corners: complex) -> list[Drawn]:
@@ -70,10 +88,44 @@ def test_corners_are_square_within_half_a_degree(degrees: float, found: int) -> 
     assert len(rectangles(path(-10 - 6j, 10 - 6j, 10 + lean + 6j, -10 + lean + 6j, closed=True))) == found
 
 
-def test_three_sides_an_open_polyline_and_a_triangle_are_no_rectangle() -> None:
+def test_three_sides_and_a_triangle_are_no_rectangle() -> None:
     assert rectangles(*four_lines(*CORNERS)[:3]) == []
-    assert rectangles(path(*CORNERS)) == []
     assert rectangles(path(*CORNERS[:3], closed=True)) == []
+
+
+def test_three_sides_of_one_polyline_are_open_unless_a_longer_line_closes_them() -> None:
+    (half,) = rectangles(path(*CORNERS))
+    assert half.open
+    (whole,) = rectangles(path(*CORNERS), line(-10 - 30j, -10 + 30j))
+    assert not whole.open
+    (still,) = rectangles(path(*CORNERS), line(-10 - 6j, -10 + 6j))
+    assert still.open
+
+
+@pytest.mark.parametrize("order", [(0, 1, 2), (2, 1, 0), (1, 0, 2)])
+def test_three_lines_on_a_longer_one_are_a_rectangle_once(order: tuple[int, ...]) -> None:
+    sides = four_lines(*CORNERS)[:3]
+    drawn = [sides[number] for number in order]
+    (found,) = rectangles(*drawn, line(-10 - 30j, -10 + 30j))
+    assert len(found.strands) == 3
+    assert rectangles(*drawn, line(-10 - 6j, -10 + 30j)) == []
+
+
+def test_two_lines_across_between_longer_ones_are_a_rectangle_but_not_at_their_ends() -> None:
+    across = [line(-10 - 6j, -10 + 6j), line(10 - 6j, 10 + 6j)]
+    (found,) = rectangles(line(-40 - 6j, 40 - 6j), line(-40 + 6j, 40 + 6j), *across)
+    assert len(found.strands) == 2
+    assert rectangles(line(-10 - 6j, 40 - 6j), line(-10 + 6j, 40 + 6j), *across) == []
+
+
+@pytest.mark.parametrize(("radius", "found"), [(2.0, 1), (5.0, 0)])
+def test_small_roundings_leave_a_rectangle_with_the_corners_its_sides_would_meet_in(radius: float, found: int) -> None:
+    rounded = rectangles(rounded_rectangle(0j, 20, 12, radius))
+    assert len(rounded) == found
+    for each in rounded:
+        assert sorted((round(at.real, 9), round(at.imag, 9)) for at in each.corners) == sorted(
+            (at.real, at.imag) for at in CORNERS
+        )
 
 
 def test_lines_that_cross_like_a_hash_are_no_rectangle() -> None:
