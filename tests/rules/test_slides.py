@@ -64,8 +64,8 @@ def test_a_block_with_nothing_near_says_what_was_expected() -> None:
 
 
 def test_a_block_that_is_tied_to_its_guide_cannot_slide() -> None:
-    lug = line(C + 12 + 4j, C + 30 - 8j)
-    found = only("block-without-guide", *dibber(BLOCK, guide(-8), lug))
+    lug = [line(C + 12 + 4j, C + 30 + 4j), line(C + 30 + 4j, C + 30 - 8j)]
+    found = only("block-without-guide", *dibber(BLOCK, guide(-8), *lug))
     assert "its guide is welded to it" in found.message
     assert "take away the line" in found.remedy
 

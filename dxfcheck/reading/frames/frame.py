@@ -55,9 +55,11 @@ def find_frame_symbols(
     placed = strokes.keys() | {stroke.strand for stroke in loose if stroke.base.strand not in links}
     loose.extend(stroke for stroke in standing if stroke.base.strand in links and stroke.strand not in placed)
     bases, strokes = accept_bases(strands, loose, strokes, bases)
-    if outlines:
-        covered = strokes_on_bases(sheet, relevant, ignored, landed, outlines)
-        more = [stroke for stroke in covered if stroke.base in bases and stroke.strand not in strokes]
+    if outlines and bases:
+        on_outlines = [number for number in relevant if _meets_any(sheet.touching, number, outlines)]
+        covered = strokes_on_bases(sheet, on_outlines, ignored, landed, outlines)
+        known = set(bases)
+        more = [stroke for stroke in covered if stroke.base in known and stroke.strand not in strokes]
         bases, strokes = accept_bases(strands, more, strokes, bases)
     reasons = {base.strand: "base line of a frame symbol with hatch strokes" for base in bases}
     hatched = bases_along_hatches(strands, relevant, sheet.fills, sheet.pins, tolerance)
@@ -74,6 +76,11 @@ def find_frame_symbols(
         strokes=dict.fromkeys(strokes, "hatch stroke of a frame symbol"),
         bases=tuple((base.strand, base.number) for base in lines),
     )
+
+
+def _meets_any(touching: Touches, strand: int, others: Collection[int]) -> bool:
+    """Whether some of the other strands lie near an end of a strand."""
+    return any(touch.strand in others for end in (0, 1) for touch in touching.at(strand, end))
 
 
 def symbols_apart(

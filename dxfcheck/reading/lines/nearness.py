@@ -79,7 +79,8 @@ def _pairs_of_bucket(
         cell = 1.0
     origin = complex(min(starts.real.min(), ends.real.min()), min(starts.imag.min(), ends.imag.min())) - cell * (1 + 1j)
     keys, pieces = _cells_of_pieces(starts, ends, origin, cell)
-    unique_keys, first = np.unique(keys, return_index=True)
+    first = _starts_of_runs(keys)
+    unique_keys = keys[first]
     counts = np.diff(np.append(first, keys.size))
 
     column = np.floor((points[chosen].real - origin.real) / cell).astype(np.int64)
@@ -99,8 +100,16 @@ def _pairs_of_bucket(
     which_point = np.concatenate([pair[0] for pair in pairs])
     which_piece = np.concatenate([pair[1] for pair in pairs])
     # A piece with samples in several of the nine cells was found several times.
-    once = np.unique(which_point * starts.size + which_piece)
+    once = np.sort(which_point * starts.size + which_piece)
+    once = once[_starts_of_runs(once)]
     return once // starts.size, once % starts.size
+
+
+def _starts_of_runs(values: IntArray) -> IntArray:
+    """Where each run of equal values begins in sorted ones; several times as quick as numpy's unique."""
+    new = np.ones(values.size, dtype=np.bool_)
+    new[1:] = values[1:] != values[:-1]
+    return np.nonzero(new)[0]
 
 
 def _cells_of_pieces(

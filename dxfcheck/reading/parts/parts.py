@@ -68,7 +68,7 @@ def find_parts(kinds: Sorted, sheet: Sheet, settings: Settings) -> Parts:
     lines = _roles(kinds, sheet, outlined, by_layer)
     slides = lines.slides
     dropped = slides.dropped | slides.passing
-    slots = [slot for slot in outlined.slots if not _holds_a_block(slot, slides)]
+    slots = _without_blocks(outlined.slots, slides)
     dropped |= set(_stems(sheet, slots, outlined.landings, lines.frame.keys()))
     dropped |= set(_under_links(slides, outlined.landings, lines.frame.keys()))
     landings = [each for each in outlined.landings if (each.strand, each.pin) not in dropped]
@@ -198,9 +198,9 @@ def _roles(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mapping[in
     return _Roles(marks, symbols, {**slides.frame, **frame}, slides, active)
 
 
-def _holds_a_block(slot: Slot, slides: Slides) -> bool:
-    """Whether a slot is the guide of a rectangular block round the pin in it."""
-    return any(
-        set(slot.sites) & set(slide.box.sites) and set(slot.strands) & set(slide.guide.strands)
-        for slide in slides.slides
-    )
+def _without_blocks(slots: Sequence[Slot], slides: Slides) -> list[Slot]:
+    """The slots but those that are the guide of a rectangular block round the pin in them."""
+    guided = {(site, strand) for slide in slides.slides for site in slide.box.sites for strand in slide.guide.strands}
+    return [
+        slot for slot in slots if not any((site, strand) in guided for site in slot.sites for strand in slot.strands)
+    ]

@@ -105,4 +105,7 @@ def _rings(fates: dict[int, Fate], sheet: Sheet, bodies: Sequence[Body], model: 
     plates = {number for body in bodies for number in body.discs}
     for number, disc in enumerate(sheet.sites.discs):
         plate = Fate("disc", "a ring that holds other pins off its centre")
+        if disc.rim:
+            settle(disc.ring, Fate("pitch circle", "a rim of a wheel, about its pitch circle"))
+            continue
         settle(disc.ring, plate if number in plates else Fate("skipped", "a ring drawn round whole links"))
