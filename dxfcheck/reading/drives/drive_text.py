@@ -57,6 +57,9 @@ COUNTER_CLOCKWISE = (
     "↺",
 )
 
+SHORTEST_NOTE = 4
+"""'1rpm': anything shorter is a label."""
+
 _DIGITS = r"\d{1,3}(?:[ \u2009]\d{3})+(?:[.,]\d+)?|\d+(?:[.,]\d*)?|[.,]\d+"
 _NUMBER = rf"(?P<number>[+-]?\s*(?:{_DIGITS})(?:[eE][+-]?\d+)?)"
 _UNIT = "|".join(sorted((re.escape(unit) for unit in (*TURN_UNITS, *SLIDE_UNITS)), key=len, reverse=True))
@@ -132,6 +135,8 @@ def _invalid(text: str, why: str) -> OptionInvalid:
 
 def find_statements(text: str) -> list[DriveStatement]:
     """The drives a note on the sheet states; a drive that is meant but cannot be understood carries a doubt."""
+    if len(text) < SHORTEST_NOTE:
+        return []
     plain = _plain(text)
     found = [_noted(match, text) for match in _NOTE.finditer(plain)]
     if found:

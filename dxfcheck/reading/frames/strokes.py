@@ -74,7 +74,7 @@ def strokes_on_bases(
     outlines_only = frozenset(outlines)
     for index in candidates:
         strand = strands[index]
-        if not isinstance(strand.primitive, Segment) or index in links:
+        if not isinstance(strand.primitive, Segment) or index in links or sheet.touching.alone(index):
             continue
         closing = [_closest(_near(sheet, ignored, index, end), sheet.tolerance) for end in (0, 1)]
         for end in (0, 1):
@@ -168,14 +168,7 @@ def loose_strokes(
     strokes of a symbol is not their base.
     """
     strands = sheet.strands
-    lines = (strand for strand in strands if isinstance(strand.primitive, Segment))
-    free = [
-        line
-        for line in lines
-        if line.number not in strokes
-        and not ((line.number, 0) in landed and (line.number, 1) in landed)
-        and not any(touch.meets for end in (0, 1) for touch in _near(sheet, ignored, line.number, end))
-    ]
+    free = _free_lines(sheet, ignored, strokes, landed)
     bases = [
         Base(index, number)
         for index in sorted(relevant)
@@ -185,17 +178,13 @@ def loose_strokes(
     ]
     if not free or not bases:
         return
-    points = np.array([end for strand in free for end in strand.ends], dtype=np.complex128)
-    reach = np.array([STROKE_SHORT_OF_BASE * strand.length for strand in free for _ in (0, 1)])
-    starts = np.array([piece_of(strands, base).start for base in bases], dtype=np.complex128)
-    ends = np.array([piece_of(strands, base).end for base in bases], dtype=np.complex128)
     found: defaultdict[int, list[tuple[float, Stroke]]] = defaultdict(list)
     standing: Counter[Base] = Counter()
-    for point, piece in zip(*(each.tolist() for each in near_pairs(points, reach, starts, ends)), strict=True):
-        strand, near, base = free[point // 2], point % 2, bases[piece]
-        stroke = _as_stroke(strands, strand.number, base, near, firm=True)
+    for place, piece in _short_of(strands, free, bases):
+        strand, near, base = strands[free[place // 2]], place % 2, bases[piece]
         if (strand.number, 1 - near) in landed:
             continue
+        stroke = _as_stroke(strands, strand.number, base, near, firm=True)
         if stroke is not None and _stops_short(strand, near, piece_of(strands, base)):
             found[strand.number].append((abs(_height(strand.ends[near], piece_of(strands, base))), stroke))
             standing[base] += 1
@@ -205,6 +194,37 @@ def loose_strokes(
 
     for options in found.values():
         yield min(options, key=lambda each: (*rank(each[1].base), each[0]))[1]
+
+
+def _free_lines(
+    sheet: Sheet,
+    ignored: Collection[int],
+    strokes: Collection[int],
+    landed: Collection[tuple[int, int | None]],
+) -> list[int]:
+    """Lines whose ends meet nothing (but marks and rings), other than strokes already and links from pin to pin."""
+    ends, targets, _, meets = sheet.touching.as_pairs()
+    passed = np.zeros(len(sheet.strands), dtype=np.bool_)
+    passed[list(ignored)] = True
+    met = np.zeros(len(sheet.strands), dtype=np.bool_)
+    met[ends[meets & ~passed[targets]] // 2] = True
+    straight = np.isfinite(sheet.linework.line_directions().real) & ~met
+    return [
+        number
+        for number in np.nonzero(straight)[0].tolist()
+        if number not in strokes and not ((number, 0) in landed and (number, 1) in landed)
+    ]
+
+
+def _short_of(strands: Sequence[Strand], free: Sequence[int], bases: Sequence[Base]) -> Iterator[tuple[int, int]]:
+    """Ends (two to a line) that stop short of a base at least so much longer that the line may be a stroke of it."""
+    lengths = np.repeat([strands[number].length for number in free], 2)
+    points = np.array([end for number in free for end in strands[number].ends], dtype=np.complex128)
+    starts = np.array([piece_of(strands, base).start for base in bases], dtype=np.complex128)
+    ends = np.array([piece_of(strands, base).end for base in bases], dtype=np.complex128)
+    which, piece = near_pairs(points, STROKE_SHORT_OF_BASE * lengths, starts, ends)
+    longer = lengths[which] <= STROKE_OF_BASE * np.abs(ends - starts)[piece]
+    yield from zip(which[longer].tolist(), piece[longer].tolist(), strict=True)
 
 
 def _height(point: Point, base: Segment) -> float:

@@ -55,6 +55,10 @@ class Touches:
             return ()
         return [Touch(self.strands[each], self.gaps[each], self.meets[each]) for each in range(start, stop)]
 
+    def alone(self, strand: int) -> bool:
+        """Whether nothing lies near either end of a strand."""
+        return self.first[2 * strand] == self.first[2 * strand + 2]
+
     def count(self, strand: int, end: int) -> int:
         """How many strands lie near an end."""
         number = 2 * strand + end

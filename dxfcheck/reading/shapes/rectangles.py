@@ -26,7 +26,7 @@ from dxfcheck.settings import (
     SHARED_SIDE_OF_BLOCK,
 )
 
-__all__ = ["Rectangle", "find_rectangles"]
+__all__ = ["Rectangle", "find_rectangles", "is_square_outline"]
 
 Flags = NDArray[np.bool_]
 
@@ -56,7 +56,7 @@ def find_rectangles(
     rectangles: those that no pin and no link comes near are not looked at.
     """
     strands = linework.strands
-    outlines = [Rectangle((strand.number,), strand.corners) for strand in strands if _is_square_outline(strand)]
+    outlines = [Rectangle((strand.number,), strand.corners) for strand in strands if is_square_outline(strand)]
     outlines.extend(rounded for strand in strands if (rounded := _rounded(strand)) is not None)
     outlines.extend(_half_closed(strand, strands, touching) for strand in strands if _is_square_u(strand))
     found = _near_linkage(outlines, linework, pins, beside)
@@ -132,7 +132,8 @@ def _is_line(strand: Strand) -> bool:
     return len(strand.pieces) == 1 and isinstance(strand.primitive, Segment)
 
 
-def _is_square_outline(strand: Strand) -> bool:
+def is_square_outline(strand: Strand) -> bool:
+    """Whether a strand is a closed polyline of four straight sides, each square to the next."""
     corners = strand.corners
     if not strand.closed or len(corners) != 4 or any(isinstance(piece, Arc) for piece in strand.pieces):
         return False
