@@ -63,7 +63,7 @@ def find_ground(kinds: Sorted, sheet: Sheet, outlined: Outlined, by_layer: Mappi
     if not rectangles:
         return Ground(sorted(reached), (), ())
     boxes = boxes_of(rectangles, sheet.pins, sheet.landings.landings, by_layer.keys(), sheet.tolerance)
-    rails = rails_of(boxes, sheet.linework, sheet.touching, sheet.landings.landings, apart)
+    rails = rails_of(boxes, sheet.linework, sheet.touching, sheet.landings.landings, apart | kinds.racks)
     beside = {rail.strand for each in rails for rail in each} | {each for box in boxes for each in box.strands}
     reached.extend(_reached(sorted(beside), sheet, neighbours, seen))
     return Ground(sorted(reached), boxes, rails)

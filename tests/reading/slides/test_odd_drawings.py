@@ -315,3 +315,14 @@ def test_a_rod_trimmed_at_the_block_is_no_leg_of_a_hatched_guide_in_line_with_it
     )
     assert slides_in(found) == [ALONG_X]
     assert len(found.joints) == 4
+
+
+@pytest.mark.parametrize("gap", [0.0, 2.0])
+def test_a_rack_drawn_as_a_rectangle_with_its_pitch_line_slides_on_its_guide(gap: float) -> None:
+    """Flush on a frame line or a little clear of it: the pitch line is part of the rack, not its guide."""
+    pinion = [ring(0j, 3.0, layer="FRAME"), ring(0j, 30.0, layer="PITCH")]
+    rack = [path(-60 - 30j, 60 - 30j, 60 - 42j, -60 - 42j, closed=True), line(-60 - 30j, 60 - 30j, layer="PITCH")]
+    guide = line(complex(-100, -42 - gap), complex(100, -42 - gap), layer="FRAME")
+    drawn = linkage(*pinion, *rack, guide)
+    assert sorted(joint.kind for joint in drawn.joints) == ["pin", "rolling", "slide"]
+    assert len(drawn.links) == 3
