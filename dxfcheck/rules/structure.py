@@ -43,7 +43,11 @@ def no_linkage(subject: RuleSubject) -> Iterator[Finding]:
     drawn = any(entity.fate != PAPER_SPACE for entity in subject.sketch.entities)
     for seen in subject.reading.observations if drawn else ():
         if seen.kind == "no-linkage":
-            shown = f"; it shows {seen.detail}, which are not read: nothing joins them to links on a frame" if seen.detail else ""
+            shown = (
+                f"; it shows {seen.detail}, which are not read: nothing joins them to links on a frame"
+                if seen.detail
+                else ""
+            )
             yield Finding(
                 rule="no-linkage",
                 severity="note",

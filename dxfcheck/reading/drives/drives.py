@@ -13,7 +13,7 @@ from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.reading.drives.drive_assumed import Reasoned, assume_drive
 from dxfcheck.reading.drives.drive_names import Target
 from dxfcheck.reading.drives.drive_notes import Near, Shapes, near_links
-from dxfcheck.reading.drives.drive_targets import aim_of, make_lookup
+from dxfcheck.reading.drives.drive_targets import Lookup, aim_of, make_lookup
 from dxfcheck.reading.drives.drive_text import DriveStatement, find_statements, parse_drive
 from dxfcheck.reading.reading import Evidence, Observation
 from dxfcheck.settings import NOTE_REACH_IN_HEIGHTS, Settings
@@ -73,13 +73,9 @@ def drive_linkages(
     speeds are given a second.
     """
     notes = [(number, each) for number, text in enumerate(texts) for each in find_statements(text.content)]
-    near = near_links([texts[number] for number, _ in notes], shapes)
     said = [_Said(parse_drive(option)) for option in settings.drives]
-    said += [
-        _Said(statement, texts[number], handles[number], links)
-        for (number, statement), links in zip(notes, near, strict=True)
-    ]
-    stated, observations = _settle(said, linkages, unit) if said else ({}, [])
+    said += [_Said(statement, texts[number], handles[number]) for number, statement in notes]
+    stated, observations = _settle(said, linkages, shapes, unit) if said else ({}, [])
     drives = [_drives_of(linkage, stated.get(number, ())) for number, linkage in enumerate(linkages)]
     driven = tuple(
         replace(linkage, drives=tuple([each.drive for each in own]))
@@ -94,10 +90,11 @@ def drive_linkages(
 
 
 def _settle(
-    said: Sequence[_Said], linkages: Sequence[Linkage], unit: LengthUnit
+    said: Sequence[_Said], linkages: Sequence[Linkage], shapes: Shapes, unit: LengthUnit
 ) -> tuple[dict[int, list[Reasoned]], list[Observation]]:
     """The drives that the statements give each linkage, and what could not be understood or had to be assumed."""
     lookup = make_lookup(linkages, sliding=any(each.statement.kind == "slide" for each in said))
+    said = _with_links_near(said, lookup, shapes)
     found: defaultdict[int, list[Reasoned]] = defaultdict(list)
     observations: list[Observation] = []
     by_option: set[Motion] = set()
@@ -119,6 +116,21 @@ def _settle(
         if rate is not None:
             found[target.linkage].append(_reasoned(each, target, rate))
     return found, observations
+
+
+def _with_links_near(said: Sequence[_Said], lookup: Lookup, shapes: Shapes) -> list[_Said]:
+    """The statements, those of notes whose name alone does not say what they mean with the links near them."""
+
+    def unclear(each: _Said) -> bool:
+        name = each.statement.name
+        if each.text is None:
+            return False
+        return name is None or name.isdecimal() or aim_of(each.statement, lookup, (), 0.0).target is None
+
+    places = [place for place, each in enumerate(said) if unclear(each)]
+    near = near_links([text for place in places if (text := said[place].text) is not None], shapes)
+    links = dict(zip(places, near, strict=True))
+    return [each._replace(near=links.get(place, ())) for place, each in enumerate(said)]
 
 
 def _rate(said: _Said, unit: LengthUnit, mechanism: str) -> tuple[float | None, list[Observation]]:
