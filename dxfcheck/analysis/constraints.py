@@ -133,8 +133,7 @@ def freedom_of(matrix: Matrix, tolerance: Callable[[], float]) -> Freedom:
     rows, columns = matrix.shape
     if rows == 0 or columns == 0:
         return Freedom(np.eye(columns), None)
-    singular, right = _singular_of(matrix)
-    values = singular.tolist()
+    values, right = _singular_of(matrix)
     rank = len(values)
     if values[-1] <= RANK_GREATEST * values[0]:
         rank = _rank_of(values, tolerance())
@@ -146,16 +145,15 @@ def freedom_of(matrix: Matrix, tolerance: Callable[[], float]) -> Freedom:
     return Freedom(right[rank:], (values[rank - 1] / values[0], zero / values[0]) if rank else None)
 
 
-def _singular_of(matrix: Matrix) -> tuple[Matrix, Matrix | None]:
+def _singular_of(matrix: Matrix) -> tuple[list[float], Matrix | None]:
     """Singular values in falling order, with the right vectors (one a row) for a small matrix.
 
     In a large one mostly all rows count; then a QR of its transpose gives the null space in a third of the time.
     """
     if matrix.shape[1] >= LARGE_MATRIX:
-        values: Matrix = np.linalg.svd(matrix, compute_uv=False)
-        return values, None
+        return np.linalg.svd(matrix, compute_uv=False).tolist(), None
     _, singular, right = np.linalg.svd(matrix, full_matrices=True)
-    return singular, right
+    return singular.tolist(), right
 
 
 LARGE_MATRIX = 60
