@@ -163,8 +163,21 @@ def main() -> None:
         )
         draw_four_bars(sheet, plain_four_bar, 1000)
         print(f"{own_share(sheet):6.2f}  {1.0:5.1f}  1,000 four-bars, bare (7 entities each): own work over reading")
+        drafted = Habit(
+            radius=4,
+            frame="symbol",
+            guides="under",
+            guide_frame="strokes",
+            blocks="lines",
+            ends="rim",
+            named_layers=False,
+        )
+        write_plans(sheet, slider_cranks(1000), drafted)
+        print(f"{own_share(sheet):6.2f}  {1.5:5.1f}  1,000 slider-cranks as drafted (31 entities each): own work")
         write_plans(sheet, slider_cranks(1000), Habit(radius=4))
-        print(f"{own_share(sheet):6.2f}  {1.5:5.1f}  1,000 slider-cranks (14 entities each): own work over reading")
+        print(
+            f"{own_share(sheet):6.2f}  {1.5:5.1f}  1,000 slider-cranks, bare (14 entities each): own work over reading"
+        )
         write_plan(sheet, lift_table(40), Habit(radius=3))
         print(f"{own_share(sheet):6.2f}  {1.5:5.1f}  a lift table of 40 scissor cells: own work over reading")
 

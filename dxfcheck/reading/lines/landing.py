@@ -203,10 +203,11 @@ def _covers(arc: Arc, point: Point) -> bool:
 
 def _miss(pin: PinSite, strand: Strand, end: int, away: float) -> Miss | None:
     """An end that stops short of a pin's nearest rim by no more than two of its diameters."""
-    if away <= pin.radii[0]:
+    radii = pin.radii
+    if away <= radii[0]:
         return None
-    outer = max([radius for radius in pin.radii if radius < away])
-    if away - outer > RIM_GAP_IN_DIAMETERS * 2.0 * pin.radii[0]:
+    outer = radii[-1] if radii[-1] < away else max([radius for radius in radii if radius < away])
+    if away - outer > RIM_GAP_IN_DIAMETERS * 2.0 * radii[0]:
         return None
     piece = strand.pieces[0] if end == 0 else strand.pieces[-1]
     return Miss(strand.number, pin.number, end, away - outer, _aim_offset(piece, strand.ends[end], pin.at))
