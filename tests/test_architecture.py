@@ -16,6 +16,7 @@ SOURCES = sorted(PACKAGE.rglob("*.py"))
 ROOMS = [
     "errors",
     "geometry",
+    "tolerances",
     "settings",
     "collector",
     "drawing",

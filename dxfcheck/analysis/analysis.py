@@ -14,7 +14,7 @@ from dxfcheck.analysis.results import Analysis, DeadCentre, DriveVerdict
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.analysis.velocity import Motion, apply_drives
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.settings import AT_LIMIT_OF_BEND, AT_LIMIT_RELATIVE
+from dxfcheck.tolerances import AT_LIMIT_OF_BEND, AT_LIMIT_RELATIVE
 
 __all__ = ["analyse"]
 

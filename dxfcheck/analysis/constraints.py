@@ -24,7 +24,7 @@ from numpy.typing import NDArray
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Joint, JointKind, Linkage
-from dxfcheck.settings import (
+from dxfcheck.tolerances import (
     LINK_SIZE_FLOOR,
     RANK_GREATEST,
     RANK_NOISE,

@@ -18,7 +18,7 @@ from dxfcheck.analysis.constraints import Body
 from dxfcheck.analysis.results import DriveVerdict
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.settings import DETERMINED_RELATIVE, DRIVE_AGREES_RELATIVE, DRIVE_DEPENDENT_RELATIVE
+from dxfcheck.tolerances import DETERMINED_RELATIVE, DRIVE_AGREES_RELATIVE, DRIVE_DEPENDENT_RELATIVE
 
 __all__ = ["Motion", "RateRow", "apply_drives"]
 

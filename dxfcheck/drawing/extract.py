@@ -28,7 +28,7 @@ from dxfcheck.drawing.shapes import (
     require_numbers,
 )
 from dxfcheck.drawing.text import read_attribute, read_mtext, read_text
-from dxfcheck.settings import BLOCK_DEPTH_LIMIT, BLOCK_ENTITY_LIMIT
+from dxfcheck.tolerances import BLOCK_DEPTH_LIMIT, BLOCK_ENTITY_LIMIT
 
 __all__ = ["Extraction", "Heights", "extract"]
 

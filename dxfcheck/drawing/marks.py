@@ -17,7 +17,7 @@ from dxfcheck.drawing.primitives import Dimension, Fate, Fill, Source
 from dxfcheck.drawing.shapes import LIBRARY_FAULTS, Given, NotRead, Shapes, require_numbers
 from dxfcheck.drawing.text import decode_paragraphs
 from dxfcheck.geometry import Point
-from dxfcheck.settings import FLATTENING_OF_RADIUS
+from dxfcheck.tolerances import FLATTENING_OF_RADIUS
 
 __all__ = ["read_dimension", "read_hatch", "read_solid"]
 

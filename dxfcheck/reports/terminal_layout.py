@@ -11,7 +11,7 @@ from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
 from dxfcheck.geometry import Point
-from dxfcheck.settings import SHOWN_AS_ZERO
+from dxfcheck.tolerances import SHOWN_AS_ZERO
 
 __all__ = [
     "GAP",

@@ -12,7 +12,7 @@ from dxfcheck.rules.finding import Finding, Severity
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import listed, plural
-from dxfcheck.settings import AMONG_LINKS_OF_DIAGONAL, PLACES_NAMED
+from dxfcheck.tolerances import AMONG_LINKS_OF_DIAGONAL, PLACES_NAMED
 
 __all__: list[str] = []
 

@@ -10,7 +10,7 @@ from dxfcheck.rules.observed import at_pin, figured, finding, observed
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import length, place, plural
-from dxfcheck.settings import PLACES_NAMED
+from dxfcheck.tolerances import PLACES_NAMED
 
 __all__: list[str] = []
 

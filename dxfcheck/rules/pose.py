@@ -13,7 +13,7 @@ from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.observed import finding, observed
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
-from dxfcheck.settings import DEAD_CENTRE_RADIANS
+from dxfcheck.tolerances import DEAD_CENTRE_RADIANS
 
 __all__: list[str] = []
 

@@ -21,6 +21,8 @@ Family = Literal["exchange", "linework", "dimensions", "structure", "pose", "lim
 FAMILIES: tuple[Family, ...] = ("exchange", "linework", "dimensions", "structure", "pose", "limits")
 """In the order in which a drawing is worked through, from the file to the limits it is held against."""
 
+COMMON_PRACTICE = "common practice, no source"
+
 Check = Callable[[RuleSubject], Iterator[Finding]]
 
 
@@ -29,7 +31,8 @@ class Rule:
     """One rule and the words that explain it.
 
     ``severity`` is what its findings weigh as a rule, ``also`` what they weigh in the cases that ``looks_for`` names.
-    ``matters`` says what goes wrong if nobody mends it, ``remedy`` how to mend it.
+    ``matters`` says what goes wrong if nobody mends it, ``remedy`` how to mend it. ``settings`` names the settings that
+    change what it finds, '' where there are none besides those of every rule; ``source`` where its limit comes from.
     """
 
     name: str
@@ -41,12 +44,14 @@ class Rule:
     remedy: str
     check: Check
     also: tuple[Severity, ...] = ()
+    settings: str = ""
+    source: str = COMMON_PRACTICE
 
 
 _entered: dict[str, Rule] = {}
 
 
-def rule(
+def rule(  # noqa: PLR0913 - a rule is entered whole, in one place
     name: str,
     severity: Severity,
     title: str,
@@ -56,6 +61,8 @@ def rule(
     matters: str,
     remedy: str,
     also: tuple[Severity, ...] = (),
+    settings: str = "",
+    source: str = COMMON_PRACTICE,
 ) -> Callable[[Check], Check]:
     """Enter the decorated function as the rule of that name; ValueError where the name is taken.
 
@@ -76,6 +83,8 @@ def rule(
             remedy=remedy,
             check=check,
             also=also,
+            settings=settings,
+            source=source,
         )
         return check
 

@@ -11,7 +11,7 @@ from dxfcheck.rules.finding import Finding, Severity
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import listed, plural
-from dxfcheck.settings import RANK_DOUBTFUL
+from dxfcheck.tolerances import RANK_DOUBTFUL
 
 __all__: list[str] = []
 

@@ -6,7 +6,7 @@ from collections.abc import Sequence
 
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.geometry import Point
-from dxfcheck.settings import PLACES_NAMED
+from dxfcheck.tolerances import PLACES_NAMED
 
 __all__ = ["length", "listed", "place", "plural"]
 

@@ -9,7 +9,7 @@ import pytest
 from ezdxf.document import Drawing
 
 from dxfcheck.drawing.primitives import Fate, Path, Ring, Segment, Sketch
-from dxfcheck.settings import BLOCK_DEPTH_LIMIT
+from dxfcheck.tolerances import BLOCK_DEPTH_LIMIT
 
 Sketcher = Callable[..., Sketch]
 

@@ -16,7 +16,8 @@ from dxfcheck.reading.drives.drive_notes import Near, Shapes, near_links
 from dxfcheck.reading.drives.drive_targets import Lookup, aim_of, make_lookup
 from dxfcheck.reading.drives.drive_text import DriveStatement, find_statements, parse_drive
 from dxfcheck.reading.reading import Evidence, Observation
-from dxfcheck.settings import NOTE_REACH_IN_HEIGHTS, Settings
+from dxfcheck.settings import Settings
+from dxfcheck.tolerances import NOTE_REACH_IN_HEIGHTS
 
 __all__ = ["Driven", "Shapes", "drive_linkages"]
 

@@ -7,7 +7,7 @@ from fnmatch import fnmatchcase
 from functools import cache
 
 from dxfcheck.drawing.primitives import Source
-from dxfcheck.settings import (
+from dxfcheck.tolerances import (
     CHAIN_LINETYPES,
     CONSTRUCTION_LAYERS,
     CONSTRUCTION_LINETYPES,

@@ -7,7 +7,8 @@ from collections.abc import Sequence
 from typing import NamedTuple
 
 from dxfcheck.drawing.primitives import Ring
-from dxfcheck.settings import (
+from dxfcheck.settings import Settings
+from dxfcheck.tolerances import (
     ARC_REACH_IN_SHAPES,
     COINCIDENCE_OF_DIAGONAL,
     GAP_OF_SIZE,
@@ -16,7 +17,6 @@ from dxfcheck.settings import (
     SHAPE_OF_SIZE,
     STRAY_DIAGONALS,
     WELD_GAP_OF_DIAGONAL,
-    Settings,
 )
 
 __all__ = ["Tolerance", "tolerance_for"]

@@ -13,7 +13,7 @@ from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.touches import Touch
 from dxfcheck.reading.observations.seen import Seen, about_strand, pin_name
 from dxfcheck.reading.reading import Observation
-from dxfcheck.settings import RIM_GAP_IN_DIAMETERS
+from dxfcheck.tolerances import RIM_GAP_IN_DIAMETERS
 
 __all__ = ["observe_ends"]
 

@@ -9,7 +9,7 @@ from dxfcheck.drawing.primitives import Segment
 from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.observations.seen import Seen, about_strand, pin_name
 from dxfcheck.reading.reading import Observation
-from dxfcheck.settings import LINE_OFF_CENTRE_OF_RADIUS
+from dxfcheck.tolerances import LINE_OFF_CENTRE_OF_RADIUS
 
 __all__ = ["observe_lines"]
 

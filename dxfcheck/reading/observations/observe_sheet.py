@@ -15,7 +15,7 @@ from dxfcheck.reading.mechanisms.model import Model
 from dxfcheck.reading.observations.unread_shapes import shapes_shown
 from dxfcheck.reading.parts.parts import Parts
 from dxfcheck.reading.reading import Observation
-from dxfcheck.settings import EMPTY_PIN_LIKENESS, PLACES_NAMED
+from dxfcheck.tolerances import EMPTY_PIN_LIKENESS, PLACES_NAMED
 
 __all__ = ["observe_sheet"]
 

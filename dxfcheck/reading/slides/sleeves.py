@@ -12,7 +12,7 @@ from dxfcheck.geometry import cross, dot
 from dxfcheck.reading.lines.nearness import near_pairs, pair_distances
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.slides.boxes import Box
-from dxfcheck.settings import (
+from dxfcheck.tolerances import (
     GUIDE_TURN_DEGREES,
     RIM_OF_RADIUS,
     SLEEVE_LIKENESS,

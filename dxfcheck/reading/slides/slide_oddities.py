@@ -14,7 +14,7 @@ from dxfcheck.reading.shapes.contact import Contact, Oddity
 from dxfcheck.reading.slides.boxes import Box
 from dxfcheck.reading.slides.slide import Slide
 from dxfcheck.reading.slides.slides import Slides
-from dxfcheck.settings import GUIDE_BESIDE_OF_WIDTH, GUIDE_LOOKED_FOR_IN_BLOCKS, GUIDE_TURN_DEGREES
+from dxfcheck.tolerances import GUIDE_BESIDE_OF_WIDTH, GUIDE_LOOKED_FOR_IN_BLOCKS, GUIDE_TURN_DEGREES
 
 __all__ = ["slide_oddities"]
 

@@ -9,7 +9,8 @@ from dxfcheck.reading.lines.sheet import lay_out
 from dxfcheck.reading.lines.sorting import sort_primitives
 from dxfcheck.reading.lines.tolerance import tolerance_for
 from dxfcheck.reading.observations.unread_shapes import shapes_shown
-from dxfcheck.settings import UNREAD_SHAPES_LIMIT, Settings
+from dxfcheck.settings import Settings
+from dxfcheck.tolerances import UNREAD_SHAPES_LIMIT
 from tests.reading.slides.sliders import loose_rectangle
 from tests.sketches import Drawn, arc, line, obround, observed, rectangle, ring, sketch, tipper
 
