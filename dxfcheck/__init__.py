@@ -9,13 +9,14 @@ Importing this package is cheap: names are loaded when first asked for, so that 
 from __future__ import annotations
 
 import importlib
+from pathlib import Path
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
     import os
     from collections.abc import Sequence
 
-    from dxfcheck.errors import DrawingUnreadable, DxfCheckError, OptionInvalid
+    from dxfcheck.errors import DrawingUnreadable, DxfCheckError, OptionInvalid, SettingsInvalid
     from dxfcheck.inspection import DrawingReport, MechanismReport
     from dxfcheck.reports.json_report import report_as_dict
     from dxfcheck.rules.finding import Finding
@@ -29,6 +30,7 @@ __all__ = [
     "Finding",
     "MechanismReport",
     "OptionInvalid",
+    "SettingsInvalid",
     "__version__",
     "check",
     "report_as_dict",
@@ -41,6 +43,7 @@ _HOME = {
     "Finding": "dxfcheck.rules.finding",
     "MechanismReport": "dxfcheck.inspection",
     "OptionInvalid": "dxfcheck.errors",
+    "SettingsInvalid": "dxfcheck.errors",
     "report_as_dict": "dxfcheck.reports.json_report",
 }
 
@@ -53,21 +56,29 @@ def check(
     units: str | None = None,
     tolerance: float | None = None,
     expect_mobility: int | None = None,
+    settings: str | os.PathLike[str] | None = None,
 ) -> DrawingReport:
     """Check one drawing; the options are those of ``dxfcheck check``.
 
     ``drives`` are texts such as 'A-B = 10 rad/s ccw', ``frame`` names of fixed pins, ``units`` the length unit,
-    ``tolerance`` the coincidence tolerance in it. A file that cannot be read gives a report of status 'unreadable';
-    OptionInvalid where an option cannot be used. Time grows with the entities, about 0.1 ms each.
+    ``tolerance`` the coincidence tolerance in it. ``settings`` is a settings file; without one none is looked for, so
+    that the result does not depend on the folder. A file that cannot be read gives a report of status 'unreadable';
+    OptionInvalid where an option cannot be used, SettingsInvalid where the settings file cannot. Time grows with the
+    entities, about 0.1 ms each.
     """
     # Loaded on use: these bring in ezdxf and networkx, which importing dxfcheck must not.
     from dxfcheck.inspection import inspect_drawing  # noqa: PLC0415
     from dxfcheck.options import settings_from  # noqa: PLC0415
 
-    settings = settings_from(
+    stated = settings_from(
         drives=drives, frame=frame, units=units, tolerance=tolerance, expect_mobility=expect_mobility
     )
-    return inspect_drawing(str(path), settings)
+    if settings is not None:
+        from dxfcheck.configuration.effective import settings_for  # noqa: PLC0415 - not needed without a file
+        from dxfcheck.configuration.settings_file import read_settings_file  # noqa: PLC0415
+
+        stated = settings_for(Path(path), read_settings_file(Path(settings)), stated).settings
+    return inspect_drawing(str(path), stated)
 
 
 def __getattr__(name: str) -> object:

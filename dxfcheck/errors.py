@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-__all__ = ["DrawingUnreadable", "DxfCheckError", "OptionInvalid"]
+__all__ = ["DrawingUnreadable", "DxfCheckError", "OptionInvalid", "SettingsInvalid"]
 
 
 class DxfCheckError(Exception):
@@ -24,3 +24,16 @@ class DrawingUnreadable(DxfCheckError):
 
 class OptionInvalid(DxfCheckError):
     """An option or a setting that cannot be used; nothing was checked."""
+
+
+class SettingsInvalid(DxfCheckError):
+    """A settings file that cannot be used; ``problems`` are all that is wrong with it, one line each.
+
+    A line names the file, the line in it, the key, what is wrong and what to do. The text has them all, one below the
+    other. ``path`` is the file as messages name it.
+    """
+
+    def __init__(self, path: str, problems: tuple[str, ...]) -> None:
+        super().__init__("\n".join(problems))
+        self.path = path
+        self.problems = problems

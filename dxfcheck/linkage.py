@@ -64,6 +64,10 @@ class Joint:
     rolling contact, None for a pin. A ``full`` rolling contact is one that nothing else holds together (a wheel that
     rolls on the frame without an arm): it holds its two links as a pin at the contact does, and removes two freedoms
     (Fabien, Analytical System Dynamics, p. 70: one freedom in pure rolling). It means nothing for other kinds.
+    ``carrier`` is the link that has the slot of a pin in slot, None where that is not known. ``curves`` are the centres
+    of the circles on which the first and the second link touch or guide (pitch circles, a curved slot), None for a
+    straight line: velocities at the pose do not depend on either, finite motion does. ``drawn_length`` is how long its
+    guide or slot is drawn, which tells how well its direction is known; None where that is not known.
     """
 
     kind: JointKind
@@ -74,6 +78,9 @@ class Joint:
     direction: Point | None = None
     handles: tuple[str, ...] = ()
     full: bool = False
+    carrier: int | None = None
+    curves: tuple[Point | None, Point | None] = (None, None)
+    drawn_length: float | None = None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -100,7 +107,8 @@ class Linkage:
     """One mechanism. ``frame`` is the index of the fixed link (0 in a grounded mechanism).
 
     In an assembly that no joint ties to the frame (``grounded`` False) the longest link is held for the count, and
-    no speeds are given.
+    no speeds are given. ``resolution`` is what each coordinate may be off by as drawn, in the drawing's unit: half a step
+    of typed decimals, gaps between what was meant to meet, a stated tolerance; 0.0 for exact places.
     """
 
     name: str
@@ -110,3 +118,4 @@ class Linkage:
     drives: tuple[Drive, ...] = field(default=())
     frame: int = 0
     grounded: bool = True
+    resolution: float = 0.0

@@ -10,7 +10,13 @@ from datetime import date
 from typing import Literal, NamedTuple
 
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import CONSTRUCTION_LAYERS, FRAME_NAMES, PITCH_LAYERS
+from dxfcheck.tolerances import (
+    CONSTRUCTION_LAYERS,
+    DOUBTFUL_SPEED_RELATIVE,
+    FRAME_NAMES,
+    LOW_TRANSMISSION_DEGREES,
+    PITCH_LAYERS,
+)
 
 __all__ = ["Acceptance", "Figure", "LayerRoles", "Quantity", "Requirement", "RuleWeight", "Settings"]
 
@@ -40,6 +46,7 @@ class Requirement:
     ``greatest`` bound it, None where it is not bounded. ``expected`` is the figure that was stated, where there is
     one; the bounds then are how far off it may be. Where ``signed`` is False the size is held against the bounds.
     ``stated`` is the text as written, ``where`` the file and line it stands in ('' for an option or a note).
+    ``mechanism`` is the one that a note belongs to; '' for every one that has such a subject.
     """
 
     quantity: Quantity
@@ -54,6 +61,7 @@ class Requirement:
     where: str = ""
     at: Point | None = None
     handles: tuple[str, ...] = ()
+    mechanism: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -94,7 +102,9 @@ class Settings:
     COINCIDENCE_OF_DIAGONAL of the sketch's diagonal. ``drives`` are texts such as 'A-B = 10 rad/s ccw' of options,
     ``settings_drives`` those of a settings file, which stand behind them; ``frame_pins`` pin names that are fixed.
     ``part_blocks`` are patterns (globs, without case) of names of blocks: each reference to one is one rigid link.
-    ``rule_weights`` are rules with the weight they shall have. ``files`` are the settings files that had a say.
+    ``transmission_angle`` is the least transmission angle that is not pointed out, degrees; ``doubtful_speed`` the part
+    of a speed beyond which what it may be off by is pointed out. ``rule_weights`` are rules with the weight they shall
+    have. ``files`` are the settings files that had a say.
     """
 
     unit: str | None = None
@@ -107,6 +117,8 @@ class Settings:
     layers: LayerRoles = field(default_factory=LayerRoles)
     expected_mobility: int | None = None
     requirements: tuple[Requirement, ...] = ()
+    transmission_angle: float = LOW_TRANSMISSION_DEGREES
+    doubtful_speed: float = DOUBTFUL_SPEED_RELATIVE
     rule_weights: tuple[tuple[str, RuleWeight], ...] = ()
     acceptances: tuple[Acceptance, ...] = ()
     files: tuple[str, ...] = ()

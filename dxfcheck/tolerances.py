@@ -352,3 +352,229 @@ ROUNDING_OF_BLOCK = 0.5
 
 FORK_CLEARANCE_OF_RADIUS = 1.5
 """The lines of a fork that is joined at one end lie no further from its pin's centre than so many radii."""
+
+ACCEPTED_WITHIN_OF_DIAGONAL = 5e-4
+"""An accepted finding is found again within this part of the sheet's diagonal: a drawing that was saved anew with two
+decimals, in inches, moves its ends by as much; another place lies further off."""
+
+# --- exchange and linework rules ---
+
+NESTED_DEEP = 4
+"""Blocks in blocks so deep (the reference on the sheet counts as one) are told of: libraries of parts nest two or three
+deep, and what explodes a drawing step by step is commonly stopped after that (common practice, no source)."""
+
+DOUBLES_TOLD = 2
+"""More lines drawn twice than this are one finding: a sheet that was pasted onto itself doubles every line."""
+
+EXPECTED_RELATIVE = 5e-3
+"""So far, as a part of its figure, an expected speed or ratio may be off where no tolerance is stated with it: stated
+figures are commonly rounded to three digits."""
+
+FINITE_STEP_RADIANS = 0.03
+"""A finite step turns the fastest link so far, a second one twice as far: enough for the square of it, by which a
+linkage that locks stays open, to stand clear of lengths typed to two decimals."""
+
+FINITE_STEP_TURNS = 12
+"""Newton's method closes a linkage that can be closed in four or five turns; one that cannot is left after so many."""
+
+STEPPED_LINKS = 80
+STEPPED_FREEDOMS = 4
+"""Finite steps are taken of linkages of at most so many links and freedoms at the pose; larger ones are not judged."""
+
+NEVER_PLOTTED = "DEFPOINTS"
+"""The layer that drafting programs make for the points of dimensions and never plot (from memory, common practice)."""
+
+COMPARED_SAMPLE = 60
+"""Two sheets with more pins than this are first laid on one another by a sample of so many."""
+
+COMPARED_SAMPLE_LEAST = 0.2
+"""A motion that brings together less than this part of the sample is not looked at further."""
+
+COMPARED_ENOUGH = 0.8
+COMPARED_MORE = 15
+"""Once a motion explains this part of a large sheet, only so many others are tried: in a row of equal mechanisms,
+shifting by one explains almost as much."""
+
+COMPARED_CANDIDATES = 2000
+"""At most so many motions of the whole sheet are tried: a sheet of a thousand equal mechanisms allows millions."""
+
+COMPARED_DIGITS = 6
+"""Exporters that round write coordinates to so many significant digits (seen in drawings by many hands)."""
+
+COMPARED_NOISE = 2e-5
+"""Two speeds that differ by less than this part of their mechanism's greatest one are the same: coordinates within the
+coincidence tolerance give speeds that differ by a few times 3e-6."""
+
+COMPARED_TURN_RADIANS = 2e-4
+"""Directions of slides and slots within this angle are the same: what ten lengths of a block rounded to six digits on a
+sheet of three hundred turn."""
+
+COMPARED_FINDING_OF_SIZE = 0.02
+"""A finding of one rule within this part of the largest mechanism's size of where it lay before is the same one."""
+
+COMPARED_ALLOWANCE_PERCENT = 0.1
+"""A speed may change by so many per cent before two drawings count as different, where nothing else is stated: less
+than what dimensions to a tenth of a millimetre do to a crank of 60 mm."""
+
+LONE_FORCE_MOBILITY = 3
+"""A lone 'F = 12' is a force and not a mobility: linkages of more freedoms than this are seldom drawn."""
+
+DENSE_LINKS = 60
+"""A mechanism of at most so many links is solved by one matrix for all of it; larger ones a few links at a time."""
+
+STILL_OF_BORDER = 1e-9
+"""A group of links whose constraints stand to it at a cosine below this leaves them to its neighbours: rounding error
+has added up to 1e-12 in lattices of 5,000 links."""
+
+MOST_PUT_OFF = 60
+"""Links that follow their neighbours weakly are put off and solved together with these, up to so many at once."""
+
+TALLEST_MOTION = 1e150
+"""Motions of long lever chains are scaled down as they pass this, long before they overflow."""
+
+SNAP_REACH_IN_GAPS = 3.0
+"""An end is snapped along its own line to the line it misses within so many gaps; a shallower meeting to the nearest
+point."""
+
+SNAP_OF_COINCIDENCE = 0.1
+"""Places to snap to are written to this part of the coincidence tolerance, so that an end typed there meets."""
+
+# --- lengths and units that the sheet states ---
+
+FRACTION_STEP = 1.0 / 16.0
+"""A length in fractions of an inch is rounded to sixteenths, or finer where its own fraction is (common practice)."""
+
+MOST_REPEATS = 12
+"""'12x60' means twelve parts of 60; where the first figure is greater it may be a length as well ('60x40')."""
+
+LIMITS_ALIKE = 1.5
+"""The two limits of one size, one over the other, differ by no more than this factor; else the one is divided."""
+
+COMPARED_OF_SIZE = 2e-5
+"""Places and lengths of a mechanism that differ by no more than this part of its size, nor by more than the tolerances
+of the two drawings, are equal: on a sheet of hundreds of mechanisms the sheet's tolerance says little about one."""
+
+COMPARED_FLOAT = 1e-12
+"""Rounding in the computer when a sheet is turned, over its greatest coordinate."""
+
+MIX_UP_DIGITS = 0.05
+"""A written figure names a factor such as 25.4 only where half a unit of its last digit is at most this part of it."""
+
+STATED_NOISE = 1e-9
+"""Rounding in the computer, as a part of what is measured, by which it may pass the bounds of a written figure."""
+
+SAME_RATE_RELATIVE = 1e-8
+"""A drive written anew with nine figures is the same within this part of its rate."""
+
+LIMIT_RELATIVE = 1e-4
+"""A speed or ratio is beyond its limit where it passes it by more than this part: coordinates typed to two decimals
+move speeds by as much on lengths of 50 mm, and a limit is often the nominal speed itself."""
+
+DIMENSION_ON_OF_SIZE = 1e-3
+"""A point of a dimension sits on linework within this part of the dimension's own size (a tenth of a millimetre at
+100 mm): what is measured then changes by less than most sheets show."""
+
+DIMENSION_MISS_OF_SIZE = 0.15
+"""A point no further than this part of the dimension's size from an end or centre was left behind when that moved."""
+
+DIMENSION_LEVEL = 0.1
+"""Where a point is only in line with something further off, it has to be so within this part of what is allowed on
+linework: on a full sheet much is nearly in line by chance. Two lines cross where the sine between them is as much."""
+
+UNREAD_REACH_OF_DIAGONAL = 0.1
+"""A dimension this near, in parts of the sheet's diagonal, to a known point of linework that was not read may sit on
+that."""
+
+LABELLED_PINS = 2
+"""Where so many pins have labels, a label beside a corner without a ring may stand for a forgotten pin."""
+
+UNIT_LIKENESS = 2e-3
+"""Two sizes of a length unit that differ by less than this part are one: factors are typed as 25.4, 0.0394, 0.03937."""
+
+LINK_LEAST_METRES = 1e-3
+LINK_GREATEST_METRES = 100.0
+"""A mechanism whose longest link lies outside these (1 mm, 100 m) was hardly meant so: its unit is doubtful."""
+
+LINK_USUAL_METRES = 10.0
+"""Another unit is offered in its place where the longest link is no longer than this in it."""
+
+PLACE_DIGITS = 6
+PLACE_LEAST_DECIMALS = 3
+PLACE_MOST_DECIMALS = 9
+"""A place is written to six digits of its larger coordinate, but to three decimals where that gives fewer (a micrometre
+on a sheet in millimetres), and to no more than nine: what is smaller in any unit used is rounding noise."""
+
+LOOP_FIRM = 3e-3
+"""What a large linkage's loop equations say with less weight than this, once others are solved, is settled last:
+coordinates typed to decimals leave up to 3e-4 of an equation that repeats others."""
+
+LOOP_NOISE = 1e-9
+"""... and below this it is rounding error."""
+
+NEARBY_JOINTS = 8
+"""In a large mechanism a motion is judged against the fastest within so many joints."""
+
+POINT_OF_DIAGONAL = 0.1
+"""A dimension with a single point (an ordinate) is taken to be this part of the sheet's diagonal in size."""
+
+COMPARED_SNAP_OF_REACH = 1e-3
+"""A sheet that is turned or moved by less than this part of the tolerance is not turned or moved."""
+
+TRUST_LINKS = 80
+"""How far speeds can be trusted is worked out for mechanisms of at most so many links: its cost grows with the cube."""
+
+LOW_TRANSMISSION_DEGREES = 40.0
+"""A transmission angle below this makes forces and wear large (common practice, no source)."""
+
+NEAR_DEAD_CENTRE_DEGREES = 5.0
+"""Links within this angle of a dead centre are near it: less than a tenth of a push (the sine of the angle) turns the
+link that is pushed there (common practice, no source)."""
+
+DOUBTFUL_SPEED_RELATIVE = 0.01
+"""A speed that may be off by more than this part of itself is doubtful: stated speeds are rounded to three figures."""
+
+SPEED_OF_FASTEST = 0.01
+"""A speed below this part of the greatest of its kind is held against that part: one near zero is off by much of itself
+without being of any weight."""
+
+CLIPPED_STROKE_REACH = 1.5
+"""A loose line within so many lengths of a frame symbol's stroke, parallel to it and no longer, is one of its strokes
+that was clipped: the strokes of a hatch stand about as far apart as they are long."""
+
+EXPLODED_LABELS = 3
+EXPLODED_STROKES = 3
+EXPLODED_LETTER_IN_DIAMETERS = 3.0
+"""At so many pins at least, and half of all, stand so many strokes of letters at least, no line or polyline of them
+longer than so many ring diameters: labels were exploded into lines."""
+
+STILL_JOINT = 1e-4
+"""Links whose relative motion at a joint is below this part of the fastest near it may be rigid together: taken out of
+the linkage, they are asked again."""
+
+STRESS_OF_TOLERANCE = 30.0
+"""Forces of a self-stress below so many times the rank tolerance are nothing: what was taken for dependent though
+rounded gives other constraints a share of up to the tolerance over their own smallest singular values."""
+
+FREE_RELATIVE = 1e-9
+"""Free motions of a part of a linkage count from this part of the greatest; what lies below is rounding error."""
+
+DRIVES_FREELY = 1e-3
+"""A link that moves with less than this part of the fastest of its part is no good place for a drive."""
+
+FLAT_TRIANGLE = 1e-6
+"""A velocity triangle whose smallest sine is below this is no triangle: its sides lie along one line, and the sine rule
+would divide rounding noise of 1e-16 by less than this."""
+
+POLE_LINES_CROSS = 1e-3
+"""Two lines that meet at less than this angle (its sine) show no pole: on paper nobody could say where they cross."""
+
+WORKING_UNKNOWNS = 12
+"""Equations in more unknowns than these that hang together are counted but not written out: nobody solves them by
+hand (common practice, no source)."""
+
+TRUST_OF_SIZE = 1e-6
+"""A drawing that is known to this part of its smallest link gives speeds to more digits than anybody reads; what they
+may be off by is then worked out only where it is shown."""
+
+BOUNDS_SHOWN_OF = 40
+"""On a sheet of at most so many mechanisms what each speed may be off by is shown, however small."""

@@ -24,6 +24,7 @@ ROOMS = [
     "reading",
     "options",
     "analysis",
+    "requirements",
     "rules",
     "configuration",
     "inspection",
@@ -43,7 +44,9 @@ STEPS = [
     "reading.parts",
     "reading.texts",
     "reading.drives",
+    "reading.requirements",
     "reading.mechanisms",
+    "reading.lengths",
     "reading.observations",
     "reading.records",
     "reading.read",
@@ -54,6 +57,7 @@ HOMES = {
     "networkx": ("analysis",),
     "rich": ("reports.terminal", "cli"),
     "argparse": ("cli",),
+    "tomllib": ("configuration",),
 }
 LONGEST_FILE = 400
 LONGEST_FUNCTION = 60

@@ -2,6 +2,7 @@ from __future__ import annotations
 
 import subprocess
 import sys
+from pathlib import Path
 
 import pytest
 
@@ -30,6 +31,11 @@ def heavy_modules_after(statement: str) -> str:
         "from dxfcheck.cli import main; main(['check'])",
         "from dxfcheck.cli import main; main(['check', 'x.dxf', '--drive', 'nonsense'])",
         "from dxfcheck.cli import main; main(['explain'])",
+        "from dxfcheck.cli import main; main(['compare', '--help'])",
+        "from dxfcheck.cli import main; main(['compare', 'x.dxf'])",
+        "from dxfcheck.cli import main; main(['accept', '--help'])",
+        "from dxfcheck.cli import main; main(['accept', 'x.dxf'])",
+        "from dxfcheck.cli import main; main(['settings'])",
     ],
 )
 def test_what_reads_no_drawing_loads_no_slow_library(statement: str) -> None:
@@ -70,3 +76,23 @@ def test_check_hands_its_options_on(monkeypatch: pytest.MonkeyPatch) -> None:
 def test_check_refuses_an_option_before_it_opens_the_file() -> None:
     with pytest.raises(dxfcheck.OptionInvalid, match="above 0"):
         dxfcheck.check("not-there.dxf", tolerance=-1.0)
+
+
+def test_check_uses_a_settings_file_only_where_one_is_named(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    seen: list[Settings] = []
+
+    def inspect(path: str, settings: Settings) -> dxfcheck.DrawingReport:
+        seen.append(settings)
+        return tipper(path)
+
+    monkeypatch.setattr(inspection, "inspect_drawing", inspect)
+    monkeypatch.chdir(tmp_path)
+    Path("dxfcheck.toml").write_text('[reading]\nunits = "in"\n', encoding="utf-8")
+    dxfcheck.check("a.dxf")
+    dxfcheck.check("a.dxf", settings="dxfcheck.toml", tolerance=1.0)
+    assert seen == [
+        Settings(),
+        Settings(unit="in", unit_source="settings", tolerance=1.0, files=("dxfcheck.toml",)),
+    ]
+    with pytest.raises(dxfcheck.SettingsInvalid, match="no such settings file"):
+        dxfcheck.check("a.dxf", settings="gone.toml")

@@ -6,6 +6,8 @@ from pathlib import Path
 
 import pytest
 
+from dxfcheck.configuration.effective import settings_for
+from dxfcheck.configuration.settings_file import read_settings_file
 from dxfcheck.inspection import inspect_drawing
 from dxfcheck.rules import all_rules
 from dxfcheck.rules.finding import Finding
@@ -16,7 +18,8 @@ SETTINGS = {
     "expected-mobility": Settings(expected_mobility=2),
     "unknown-frame-pin": Settings(frame_pins=("E",)),
 }
-"""Rules that look for what the user stated need it stated."""
+"""Rules that look for what the user stated need it stated; what needs a settings file has one beside the drawings."""
+SETTINGS_FILE = read_settings_file(FOLDER / "dxfcheck.toml")
 WEIGHTS = {rule.name: {rule.severity, *rule.also} for rule in all_rules()}
 NAMES = sorted(rule.name for rule in all_rules())
 
@@ -30,7 +33,9 @@ JOINTS = [
 
 
 def findings(name: str, verdict: str) -> tuple[Finding, ...]:
-    return inspect_drawing(str(FOLDER / f"{name}-{verdict}.dxf"), SETTINGS.get(name, Settings())).findings
+    path = FOLDER / f"{name}-{verdict}.dxf"
+    settings = settings_for(path, SETTINGS_FILE, SETTINGS.get(name, Settings())).settings
+    return inspect_drawing(str(path), settings).findings
 
 
 @pytest.mark.parametrize("name", NAMES)

@@ -8,9 +8,12 @@ from dxfcheck.linkage import Linkage
 __all__ = ["analyse"]
 
 
-def analyse(linkage: Linkage) -> Analysis:
-    """Mobility, loops, drives, velocities and dead centres of one linkage at the drawn pose."""
+def analyse(linkage: Linkage, *, bounds_shown: bool = True) -> Analysis:
+    """Mobility, loops, drives, velocities and quality of one linkage at the drawn pose.
+
+    ``bounds_shown`` False leaves out what speeds may be off by, unless the drawing is coarse.
+    """
     # Imported here because numpy and networkx take 0.3 s, and whoever wants only the results' types must not pay it.
     from dxfcheck.analysis.analysis import analyse as analyse_linkage  # noqa: PLC0415
 
-    return analyse_linkage(linkage)
+    return analyse_linkage(linkage, bounds_shown=bounds_shown)

@@ -2,31 +2,34 @@
 
 from __future__ import annotations
 
-from functools import partial
-
-from dxfcheck.analysis.constraints import bodies_of, constraint_matrix, freedom_of, rank_tolerance
-from dxfcheck.analysis.dead_centres import dead_centres
+from dxfcheck.analysis.constraints import bodies_of
+from dxfcheck.analysis.dependence import dependent_joints
+from dxfcheck.analysis.free_parts import free_parts
+from dxfcheck.analysis.freedom import freedom_at_pose
 from dxfcheck.analysis.loop_equations import LoopSolution, solve_loops
 from dxfcheck.analysis.loops import link_loops
 from dxfcheck.analysis.mobility import count_mobility
 from dxfcheck.analysis.motions import joint_motions, link_motions, pin_motions, unknown_motions
-from dxfcheck.analysis.results import Analysis, DeadCentre, DriveVerdict
+from dxfcheck.analysis.pose import bounds_of, finite_of, pose_of
+from dxfcheck.analysis.results import Analysis, DriveVerdict, Mobility
+from dxfcheck.analysis.rigid_parts import rigid_parts
 from dxfcheck.analysis.topology import topology_of
+from dxfcheck.analysis.transmission import advantages
 from dxfcheck.analysis.velocity import Motion, apply_drives
-from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.tolerances import AT_LIMIT_OF_BEND, AT_LIMIT_RELATIVE
+from dxfcheck.linkage import Linkage
 
 __all__ = ["analyse"]
 
 
-def analyse(linkage: Linkage) -> Analysis:
-    """Mobility, loops, drives, velocities and dead centres of one linkage at the drawn pose.
+def analyse(linkage: Linkage, *, bounds_shown: bool = True) -> Analysis:
+    """Mobility, loops, drives, velocities and quality of one linkage at the drawn pose.
 
-    An ungrounded linkage is counted with its held link and gets no speeds; its drives are not judged.
+    An ungrounded linkage is counted with its held link and gets no speeds; its drives are not judged. Where the bounds
+    of its speeds are not shown, they are worked out only if the drawing is coarse.
     """
     topology = topology_of(linkage)
     bodies = bodies_of(linkage)
-    freedom = freedom_of(constraint_matrix(linkage, topology, bodies), partial(rank_tolerance, linkage))
+    freedom = freedom_at_pose(linkage, topology, bodies)
     at_pose = len(freedom.motions)
     mobility = count_mobility(linkage, at_pose)
     if not linkage.grounded:
@@ -41,29 +44,41 @@ def analyse(linkage: Linkage) -> Analysis:
             solved=False,
             disagreement=None,
             rank_gap=freedom.gap,
+            rigid_parts=rigid_parts(linkage, topology, bodies, freedom.motions) if _is_unusual(mobility) else None,
+            dependent_joints=dependent_joints(linkage, topology, bodies) if at_pose > mobility.count else (),
         )
-    centres = dead_centres(linkage)
-    limits = [_limit_of(drive, centres) for drive in linkage.drives]
-    motion, verdicts = apply_drives(linkage, bodies, freedom.motions, limits)
+    pose = pose_of(linkage)
+    motion, verdicts = apply_drives(linkage, topology, bodies, freedom.motions, pose.dead_centres)
     second = solve_loops(linkage, topology, motion.taken, at_pose) if motion.taken else None
+    solved = _is_solved(motion, verdicts)
+    links, joints = link_motions(linkage, motion), joint_motions(linkage, motion)
     return Analysis(
         mobility=mobility,
         loops=link_loops(topology),
-        links=link_motions(linkage, motion),
+        links=links,
         pins=pin_motions(linkage, motion),
-        joints=joint_motions(linkage, motion),
+        joints=joints,
         drives=verdicts,
-        solved=_is_solved(motion, verdicts),
+        solved=solved,
         disagreement=None if second is None else _disagreement(motion, second),
-        dead_centres=centres,
+        dead_centres=pose.dead_centres,
         rank_gap=freedom.gap,
+        rigid_parts=(
+            rigid_parts(linkage, topology, bodies, freedom.motions) if _is_unusual(mobility) or not solved else None
+        ),
+        dependent_joints=dependent_joints(linkage, topology, bodies) if at_pose > mobility.count else (),
+        free_parts=() if solved else free_parts(linkage, motion),
+        near_dead_centres=pose.near_dead_centres,
+        transmissions=pose.transmissions,
+        advantages=advantages(linkage, links, joints, [linkage.drives[number] for number in motion.taken]),
+        finite=finite_of(linkage, bodies, freedom, mobility),
+        bounds=bounds_of(linkage, topology, motion, wanted=bounds_shown) if solved else None,
     )
 
 
-def _limit_of(drive: Drive, centres: tuple[DeadCentre, ...]) -> float:
-    """The limit grows with the bend at a dead centre that may stop the drive; the driven link there drives itself."""
-    bends = [centre.angle for centre in centres if centre.driven not in {drive.link, drive.against}]
-    return max(AT_LIMIT_RELATIVE, AT_LIMIT_OF_BEND * max(bends, default=0.0))
+def _is_unusual(mobility: Mobility) -> bool:
+    """Whether the count says less than there is, or that nothing can move: then parts are looked at for themselves."""
+    return mobility.at_pose != mobility.count or mobility.count <= 0
 
 
 _KEPT = frozenset({"taken", "repeats"})
@@ -74,12 +89,12 @@ def _is_solved(motion: Motion, verdicts: tuple[DriveVerdict, ...]) -> bool:
 
 
 def _disagreement(motion: Motion, second: LoopSolution) -> float:
-    """Greatest difference between the two formulations over the greatest speed, among the settled links.
+    """Greatest difference between the two formulations among the settled links, over the greatest speed.
 
-    Compared are every link's turn times its size, and the velocity of its centre: together they bound the difference
-    at its pins.
+    Where all that is settled rests, that is the speed of what the drives move without settling it. Compared are every
+    link's turn times its size, and the velocity of its centre: together they bound the difference at its pins.
     """
-    differences, speeds = [0.0], [0.0]
+    differences, speeds = [0.0], [motion.fastest]
     for link, body in enumerate(motion.bodies):
         if motion.settled[link]:
             turn, velocity = motion.turns[link], motion.centres[link]

@@ -35,7 +35,21 @@ from dxfcheck.tolerances import (
     TYPED_STEPS,
 )
 
-__all__ = ["Body", "Freedom", "bodies_of", "constraint_matrix", "freedom_of", "rank_tolerance"]
+__all__ = [
+    "CELLS",
+    "ROWS",
+    "Body",
+    "Freedom",
+    "Matrix",
+    "bodies_of",
+    "constraint_matrix",
+    "freedom_of",
+    "rank_of",
+    "rank_tolerance",
+    "rows_of_joint",
+    "tolerance_for",
+    "typed_step",
+]
 
 Matrix = NDArray[np.float64]
 
@@ -95,7 +109,7 @@ def constraint_matrix(linkage: Linkage, topology: Topology, bodies: list[Body]) 
     rows, cells = _layout(topology)
     values: list[float] = []
     for joint, place in zip(linkage.joints, topology.joints, strict=True):
-        fill = _ROWS[place.acts_as]
+        fill = ROWS[place.acts_as]
         for link, sign in ((joint.first, -1.0), (joint.second, 1.0)):
             if link != topology.frame:
                 values += fill(joint, bodies[link], sign, bodies)
@@ -107,15 +121,19 @@ def constraint_matrix(linkage: Linkage, topology: Topology, bodies: list[Body]) 
 def rank_tolerance(linkage: Linkage) -> float:
     """Below what part of the greatest a singular value counts as zero: more where coordinates were typed by hand."""
     places = [pin.at for pin in linkage.pins]
-    diagonal = 2.0 * _extent(places)
-    step = _typed_step([value for place in places for value in (place.real, place.imag)])
+    return tolerance_for(typed_step(places), 2.0 * _extent(places))
+
+
+def tolerance_for(step: float, diagonal: float) -> float:
+    """The same for links within a diagonal whose places lie on a grid of that step (0: full precision)."""
     if not diagonal or not step:
         return RANK_RELATIVE
     return min(RANK_GREATEST, max(RANK_RELATIVE, RANK_OF_STEP * step / diagonal))
 
 
-def _typed_step(values: list[float]) -> float:
+def typed_step(places: list[Point]) -> float:
     """The coarsest grid of decimals on which all coordinates lie; 0 for whole numbers and for full precision."""
+    values = [value for place in places for value in (place.real, place.imag)]
     if all(_on_grid(value, 1.0) for value in values):
         return 0.0
     return next((step for step in TYPED_STEPS if all(_on_grid(value, step) for value in values)), 0.0)
@@ -126,7 +144,7 @@ def _on_grid(value: float, step: float) -> bool:
 
 
 def freedom_of(matrix: Matrix, tolerance: Callable[[], float]) -> Freedom:
-    """Null space of the constraints by singular values; which of them count as zero, _rank_of says.
+    """Null space of the constraints by singular values; which of them count as zero, rank_of says.
 
     ``tolerance`` is called only where a small value makes the question arise.
     """
@@ -136,7 +154,7 @@ def freedom_of(matrix: Matrix, tolerance: Callable[[], float]) -> Freedom:
     values, right = _singular_of(matrix)
     rank = len(values)
     if values[-1] <= RANK_GREATEST * values[0]:
-        rank = _rank_of(values, tolerance())
+        rank = rank_of(values, tolerance())
     zero = values[rank] if rank < len(values) else 0.0
     if right is None and rank == rows:
         right = np.linalg.qr(matrix.T, mode="complete")[0].T
@@ -160,7 +178,7 @@ LARGE_MATRIX = 60
 """From so many columns on (twenty moving links) two calls without vectors cost less than one with them."""
 
 
-def _rank_of(values: list[float], tolerance: float) -> int:
+def rank_of(values: list[float], tolerance: float) -> int:
     """How many singular values count, in falling order: those above the tolerance and what follows in small steps.
 
     Source of the problem: numpy's own tolerance is for rounding in the computer, not for coordinates typed by hand.
@@ -206,19 +224,24 @@ def _direction(joint: Joint) -> Point:
 
 
 CellFiller = Callable[[Joint, Body, float, list[Body]], tuple[float, ...]]
-_ROWS: dict[JointKind, CellFiller] = {
+ROWS: dict[JointKind, CellFiller] = {
     "pin": _pin_cells,
     "slide": _slide_cells,
     "pin in slot": _slot_cells,
     "rolling": _rolling_cells,
 }
-_CELLS: dict[JointKind, tuple[tuple[int, int], ...]] = {
+CELLS: dict[JointKind, tuple[tuple[int, int], ...]] = {
     "pin": ((0, 0), (0, 1), (1, 0), (1, 2)),
     "slide": ((0, 0), (1, 0), (1, 1), (1, 2)),
     "pin in slot": ((0, 0), (0, 1), (0, 2)),
     "rolling": ((0, 0), (0, 1), (0, 2)),
 }
-"""Row and column, within a joint's rows and a link's columns, of each cell that _ROWS fills."""
+"""Row and column, within a joint's rows and a link's columns, of each cell that ROWS fills."""
+
+
+def rows_of_joint(acts_as: JointKind) -> int:
+    """How many constraints a joint of this kind states."""
+    return 1 + CELLS[acts_as][-1][0]
 
 
 @lru_cache(maxsize=TOPOLOGIES_KEPT)
@@ -231,8 +254,8 @@ def _layout(topology: Topology) -> tuple[int, NDArray[np.intp]]:
         for link in (joint.first, joint.second):
             if link != topology.frame:
                 start = row * columns + 3 * (link - (link > topology.frame))
-                cells += [start + down * columns + right for down, right in _CELLS[joint.acts_as]]
-        row += 1 + max(down for down, _ in _CELLS[joint.acts_as])
+                cells += [start + down * columns + right for down, right in CELLS[joint.acts_as]]
+        row += rows_of_joint(joint.acts_as)
     places = np.array(cells, dtype=np.intp)
     places.setflags(write=False)
     return row, places

@@ -113,11 +113,12 @@ def _slotted_pairs(
     slides: dict[int, int],
 ) -> Iterator[_Pair]:
     """The link with a slot and each link of the pin in it, both ways round, where a pin or slide on the frame holds."""
-    for number, knee, owner in _slots(topology, pins, ends):
+    blocks = _blocks(topology, ends)
+    for number, knee, owner in _slots(topology, pins, ends, blocks):
         links, fixed = pins[knee]
         if fixed or topology.frame in (owner, *links):
             continue
-        carriers = [link for link in links if link != owner and not _is_block(topology, ends, link)]
+        carriers = [link for link in links if link != owner and link not in blocks]
         for pusher, driven in [pair for link in carriers for pair in ((link, owner), (owner, link))]:
             pair = _Pair(knee, None, (min(pusher, driven), max(pusher, driven)), driven, across=number)
             held = [pin for pin in ends[driven] if pins[pin][1]]
@@ -127,20 +128,24 @@ def _slotted_pairs(
                 yield pair._replace(end=held[0])
 
 
-def _slots(topology: Topology, pins: _Pins, ends: list[list[int]]) -> Iterator[tuple[int, int, int]]:
+def _slots(topology: Topology, pins: _Pins, ends: list[list[int]], blocks: set[int]) -> Iterator[tuple[int, int, int]]:
     """Joint, pin, and link with the slot (or guide), of every pin in a slot and every block with one pin."""
     for number, joint in enumerate(topology.joints):
         for inner, owner in ((joint.first, joint.second), (joint.second, joint.first)):
             if joint.kind == "pin in slot" and joint.pin is not None and inner in pins[joint.pin][0]:
                 yield number, joint.pin, owner
-            elif joint.kind == "slide" and inner != topology.frame and _is_block(topology, ends, inner):
+            elif joint.kind == "slide" and inner != topology.frame and inner in blocks:
                 yield number, ends[inner][0], owner
 
 
-def _is_block(topology: Topology, ends: list[list[int]], link: int) -> bool:
-    """Whether a link has one pin and one slide and nothing else."""
-    other = [joint.kind for joint in topology.joints if joint.kind != "pin" and link in (joint.first, joint.second)]
-    return other == ["slide"] and len(ends[link]) == 1
+def _blocks(topology: Topology, ends: list[list[int]]) -> set[int]:
+    """The links that have one pin and one slide and nothing else."""
+    other: dict[int, list[str]] = {}
+    for joint in topology.joints:
+        if joint.kind != "pin":
+            for link in {joint.first, joint.second}:
+                other.setdefault(link, []).append(joint.kind)
+    return {link for link, kinds in other.items() if kinds == ["slide"] and len(ends[link]) == 1}
 
 
 def _other_end(ends: list[int], knee: int) -> int:

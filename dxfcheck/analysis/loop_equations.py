@@ -20,10 +20,12 @@ from typing import NamedTuple
 import numpy as np
 from numpy.typing import NDArray
 
-from dxfcheck.analysis.loops import independent_loops, places_of
+from dxfcheck.analysis.loops import Loop, Place, independent_loops, places_of
+from dxfcheck.analysis.loops_in_order import Passage, rates_in_order
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology
 from dxfcheck.geometry import Point
-from dxfcheck.linkage import Linkage
+from dxfcheck.linkage import Joint, Linkage
+from dxfcheck.tolerances import DENSE_LINKS
 
 __all__ = ["LoopSolution", "solve_loops"]
 
@@ -31,15 +33,15 @@ Matrix = NDArray[np.float64]
 
 
 class LoopSolution(NamedTuple):
-    """Turn (rad/s) and velocity of the point at ``origin`` for every link; the links the frame does not reach rest."""
+    """Turn (rad/s) of every link, and velocity of its point at ``places``; what the frame does not reach rests."""
 
-    origin: Point
+    places: list[Point]
     turns: list[float]
     velocities: list[Point]
 
     def velocity(self, link: int, place: Point) -> Point:
         """Velocity of a link's point at a place, length units a second."""
-        return self.velocities[link] + 1j * self.turns[link] * (place - self.origin)
+        return self.velocities[link] + 1j * self.turns[link] * (place - self.places[link])
 
 
 class _Signs(NamedTuple):
@@ -56,6 +58,8 @@ class _Signs(NamedTuple):
 
 def solve_loops(linkage: Linkage, topology: Topology, drives: tuple[int, ...], freedom: int) -> LoopSolution:
     """The motion under the drives with these numbers, where the loops leave as many motions as ``freedom`` says."""
+    if topology.links > DENSE_LINKS:
+        return _solve_in_order(linkage, topology, drives, freedom)
     signs = _signs_of(topology)
     origin, size = _middle_of(linkage)
     shares = _shares(linkage, signs, origin, size)
@@ -64,7 +68,7 @@ def solve_loops(linkage: Linkage, topology: Topology, drives: tuple[int, ...], f
     rates = _joint_rates(loops, rows, wanted, freedom)
     turns, across, up = ((shares * rates) @ signs.to_link.T).tolist()
     velocities = [complex(right, upward) * size for right, upward in zip(across, up, strict=True)]
-    return LoopSolution(origin, turns, velocities)
+    return LoopSolution([origin] * topology.links, turns, velocities)
 
 
 def _middle_of(linkage: Linkage) -> tuple[Point, float]:
@@ -138,21 +142,15 @@ def _signs_of(topology: Topology) -> _Signs:
     for number, joint in enumerate(topology.joints):
         unknowns += [(number, False)] if joint.acts_as != "slide" else []
         unknowns += [(number, True)] if joint.acts_as != "pin" else []
-    steps = {
-        (start, place, end): _step(topology, joints.joints, start, end)
-        for place, joints in enumerate(places_of(topology))
-        for start in joints.links
-        for end in joints.links
-    }
+    places = places_of(topology)
     loops = independent_loops(topology)
     around = np.zeros((len(loops), len(topology.joints)))
     for row, loop in zip(around, loops, strict=True):
-        for start, place, end in zip(loop.links, loop.places, loop.links[1:] + loop.links[:1], strict=True):
-            _add(row, steps[start, place, end])
+        _add(row, _round(loop, topology, places))
     to_link = np.zeros((topology.links, len(topology.joints)))
     for start, place, end in _tree(topology):
         to_link[end] = to_link[start]
-        _add(to_link[end], steps[start, place, end])
+        _add(to_link[end], _step(topology, places[place].joints, start, end))
     passed = [number for number, _ in unknowns]
     around, to_link = around[:, passed], to_link[:, passed]
     turning = np.array([not slides for _, slides in unknowns], dtype=float)
@@ -161,7 +159,15 @@ def _signs_of(topology: Topology) -> _Signs:
     return _Signs(tuple(unknowns), turning, around, to_link)
 
 
-def _step(topology: Topology, joints: tuple[int, ...], start: int, end: int) -> tuple[tuple[int, float], ...]:
+def _round(loop: Loop, topology: Topology, places: tuple[Place, ...]) -> Passage:
+    """The joints that a loop passes, and their sense."""
+    passed: list[tuple[int, float]] = []
+    for start, place, end in zip(loop.links, loop.places, loop.links[1:] + loop.links[:1], strict=True):
+        passed += _step(topology, places[place].joints, start, end)
+    return tuple(passed)
+
+
+def _step(topology: Topology, joints: tuple[int, ...], start: int, end: int) -> Passage:
     """The joints passed from one link to another at one place, and their sense: a pin's joints leave its first link."""
     step: list[tuple[int, float]] = []
     if start != end:
@@ -172,7 +178,7 @@ def _step(topology: Topology, joints: tuple[int, ...], start: int, end: int) -> 
     return tuple(step)
 
 
-def _add(row: Matrix, step: tuple[tuple[int, float], ...]) -> None:
+def _add(row: Matrix, step: Passage) -> None:
     for number, sense in step:
         row[number] += sense
 
@@ -194,3 +200,59 @@ def _tree(topology: Topology) -> list[tuple[int, int, int]]:
                     waiting.append(other)
                     steps.append((link, number, other))
     return steps
+
+
+def _solve_in_order(linkage: Linkage, topology: Topology, drives: tuple[int, ...], freedom: int) -> LoopSolution:
+    """The same for a large linkage, loop after loop."""
+    places = places_of(topology)
+    before: list[tuple[int, Passage] | None] = [None] * topology.links
+    tree = _tree(topology)
+    for start, place, end in tree:
+        before[end] = (start, _step(topology, places[place].joints, start, end))
+    loops = [_round(loop, topology, places) for loop in independent_loops(topology)]
+    acts_as: list[str] = [joint.acts_as for joint in topology.joints]
+    wanted: list[tuple[Passage | int, float, float]] = []
+    for drive in [linkage.drives[number] for number in drives]:
+        joint = None if drive.joint is None else linkage.joints[drive.joint]
+        if drive.kind == "slide" and drive.joint is not None and joint is not None:
+            sense = 1.0 if (joint.first, joint.second) == (drive.against, drive.link) else -1.0
+            wanted.append((drive.joint, sense, drive.rate))
+        else:
+            wanted.append((_between(drive.against, drive.link, before), 1.0, drive.rate))
+    rates = rates_in_order(linkage, acts_as, loops, wanted, _middle_of(linkage)[1], freedom)
+    solution = LoopSolution([0j] * topology.links, [0.0] * topology.links, [0j] * topology.links)
+    for start, _, end in tree:
+        _, passed = before[end] or (start, ())
+        motion = solution.places[start], solution.turns[start], solution.velocities[start]
+        for number, sense in passed:
+            motion = _passed(motion, linkage.joints[number], acts_as[number], sense, rates.of(number))
+        solution.places[end], solution.turns[end], solution.velocities[end] = motion
+    return solution
+
+
+PointMotion = tuple[Point, float, Point]
+"""A place, a link's turn, and the velocity of its point there."""
+
+
+def _passed(before: PointMotion, joint: Joint, acts_as: str, sense: float, rates: tuple[float, float]) -> PointMotion:
+    """The motion of the link behind a joint, from that of the link before it and the joint's own two rates."""
+    place, turn, velocity = before
+    if acts_as != "slide":
+        velocity += 1j * turn * (joint.at - place)
+        place = joint.at
+        turn += sense * rates[0]
+    if acts_as != "pin":
+        along = joint.direction or 0j
+        velocity += sense * rates[1] * (along * 1j if joint.kind == "rolling" else along)
+    return place, turn, velocity
+
+
+def _between(start: int, end: int, before: list[tuple[int, Passage] | None]) -> Passage:
+    """The joints on the way from one link to another through the tree."""
+    way: list[tuple[int, float]] = []
+    for link, sense in ((start, -1.0), (end, 1.0)):
+        step = before[link]
+        while step is not None:
+            way += [(joint, sense * along) for joint, along in step[1]]
+            step = before[step[0]]
+    return tuple(way)

@@ -12,7 +12,9 @@ from typing import NamedTuple
 
 import networkx as nx
 
+from dxfcheck.analysis.short_loops import short_cycles
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology
+from dxfcheck.tolerances import DENSE_LINKS
 
 __all__ = ["Loop", "Place", "independent_loops", "link_loops", "places_of"]
 
@@ -51,8 +53,12 @@ def independent_loops(topology: Topology) -> tuple[Loop, ...]:
 
     Candidates are all cycles made of two shortest paths from one link and the edge that closes them; the shortest
     independent ones are kept (J.D. Horton, A polynomial-time algorithm to find the shortest cycle basis of a graph,
-    SIAM J. Computing 16, 1987; from memory). networkx's own minimum_cycle_basis took 70 s for 240 links, this 1 s.
+    SIAM J. Computing 16, 1987; from memory). networkx's own minimum_cycle_basis took 70 s for 240 links, this 1 s; in
+    large linkages the search is bounded (short_loops.py).
     """
+    if topology.links > DENSE_LINKS:
+        cycles = short_cycles(_neighbours(topology), topology.links, topology.frame)
+        return _sorted([_oriented(cycle, topology) for cycle in cycles])
     graph = _graph_of(topology)
     wanted = graph.number_of_edges() - graph.number_of_nodes() + nx.number_connected_components(graph)
     bits = {frozenset(edge): 1 << number for number, edge in enumerate(graph.edges)}
@@ -64,7 +70,22 @@ def independent_loops(topology: Topology) -> tuple[Loop, ...]:
             kept.append(_oriented(cycle, topology))
         if len(kept) == wanted:
             break
-    return tuple(sorted(kept, key=lambda loop: (len(loop.links), loop.links, loop.places)))
+    return _sorted(kept)
+
+
+def _sorted(loops: list[Loop]) -> tuple[Loop, ...]:
+    return tuple(sorted(loops, key=lambda loop: (len(loop.links), loop.links, loop.places)))
+
+
+def _neighbours(topology: Topology) -> list[list[int]]:
+    """The graph of _graph_of as lists: the places of each link, and the links of each place."""
+    places = places_of(topology)
+    neighbours: list[list[int]] = [[] for _ in range(topology.links + len(places))]
+    for number, place in enumerate(places, start=topology.links):
+        neighbours[number] = list(place.links)
+        for link in place.links:
+            neighbours[link].append(number)
+    return neighbours
 
 
 def link_loops(topology: Topology) -> tuple[tuple[int, ...], ...]:

@@ -3,10 +3,26 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import Literal, NamedTuple
 
 from dxfcheck.geometry import Point
 
-__all__ = ["Analysis", "DeadCentre", "DriveVerdict", "JointMotion", "LinkMotion", "Mobility", "PinMotion"]
+__all__ = [
+    "Advantage",
+    "Analysis",
+    "DeadCentre",
+    "DependentJoints",
+    "DriveVerdict",
+    "FiniteMotion",
+    "FreePart",
+    "JointMotion",
+    "LinkMotion",
+    "Mobility",
+    "PinMotion",
+    "RigidParts",
+    "SpeedBounds",
+    "Transmission",
+]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -76,31 +92,6 @@ class DriveVerdict:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
-class Analysis:
-    """Everything worked out for one linkage at the drawn pose.
-
-    ``links``, ``pins``, ``joints`` and ``drives`` run parallel to the linkage's own. ``loops`` are link indices, one
-    tuple for each independent loop. ``solved`` is True where every link's motion is determined by drives that agree.
-    ``disagreement`` is the greatest difference between the two formulations, relative to the greatest speed; None
-    where nothing was solved. ``dead_centres`` are (joint-line) places where a link cannot be driven by its neighbour.
-    ``rank_gap`` holds the smallest singular value that counted and the greatest that was taken for zero, both over the
-    greatest of all (0.0 where there is none); a first below RANK_DOUBTFUL makes the freedom at the pose doubtful.
-    None where there are no constraints.
-    """
-
-    mobility: Mobility
-    loops: tuple[tuple[int, ...], ...]
-    links: tuple[LinkMotion, ...]
-    pins: tuple[PinMotion, ...]
-    joints: tuple[JointMotion, ...]
-    drives: tuple[DriveVerdict, ...]
-    solved: bool
-    disagreement: float | None
-    dead_centres: tuple[DeadCentre, ...] = ()
-    rank_gap: tuple[float, float] | None = None
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
 class DeadCentre:
     """Two links in line at their common pin, so that one cannot drive the other there.
 
@@ -115,3 +106,140 @@ class DeadCentre:
     driven: int | None
     angle: float
     square: bool = False
+
+
+class Transmission(NamedTuple):
+    """At a pin one link pushes another; indices. ``angle`` is the transmission angle, radians, 0 to pi/2.
+
+    ``square`` says that it is taken to the normal of a slide or slot: the pressure angle is then pi/2 less it.
+    """
+
+    pin: int
+    pusher: int
+    pushed: int
+    angle: float
+    square: bool
+
+
+class Advantage(NamedTuple):
+    """How a driven turn or slide compares with that of a link held by the frame: drive speed over output speed.
+
+    ``link`` is the output; ``turns`` says that it turns on the frame, else it slides there. ``ratio`` is the size of
+    drive over output; None where the output stands still: the advantage is then without limit. Where both turn or both
+    slide it is a plain number, else a length (drive turns, output slides: radians to a length unit) or its inverse.
+    """
+
+    link: int
+    turns: bool
+    ratio: float | None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class FiniteMotion:
+    """What small finite steps showed.
+
+    ``verdict`` is 'through' (every freedom of the pose is there after the step too), 'momentary' (some are not) or
+    'locked' (no step closes). ``turn`` is how far the fastest link turned, radians (or slid, over its size), and
+    ``opening`` what was then left open where the loop is told most, in the drawing's unit. ``misfit`` is the error of
+    one length that would open it so, ``limit`` what was taken for the drawing's own rounding, both in that unit.
+    ``freedom`` is the freedom at the pose that was reached, 0 where none was.
+    """
+
+    verdict: Literal["through", "momentary", "locked"]
+    turn: float
+    opening: float
+    misfit: float
+    limit: float
+    freedom: int
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class SpeedBounds:
+    """By how much each speed may be off, parallel to the linkage's own links, pins and joints.
+
+    ``resolution`` is what each coordinate may be off by, in the drawing's unit. ``links`` rad/s; ``pins`` the size of
+    the velocity, length units a second; ``turns`` the joints' relative turning, rad/s, and ``slides`` their sliding,
+    length units a second (0.0 at a joint that does not slide).
+    """
+
+    resolution: float
+    links: tuple[float, ...]
+    pins: tuple[float, ...]
+    turns: tuple[float, ...]
+    slides: tuple[float, ...]
+
+
+class RigidParts(NamedTuple):
+    """Links that form rigid sub-structures at the pose, whatever the drives do; indices, ascending.
+
+    ``with_frame`` are the moving links that are rigid with the frame; ``others`` groups of two or more links that are
+    rigid in themselves and move.
+    """
+
+    with_frame: tuple[int, ...]
+    others: tuple[tuple[int, ...], ...]
+
+
+class DependentJoints(NamedTuple):
+    """One redundant constraint: a minimal set of joints whose constraints depend on one another; indices, ascending.
+
+    ``joints_to_go`` are the joints of the set, and ``links_to_go`` the links, each of which alone can be taken away
+    without adding a freedom, and the constraint is then redundant no longer.
+    """
+
+    joints: tuple[int, ...]
+    joints_to_go: tuple[int, ...]
+    links_to_go: tuple[int, ...]
+
+
+class FreePart(NamedTuple):
+    """Links, joined to one another, that the drives leave free; indices, ascending.
+
+    ``freedoms`` is the number of their motions still free. ``turns`` are the links, ``slides`` the joints on the frame,
+    any one of which would settle the whole part if driven against the frame, those on the frame's own pins first; none
+    where there is more than one freedom.
+    """
+
+    links: tuple[int, ...]
+    freedoms: int
+    turns: tuple[int, ...]
+    slides: tuple[int, ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Analysis:
+    """Everything worked out for one linkage at the drawn pose.
+
+    ``links``, ``pins``, ``joints`` and ``drives`` run parallel to the linkage's own. ``loops`` are link indices, one
+    tuple for each independent loop. ``solved`` is True where every link's motion is determined by drives that agree.
+    ``disagreement`` is the greatest difference between the two formulations, relative to the greatest speed; None
+    where nothing was solved. ``dead_centres`` are (joint-line) places where a link cannot be driven by its neighbour.
+    ``rank_gap`` holds the smallest singular value that counted and the greatest that was taken for zero, both over the
+    greatest of all (0.0 where there is none); a first below RANK_DOUBTFUL makes the freedom at the pose doubtful.
+    None where there are no constraints.
+    ``near_dead_centres`` are those within NEAR_DEAD_CENTRE_DEGREES that are no dead centres yet. ``transmissions`` say
+    how links push one another away from the drive, ``advantages`` how the drive's speed compares with the outputs'.
+    ``finite`` says what becomes of freedoms beyond the count after a small step; None where there are none, or where it
+    could not be judged. ``bounds`` say by how much speeds may be off; None where they were not worked out.
+    ``rigid_parts`` and ``dependent_joints`` are worked out where the freedom at the pose differs from the count or the
+    count is not above 0, ``rigid_parts`` also where not all is solved; ``free_parts`` where a grounded linkage is not.
+    """
+
+    mobility: Mobility
+    loops: tuple[tuple[int, ...], ...]
+    links: tuple[LinkMotion, ...]
+    pins: tuple[PinMotion, ...]
+    joints: tuple[JointMotion, ...]
+    drives: tuple[DriveVerdict, ...]
+    solved: bool
+    disagreement: float | None
+    dead_centres: tuple[DeadCentre, ...] = ()
+    rank_gap: tuple[float, float] | None = None
+    near_dead_centres: tuple[DeadCentre, ...] = ()
+    transmissions: tuple[Transmission, ...] = ()
+    advantages: tuple[Advantage, ...] = ()
+    finite: FiniteMotion | None = None
+    bounds: SpeedBounds | None = None
+    rigid_parts: RigidParts | None = None
+    dependent_joints: tuple[DependentJoints, ...] = ()
+    free_parts: tuple[FreePart, ...] = ()

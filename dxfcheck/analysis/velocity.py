@@ -15,12 +15,23 @@ import numpy as np
 from numpy.typing import NDArray
 
 from dxfcheck.analysis.constraints import Body
-from dxfcheck.analysis.results import DriveVerdict
+from dxfcheck.analysis.elimination import Condition, freedom_by_fronts
+from dxfcheck.analysis.results import DeadCentre, DriveVerdict
+from dxfcheck.analysis.topology import Topology
+from dxfcheck.analysis.vicinity import fastest_nearby, links_near
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.tolerances import DETERMINED_RELATIVE, DRIVE_AGREES_RELATIVE, DRIVE_DEPENDENT_RELATIVE
+from dxfcheck.tolerances import (
+    AT_LIMIT_OF_BEND,
+    AT_LIMIT_RELATIVE,
+    DENSE_LINKS,
+    DETERMINED_RELATIVE,
+    DRIVE_AGREES_RELATIVE,
+    DRIVE_DEPENDENT_RELATIVE,
+    RANK_NOISE,
+)
 
-__all__ = ["Motion", "RateRow", "apply_drives"]
+__all__ = ["Motion", "RateRow", "apply_drives", "rate_row"]
 
 Matrix = NDArray[np.float64]
 
@@ -44,7 +55,8 @@ class Motion:
     """Motion of every link (the held one at rest) and what the drives leave free.
 
     ``turns`` are rad/s, ``centres`` the velocities of the bodies' centres. ``free`` holds the motions still free, one a
-    row of (w, vx, vy) for each link in turn, the held link too; it has no rows where everything is settled.
+    row of (w, vx, vy) for each link in turn, the held link too; it has no rows where everything is settled. What a link
+    does in them below its speed in ``still_below`` counts as nothing; that list is empty where nothing is free.
     """
 
     bodies: list[Body]
@@ -54,6 +66,7 @@ class Motion:
     settled: list[bool]
     fastest: float
     taken: tuple[int, ...]
+    still_below: list[float]
 
     def velocity(self, link: int, place: Point) -> Point:
         """Velocity of the point of a link that lies at a place, length units a second; only where it is settled."""
@@ -66,18 +79,18 @@ class Motion:
         sizes = self.bodies[first].size, self.bodies[second].size
         least = min(sizes)
         free = self.free[:, 3 * second] * (least / sizes[1]) - self.free[:, 3 * first] * (least / sizes[0])
-        return self._is_still(free)
+        return self._is_still(free, first, second)
 
     def point_settled(self, link: int, place: Point) -> bool:
         """Whether the drives settle the velocity of a link's point at a place."""
-        return self.settled[link] or self._is_still(self._free_velocity(link, place))
+        return self.settled[link] or self._is_still(self._free_velocity(link, place), link)
 
     def slide_settled(self, first: int, second: int, place: Point, direction: Point) -> bool:
         """Whether the drives settle the second link's speed against the first along a direction at a place."""
         if self.settled[first] and self.settled[second]:
             return True
         free = self._free_velocity(second, place) - self._free_velocity(first, place)
-        return self._is_still((free * direction.conjugate()).real)
+        return self._is_still((free * direction.conjugate()).real, first, second)
 
     def _free_velocity(self, link: int, place: Point) -> NDArray[np.complex128]:
         arm = (place - self.bodies[link].centre) / self.bodies[link].size
@@ -85,31 +98,52 @@ class Motion:
         velocity: NDArray[np.complex128] = across + 1j * up + 1j * arm * turn
         return velocity
 
-    def _is_still(self, free: NDArray[np.float64] | NDArray[np.complex128]) -> bool:
-        return bool(np.linalg.norm(free) <= DETERMINED_RELATIVE * _fastest(self.free))
+    def _is_still(self, free: NDArray[np.float64] | NDArray[np.complex128], *links: int) -> bool:
+        least = max([self.still_below[link] for link in links])
+        return bool(np.linalg.norm(free) <= least)
 
 
 def apply_drives(
-    linkage: Linkage, bodies: list[Body], motions: Matrix, limits: Sequence[float]
+    linkage: Linkage, topology: Topology, bodies: list[Body], motions: Matrix, centres: Sequence[DeadCentre]
 ) -> tuple[Motion, tuple[DriveVerdict, ...]]:
     """Takes the drives one after another; what contradicts, or cannot drive, is left out and told.
 
-    ``motions`` is the orthonormal basis of what the constraints allow. A drive that moves its link by less than
-    its part in ``limits`` of the fastest motion is at its limit. ValueError for a sliding drive without a slide.
+    ``motions`` is the orthonormal basis of what the constraints allow. A drive that hardly moves its link beside the
+    fastest motion near it is at its limit; the limit grows with the bend at a dead centre there that may stop the
+    drive. ValueError for a sliding drive without a slide.
     """
     fastest = _fastest(motions)
     choice = _Choice([0.0] * len(motions), [])
     verdicts: list[DriveVerdict] = []
-    for drive, limit in zip(linkage.drives, limits, strict=True):
-        row = _rate_row(drive, linkage, bodies)
-        verdict, choice = _judge(drive.rate, row.scale, _effect(row, motions), choice, limit * fastest)
+    for drive in linkage.drives:
+        row = rate_row(drive, linkage, bodies)
+        least = _least_effect(drive, topology, motions, centres, fastest)
+        verdict, choice = _judge(drive.rate, row.scale, _effect(row, motions), choice, least)
         verdicts.append(verdict)
     taken = tuple([number for number, verdict in enumerate(verdicts) if verdict.outcome == "taken"])
-    motion = _motion_of(linkage.frame, bodies, motions, choice, taken)
+    free = _left_free(linkage, topology, bodies, motions, choice, taken)
+    motion = _motion_of(topology, bodies, motions, choice, taken, free)
     return motion, tuple(verdicts)
 
 
-def _rate_row(drive: Drive, linkage: Linkage, bodies: list[Body]) -> RateRow:
+def _least_effect(
+    drive: Drive, topology: Topology, motions: Matrix, centres: Sequence[DeadCentre], fastest: float
+) -> float:
+    """What a drive must move its link by; the driven link of a dead centre drives itself, and is not stopped there."""
+    near = links_near(topology, (drive.link, drive.against))
+    bends = [
+        centre.angle
+        for centre in centres
+        if centre.driven not in {drive.link, drive.against} and (near is None or not near.isdisjoint(centre.links))
+    ]
+    limit = max(AT_LIMIT_RELATIVE, AT_LIMIT_OF_BEND * max(bends, default=0.0))
+    if near is None:
+        return limit * fastest
+    columns = [3 * (link - (link > topology.frame)) + part for link in near for part in range(3)]
+    return max(limit * _fastest(motions[:, columns]), RANK_NOISE * fastest)
+
+
+def rate_row(drive: Drive, linkage: Linkage, bodies: list[Body]) -> RateRow:
     """The drive over the unknowns, scaled so that no coefficient is above 1."""
     along = None
     place = 0j
@@ -183,19 +217,23 @@ def _fastest(motions: Matrix) -> float:
     return float(np.sqrt(np.einsum("ij,ij->j", motions, motions).max(initial=0.0)))
 
 
-def _motion_of(frame: int, bodies: list[Body], motions: Matrix, choice: _Choice, taken: tuple[int, ...]) -> Motion:
+def _motion_of(
+    topology: Topology, bodies: list[Body], motions: Matrix, choice: _Choice, taken: tuple[int, ...], free: Matrix
+) -> Motion:
     speeds = _speeds(motions, choice.parts)
     fastest = max([abs(speed) for speed in speeds], default=0.0)
-    held = 3 * frame
+    held = 3 * topology.frame
     speeds[held:held] = [0.0, 0.0, 0.0]
     turns = [speeds[3 * link] / body.size + 0.0 for link, body in enumerate(bodies)]
     centres = [complex(across, up) for across, up in zip(speeds[1::3], speeds[2::3], strict=True)]
-    free = _still_free(motions, choice.settled, held)
-    settled = [True] * len(bodies)
+    settled, still_below = [True] * len(bodies), list[float]()
     if len(free):
         speed_of_link = np.sqrt(np.square(free).sum(axis=0).reshape(-1, 3).max(axis=1))
-        settled = (speed_of_link <= DETERMINED_RELATIVE * _fastest(free)).tolist()
-    return Motion(bodies, turns, centres, free, settled, fastest, taken)
+        least = DETERMINED_RELATIVE * fastest_nearby(topology, speed_of_link)
+        if topology.links > DENSE_LINKS:
+            np.maximum(least, RANK_NOISE * speed_of_link.max(), out=least)
+        settled, still_below = (speed_of_link <= least).tolist(), least.tolist()
+    return Motion(bodies, turns, centres, free, settled, fastest, taken, still_below)
 
 
 def _speeds(motions: Matrix, parts: list[float]) -> list[float]:
@@ -207,14 +245,38 @@ def _speeds(motions: Matrix, parts: list[float]) -> list[float]:
     return speeds
 
 
-def _still_free(motions: Matrix, settled: list[list[float]], held: int) -> Matrix:
-    """The allowed motions that the drives leave, with columns of zeros for the held link."""
-    if len(settled) == len(motions):
+def _left_free(
+    linkage: Linkage,
+    topology: Topology,
+    bodies: list[Body],
+    motions: Matrix,
+    choice: _Choice,
+    taken: tuple[int, ...],
+) -> Matrix:
+    """The allowed motions that the drives leave, with columns of zeros for the held link.
+
+    In a large linkage they are worked out anew with the drives at rest: combined from motions of all of it, what is at
+    rest beside them would keep rounding error.
+    """
+    if len(choice.settled) == len(motions):
         return _NOTHING_FREE
-    if settled:
-        complement = np.linalg.svd(np.array(settled), full_matrices=True)[2][len(settled) :]
+    if taken and topology.links > DENSE_LINKS:
+        rows = [rate_row(linkage.drives[number], linkage, bodies) for number in taken]
+        motions = freedom_by_fronts(linkage, topology, bodies, tuple([_at_rest(row, topology) for row in rows])).motions
+    elif taken:
+        complement = np.linalg.svd(np.array(choice.settled), full_matrices=True)[2][len(taken) :]
         motions = complement @ motions
+    held = 3 * topology.frame
     return np.concatenate([motions[:, :held], np.zeros((len(motions), 3)), motions[:, held:]], axis=1)
+
+
+def _at_rest(row: RateRow, topology: Topology) -> Condition:
+    """A drive that stands still, by the links and their unknowns."""
+    cells = []
+    for column, weight in row.cells:
+        moving, which = divmod(column, 3)
+        cells.append((moving + (moving >= topology.frame), which, weight))
+    return Condition(tuple(cells))
 
 
 _NOTHING_FREE: Matrix = np.zeros((0, 0))

@@ -8,9 +8,9 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from dxfcheck.cli.arguments import parse_arguments
-from dxfcheck.cli.messages import fault_text, say
+from dxfcheck.cli.messages import fault_text, say, say_all
 from dxfcheck.cli.status import FAULT, INTERRUPTED, UNUSABLE
-from dxfcheck.errors import DxfCheckError
+from dxfcheck.errors import DxfCheckError, SettingsInvalid
 
 if TYPE_CHECKING:
     from dxfcheck.cli.arguments import Request
@@ -27,6 +27,9 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return _run(parse_arguments(arguments))
     except SystemExit as stop:  # argparse leaves this way, after --help as after wrong usage
         return stop.code if isinstance(stop.code, int) else UNUSABLE
+    except SettingsInvalid as error:
+        say_all(error.problems)
+        return UNUSABLE
     except DxfCheckError as error:
         say(str(error))
         return UNUSABLE
@@ -50,6 +53,18 @@ def _run(request: Request) -> int:
         from dxfcheck.cli.explain import run_explain  # noqa: PLC0415
 
         return run_explain(request)
+    if request.accept is not None:
+        from dxfcheck.cli.accept import run_accept  # noqa: PLC0415
+
+        return run_accept(request.accept, request)
+    if request.compare is not None:
+        from dxfcheck.cli.compare import run_compare  # noqa: PLC0415
+
+        return run_compare(request.compare, request)
+    if request.command == "settings":
+        from dxfcheck.cli.settings_command import run_settings  # noqa: PLC0415
+
+        return run_settings(request)
     from dxfcheck.cli.run import run_drawings  # noqa: PLC0415
 
     return run_drawings(request)

@@ -4,14 +4,18 @@ from __future__ import annotations
 
 import argparse
 import math
+import sys
 from collections.abc import Sequence
 from dataclasses import dataclass, field
 from typing import NoReturn
 
 from dxfcheck import __version__
+from dxfcheck.cli.accept_arguments import AcceptRequest, accept_request, add_accept, joined_places
+from dxfcheck.cli.compare_arguments import COMPARE_STATUSES, CompareRequest, add_compare, compare_request
 from dxfcheck.cli.messages import say
 from dxfcheck.cli.output import prepare_output
 from dxfcheck.cli.status import FAIL_LEVELS, UNUSABLE
+from dxfcheck.errors import OptionInvalid
 from dxfcheck.options import settings_from
 from dxfcheck.reports.caution import CAUTION
 from dxfcheck.settings import Settings
@@ -21,8 +25,8 @@ __all__ = ["Request", "parse_arguments"]
 STATUSES = """exit status:
   0    nothing at or above the fail level
   1    findings at or above it
-  2    the command could not do its work: wrong options, a path that is not
-       there, a file that is no DXF
+  2    the command could not do its work: wrong options or settings, a path
+       that is not there, a file that is no DXF
   3    a fault of dxfcheck itself
   130  interrupted
 """
@@ -36,7 +40,10 @@ DRIVE = (
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Request:
-    """What was asked for; ``jobs`` is None where the command may choose, ``json`` '-' for standard output."""
+    """What was asked for; ``jobs`` is None where the command may choose, ``json`` '-' for standard output.
+
+    ``settings`` are what the options state; ``settings_file`` takes the place of the one above each drawing.
+    """
 
     command: str
     paths: tuple[str, ...] = ()
@@ -45,7 +52,12 @@ class Request:
     jobs: int | None = None
     json: str | None = None
     quiet: bool = False
+    working: bool = False
     rule: str | None = None
+    settings_file: str | None = None
+    starter: bool = False
+    accept: AcceptRequest | None = None
+    compare: CompareRequest | None = None
 
 
 class _Parser(argparse.ArgumentParser):
@@ -60,25 +72,41 @@ class _Parser(argparse.ArgumentParser):
 def parse_arguments(arguments: Sequence[str] | None) -> Request:
     """The request; SystemExit after --help, --version or wrong usage, OptionInvalid for a value that cannot be used."""
     prepare_output()
-    stated = _parser().parse_args(arguments)
+    stated = _parser().parse_args(joined_places(sys.argv[1:] if arguments is None else arguments))
     if stated.command == "explain":
         return Request(command="explain", rule=stated.rule)
     checking = stated.command == "check"
+    listing = stated.command == "settings"
     settings = settings_from(
         drives=stated.drive,
         frame=stated.frame.split(",") if stated.frame is not None else (),
         units=stated.units,
         tolerance=stated.tolerance,
-        expect_mobility=stated.expect_mobility if checking else None,
+        expect_mobility=stated.expect_mobility if checking or listing else None,
     )
+    if stated.command == "accept":
+        return Request(
+            command="accept", settings=settings, settings_file=stated.settings, accept=accept_request(stated)
+        )
+    if stated.command == "compare":
+        return Request(
+            command="compare",
+            settings=settings,
+            settings_file=stated.settings,
+            json=stated.json,
+            compare=compare_request(stated),
+        )
     return Request(
         command=stated.command,
-        paths=tuple(stated.paths),
+        paths=(stated.path,) if listing else tuple(stated.paths),
         settings=settings,
         fail_on=stated.fail_on if checking else "never",
-        jobs=stated.jobs,
+        jobs=None if listing else stated.jobs,
         json=stated.json,
         quiet=stated.quiet if checking else False,
+        working=_working(stated) if checking else False,
+        settings_file=stated.settings,
+        starter=stated.starter if listing else False,
     )
 
 
@@ -97,17 +125,26 @@ def _parser() -> argparse.ArgumentParser:
     _add_check(check)
     read = _command(commands, "read", "show how drawings were read: pins, links, joints, frame, drives, the account")
     _add_drawings(read)
+    _add_settings(_command(commands, "settings", "the settings that hold for a drawing or folder, and who states each"))
+    accept = _command(commands, "accept", "accept findings of a drawing, with the reason, in its settings file")
+    add_accept(accept)
+    _add_settings_options(accept)
+    compare = _command(commands, "compare", "what changed between two drawings as a mechanism", COMPARE_STATUSES)
+    add_compare(compare)
+    _add_settings_options(compare)
     explain = _command(commands, "explain", "what a rule looks for, why it matters, how to mend it")
     explain.add_argument("rule", nargs="?", metavar="RULE", help="a rule's name; all rules in a table without it")
     return parser
 
 
-def _command(commands: argparse._SubParsersAction[_Parser], name: str, description: str) -> argparse.ArgumentParser:
+def _command(
+    commands: argparse._SubParsersAction[_Parser], name: str, description: str, statuses: str = STATUSES
+) -> argparse.ArgumentParser:
     return commands.add_parser(
         name,
         help=description,
         description=f"{description[0].upper()}{description[1:]}.",
-        epilog=STATUSES,
+        epilog=statuses,
         formatter_class=argparse.RawDescriptionHelpFormatter,
         allow_abbrev=False,
     )
@@ -117,12 +154,29 @@ def _add_drawings(parser: argparse.ArgumentParser) -> None:
     """What check and read have in common: the drawings and how they are to be understood."""
     add = parser.add_argument
     add("paths", nargs="+", metavar="PATH", help="a DXF file, or a folder: every *.dxf below it")
+    _add_settings_options(parser)
+    add("--jobs", type=_jobs, metavar="N", help="drawings checked at the same time")
+    add("--json", metavar="FILE", help="write a JSON report; - is standard output, and then no other report")
+
+
+def _add_settings(parser: argparse.ArgumentParser) -> None:
+    """What the command settings understands."""
+    add = parser.add_argument
+    add("path", nargs="?", default=".", metavar="PATH", help="a DXF file or a folder; by default the current folder")
+    _add_settings_options(parser)
+    add("--expect-mobility", type=_whole, metavar="N", help="the mobility each mechanism ought to have")
+    add("--starter", action="store_true", help="print a settings file to start from, made from what is drawn")
+    add("--json", metavar="FILE", help="write them for programs; - is standard output, and then no other report")
+
+
+def _add_settings_options(parser: argparse.ArgumentParser) -> None:
+    """The options that state settings, or where they stand."""
+    add = parser.add_argument
+    add("--settings", metavar="FILE", help="a settings file, in place of the nearest dxfcheck.toml above each drawing")
     add("--drive", action="append", default=[], metavar="TEXT", help=DRIVE)
     add("--frame", metavar="PINS", help="pins that are fixed: A,D")
     add("--units", metavar="UNIT", help="the length unit of the drawing, whatever its header says: mm")
     add("--tolerance", type=_length, metavar="T", help="how far apart ends may lie and still meet, in that unit")
-    add("--jobs", type=_jobs, metavar="N", help="drawings checked at the same time")
-    add("--json", metavar="FILE", help="write a JSON report; - is standard output, and then no other report")
 
 
 def _add_check(parser: argparse.ArgumentParser) -> None:
@@ -137,6 +191,18 @@ def _add_check(parser: argparse.ArgumentParser) -> None:
         help="least severity that gives status 1: error (default), warning, note, never",
     )
     add("--quiet", action="store_true", help="one line a finding, and one at the end")
+    add("--working", action="store_true", help="the speeds of each mechanism worked out as by hand, step by step")
+
+
+def _working(stated: argparse.Namespace) -> bool:
+    """Whether the hand working is asked for; OptionInvalid where there would be no place to print it."""
+    if stated.working and stated.quiet:
+        msg = "--quiet leaves no room for the working; take one of the two"
+        raise OptionInvalid(msg)
+    if stated.working and stated.json == "-":
+        msg = "--json - prints nothing else, so no working; give --json a file name"
+        raise OptionInvalid(msg)
+    return bool(stated.working)
 
 
 def _length(text: str) -> float:

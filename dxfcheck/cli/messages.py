@@ -4,17 +4,19 @@ from __future__ import annotations
 
 import sys
 import traceback
+from collections.abc import Iterable
 from pathlib import Path
 
 from dxfcheck import __version__
 
-__all__ = ["fault_text", "one_line", "say"]
+__all__ = ["fault_text", "one_line", "say", "say_all"]
 
 DOING = {
     "drawing": "loading the drawing",
     "reading": "reading the sketch",
     "analysis": "working out the motion",
     "rules": "applying the rules",
+    "comparison": "comparing the drawings",
     "reports": "writing the report",
 }
 """What was being done, by the room of the house in which it failed."""
@@ -27,6 +29,12 @@ def say(text: str) -> None:
         sys.stderr.flush()
     except (OSError, ValueError):
         return
+
+
+def say_all(problems: Iterable[str]) -> None:
+    """Each on a line of its own."""
+    for problem in problems:
+        say(problem)
 
 
 def one_line(text: str) -> str:

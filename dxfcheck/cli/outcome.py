@@ -20,7 +20,7 @@ class Outcome(NamedTuple):
 
 
 def exit_status(outcomes: Iterable[Outcome], fail_on: str) -> int:
-    """3 before 2 before 1: the status names the gravest of what happened."""
+    """3 before 2 before 1: the status names the gravest of what happened; what was accepted does not count."""
     reports = []
     for outcome in outcomes:
         if outcome.fault is not None:
@@ -29,4 +29,5 @@ def exit_status(outcomes: Iterable[Outcome], fail_on: str) -> int:
     if any(report.status == "unreadable" for report in reports):
         return UNUSABLE
     counted = () if fail_on == "never" else SEVERITIES[: SEVERITIES.index(fail_on) + 1]
-    return FOUND if any(finding.severity in counted for report in reports for finding in report.findings) else CLEAN
+    weighing = (finding.severity for report in reports for finding in report.findings if finding.accepted is None)
+    return FOUND if any(severity in counted for severity in weighing) else CLEAN

@@ -7,14 +7,20 @@ from collections.abc import Iterator, Sequence
 from pathlib import Path
 from typing import NamedTuple
 
+from dxfcheck.settings import Settings
+
 __all__ = ["Target", "find_targets"]
 
 
 class Target(NamedTuple):
-    """One drawing to check, or a path that leads to none and the ``problem`` with it."""
+    """One drawing to check, or a path that leads to none and the ``problem`` with it.
+
+    ``settings`` are those of this drawing, None where the run's own hold.
+    """
 
     path: str
     problem: str | None = None
+    settings: Settings | None = None
 
 
 def find_targets(paths: Sequence[str]) -> list[Target]:

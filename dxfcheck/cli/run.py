@@ -2,17 +2,17 @@
 
 from __future__ import annotations
 
-import gc
 import sys
-from collections.abc import Callable, Iterator, Sequence
-from contextlib import contextmanager
+from collections.abc import Iterator, Sequence
 from pathlib import Path
 
 from dxfcheck.cli.arguments import Request
+from dxfcheck.cli.configured import with_settings
 from dxfcheck.cli.messages import say
 from dxfcheck.cli.outcome import Outcome, exit_status
 from dxfcheck.cli.output import drop_output
 from dxfcheck.cli.paths import find_targets
+from dxfcheck.cli.progress import counted
 from dxfcheck.cli.status import CLEAN, UNUSABLE
 from dxfcheck.cli.workers import inspect_all
 from dxfcheck.errors import OptionInvalid
@@ -30,9 +30,7 @@ def run_drawings(request: Request) -> int:
     """Check or read every drawing asked for, report, and return the exit status."""
     if request.json is not None and request.json != STANDARD_OUTPUT:
         refuse_target(Path(request.json))
-    targets = find_targets(request.paths)
-    if len(targets) > 1:
-        gc.enable()  # the process starts without (see __main__): one drawing leaves nothing worth collecting, many do
+    targets = with_settings(find_targets(request.paths), request.settings, request.settings_file)
     outcomes: list[Outcome] = []
     terminal = None if request.json == STANDARD_OUTPUT else TerminalReport(sys.stdout)
     try:
@@ -60,7 +58,7 @@ def _print_one(terminal: TerminalReport, report: DrawingReport, request: Request
     elif request.quiet:
         terminal.quiet(report)
     else:
-        terminal.drawing(report)
+        terminal.drawing(report, working=request.working)
 
 
 def _finish(reports: Sequence[DrawingReport], terminal: TerminalReport | None, request: Request) -> None:
@@ -89,24 +87,7 @@ def _tell_of_trouble(outcome: Outcome) -> None:
 
 
 def _with_progress(outcomes: Iterator[Outcome], total: int, request: Request) -> Iterator[Outcome]:
-    """The outcomes, with a bar on standard error where a person waits and nothing else shows that work goes on."""
+    """The outcomes, counted on standard error where a person waits there and nothing else shows that work goes on."""
     reports_show = sys.stdout.isatty() and not request.quiet and request.json != STANDARD_OUTPUT
-    if total <= 1 or reports_show or not sys.stderr.isatty():
-        yield from outcomes
-        return
-    with _bar(total) as advance:
-        for outcome in outcomes:
-            advance()
-            yield outcome
-
-
-@contextmanager
-def _bar(total: int) -> Iterator[Callable[[], None]]:
-    """A bar of so many steps on standard error; yields what takes it one step on."""
-    # Loaded on use: most runs show no bar, and it would cost each of them a tenth of their time.
-    from rich.console import Console  # noqa: PLC0415
-    from rich.progress import Progress  # noqa: PLC0415
-
-    with Progress(console=Console(stderr=True), transient=True) as progress:
-        task = progress.add_task("drawings", total=total)
-        yield lambda: progress.advance(task)
+    waited_for = total > 1 and sys.stderr.isatty() and not reports_show
+    return counted(outcomes, total, sys.stderr) if waited_for else outcomes

@@ -3,18 +3,19 @@
 from __future__ import annotations
 
 import os
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from functools import partial
 from pathlib import Path
 
 from dxfcheck.cli.messages import fault_text
 from dxfcheck.cli.outcome import Outcome
 from dxfcheck.cli.paths import Target
+from dxfcheck.collector import collect_new, keep_all
 from dxfcheck.errors import DrawingUnreadable, OptionInvalid
 from dxfcheck.inspection import DrawingReport
 from dxfcheck.settings import Settings
 
-__all__ = ["faulty", "inspect_all", "inspect_one"]
+__all__ = ["faulty", "inspect_all", "inspect_one", "size_of"]
 
 WORTH_A_POOL = 2_000_000
 """Bytes of drawing, about two seconds of work: from here on starting processes pays."""
@@ -29,11 +30,23 @@ def inspect_all(
     """
     workers = min(jobs or _sensible_jobs(targets), len(targets))
     if workers <= 1:
-        return (inspect_one(settings, target, with_evidence=with_evidence) for target in targets)
+        return _in_turn(targets, partial(inspect_one, settings, with_evidence=with_evidence))
     # Loaded on use: what starts processes takes longer to load than a small drawing to check.
     from dxfcheck.cli.pool import inspect_side_by_side  # noqa: PLC0415
 
     return inspect_side_by_side(targets, partial(inspect_one, settings, with_evidence=with_evidence), workers)
+
+
+def _in_turn(targets: Sequence[Target], inspect: Callable[[Target], Outcome]) -> Iterator[Outcome]:
+    if len(targets) > 1:
+        # Loaded on use: a run that hands its drawings to other processes needs none of it here.
+        import dxfcheck.cli.loaded  # noqa: F401, PLC0415
+
+        keep_all()
+    for target in targets:
+        yield inspect(target)
+        if len(targets) > 1:
+            collect_new()
 
 
 def _unreadable(path: str, error: str) -> DrawingReport:
@@ -42,12 +55,13 @@ def _unreadable(path: str, error: str) -> DrawingReport:
 
 def _sensible_jobs(targets: Sequence[Target]) -> int:
     """All cores for much work, one process for little: starting others takes as long as a dozen small drawings."""
-    if len(targets) <= 1 or sum(_size(target) for target in targets) < WORTH_A_POOL:
+    if len(targets) <= 1 or sum(size_of(target) for target in targets) < WORTH_A_POOL:
         return 1
     return len(os.sched_getaffinity(0)) if hasattr(os, "sched_getaffinity") else os.cpu_count() or 1
 
 
-def _size(target: Target) -> int:
+def size_of(target: Target) -> int:
+    """Bytes of the drawing's file; 0 where there is none."""
     try:
         return Path(target.path).stat().st_size
     except (OSError, ValueError):
@@ -55,14 +69,17 @@ def _size(target: Target) -> int:
 
 
 def inspect_one(settings: Settings, target: Target, *, with_evidence: bool) -> Outcome:
-    """One drawing; whatever goes wrong with it is its own outcome, so that the others are still checked."""
+    """One drawing; whatever goes wrong with it is its own outcome, so that the others are still checked.
+
+    ``settings`` hold where the target has none of its own.
+    """
     if target.problem is not None:
         return Outcome(_unreadable(target.path, target.problem))
     # Loaded on use: ezdxf and networkx are not wanted in the process that only hands out work.
     from dxfcheck.inspection import inspect_drawing  # noqa: PLC0415
 
     try:
-        return Outcome(inspect_drawing(target.path, settings, with_evidence=with_evidence))
+        return Outcome(inspect_drawing(target.path, target.settings or settings, with_evidence=with_evidence))
     except DrawingUnreadable as error:
         return Outcome(_unreadable(target.path, f"{error.reason}; {error.remedy}"))
     except OptionInvalid:

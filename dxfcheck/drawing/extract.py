@@ -11,10 +11,11 @@ from ezdxf.entities.insert import Insert
 
 from dxfcheck.drawing.blocks import Block, Blocks, Level, array_offsets, array_size, placement_of, scales_evenly
 from dxfcheck.drawing.cleaning import clean
-from dxfcheck.drawing.fates import EXTERNAL, HIDDEN, INVISIBLE, OFF_PLANE, PAPER_SPACE
+from dxfcheck.drawing.dimensions import read_dimension
+from dxfcheck.drawing.fates import EXTERNAL, HIDDEN, INVISIBLE, OFF_PLANE, PAPER_SPACE, UNDERLAY
 from dxfcheck.drawing.layers import CONTINUOUS, LayerState, LayerStates
 from dxfcheck.drawing.linework import read_arc, read_circle, read_ellipse, read_line, read_lwpolyline, read_polyline
-from dxfcheck.drawing.marks import read_dimension, read_hatch, read_solid
+from dxfcheck.drawing.marks import read_hatch, read_solid
 from dxfcheck.drawing.placement import FLIPPED, SHEET, Placement
 from dxfcheck.drawing.places import place_of_entity, place_of_primitive
 from dxfcheck.drawing.primitives import BlockUse, Entity, Fate, Notice, Primitive, Source
@@ -28,7 +29,7 @@ from dxfcheck.drawing.shapes import (
     require_numbers,
 )
 from dxfcheck.drawing.text import read_attribute, read_mtext, read_text
-from dxfcheck.tolerances import BLOCK_DEPTH_LIMIT, BLOCK_ENTITY_LIMIT
+from dxfcheck.tolerances import BLOCK_DEPTH_LIMIT, BLOCK_ENTITY_LIMIT, NESTED_DEEP
 
 __all__ = ["Extraction", "Heights", "extract"]
 
@@ -50,11 +51,20 @@ READERS: dict[str, Reader] = {
     "TRACE": read_solid,
 }
 _FATES = {
+    "ACAD_TABLE": Fate("note", "table"),
     "ATTDEF": Fate("note", "attribute definition"),
+    "DGNUNDERLAY": UNDERLAY,
+    "DWFUNDERLAY": UNDERLAY,
+    "IMAGE": UNDERLAY,
     "LEADER": Fate("note", "leader"),
     "MLEADER": Fate("note", "leader"),
     "MULTILEADER": Fate("note", "leader"),
+    "PDFUNDERLAY": UNDERLAY,
     "POINT": Fate("skipped", "a point has no extent"),
+    "RAY": Fate("skipped", "a construction line without an end"),
+    "TOLERANCE": Fate("note", "tolerance frame"),
+    "WIPEOUT": Fate("skipped", "a mask"),
+    "XLINE": Fate("skipped", "a construction line without an end"),
 }
 _OBJECT_COORDINATES = frozenset(
     {"ARC", "ATTRIB", "CIRCLE", "HATCH", "INSERT", "LWPOLYLINE", "POLYLINE", "SOLID", "TEXT", "TRACE"}
@@ -81,6 +91,8 @@ class Extraction(NamedTuple):
     primitives: list[Primitive]
     notices: list[Notice]
     heights: list[Heights]
+    unplotted: frozenset[str] = frozenset()
+    """Layers that hold something and are not plotted."""
 
 
 class _LimitReached(Exception):
@@ -97,7 +109,7 @@ def extract(document: Drawing) -> Extraction:
         if layout.is_any_paperspace:
             for entity in layout:
                 walk.take_paper(entity)
-    return walk.out
+    return walk.out._replace(unplotted=walk.layers.unplotted())
 
 
 class _Walk:
@@ -239,6 +251,7 @@ class _Walk:
                 raise
             del self.out.primitives[start[0] :], self.out.heights[start[1] :]
             self.parts.clear()
+            self.pending.clear()
             self.pending["block-limit", f"block {use.name}: {reached}"] = None
             return _TOO_MUCH
         if len(self.out.primitives) > start[0]:
@@ -261,6 +274,11 @@ class _Walk:
                 f"{copies} copies of {len(block.entities)} entities; at most {BLOCK_ENTITY_LIMIT} a sheet are expanded"
             )
             raise _LimitReached(msg)
+        if copies > 1:
+            self.pending["block-array", f"block {block.name}"] = float(copies)
+        if len(inside.names) >= NESTED_DEEP:
+            nested = ("nested-block", f"block {inside.trail[0].name}")
+            self.pending[nested] = max(self.pending.get(nested) or 0.0, float(len(inside.names)))
         if not scales_evenly(given):
             across, upward = given.get("xscale", 1.0), given.get("yscale", 1.0)
             ratio = abs(across or 1.0) / abs(upward or 1.0)

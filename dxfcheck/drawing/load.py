@@ -12,14 +12,15 @@ from typing import NamedTuple
 
 from ezdxf import recover
 from ezdxf.document import Drawing
-from ezdxf.filemanagement import readfile
+from ezdxf.filemanagement import read, readfile
+from ezdxf.tools.codepage import toencoding
 
 from dxfcheck.drawing.cleaning import clean
 from dxfcheck.drawing.primitives import Notice
 from dxfcheck.drawing.shapes import LIBRARY_FAULTS
 from dxfcheck.errors import DrawingUnreadable
 
-__all__ = ["Opened", "open_drawing"]
+__all__ = ["Opened", "open_drawing", "stated_encoding"]
 
 _BINARY_DXF = b"AutoCAD Binary DXF"
 _OTHER_KINDS: tuple[tuple[bytes, str], ...] = (
@@ -33,6 +34,10 @@ _OTHER_KINDS: tuple[tuple[bytes, str], ...] = (
 _SAVE_AS_DXF = "save the drawing as DXF"
 _EXPORT_AGAIN = "export it again from the program that made it"
 _HEAD_LENGTH = 4096
+_VERSION = re.compile(rb"\$ACADVER\s+1\s+(AC1\d{3})\s")
+_CODE_PAGE = re.compile(rb"\$DWGCODEPAGE\s+3\s+([A-Za-z0-9_]+)\s")
+_FIRST_IN_UTF8 = b"AC1021"
+"""From R2007 on the encoding is UTF-8, whatever code page is named (ezdxf, documentation of ``ezdxf.read``)."""
 _RECORD = re.compile(rb"(?:^|[\r\n])[ \t]*0[ \t]*(?:\r\n|\r|\n)[ \t]*[A-Z3][A-Z0-9_]{2,}[ \t]*(?:[\r\n]|$)")
 """A DXF record's start: group code 0 on a line of its own, then an upper-case name."""
 
@@ -51,13 +56,33 @@ def open_drawing(path: Path) -> Opened:
     _require_dxf(head, shown)
     with _quiet_library():
         try:
-            document = readfile(path)
+            document = _read(path, head)
             document.modelspace()  # raises here, not later, where the drawing has none
             return Opened(document, ())
         except MemoryError as fault:
             raise DrawingUnreadable(shown, "there is not enough memory to read it", "split the drawing") from fault
         except LIBRARY_FAULTS as fault:
             return _repaired(path, shown, head, fault)
+
+
+def _read(path: Path, head: bytes) -> Drawing:
+    """The file as ezdxf reads it, without its reading the header beforehand where the first bytes tell the encoding."""
+    encoding = stated_encoding(head)
+    if encoding is None:
+        return readfile(path)
+    with path.open(encoding=encoding, errors="surrogateescape") as stream:
+        return read(stream)
+
+
+def stated_encoding(head: bytes) -> str | None:
+    """The encoding of a text file that names its version, and in old ones its code page, at its beginning."""
+    version = _VERSION.search(head)
+    if version is None or not head.lstrip().startswith(b"0"):
+        return None
+    if version[1] >= _FIRST_IN_UTF8:
+        return "utf-8"
+    code_page = _CODE_PAGE.search(head)
+    return toencoding(code_page[1].decode("ascii")) if code_page else None
 
 
 def _repaired(path: Path, shown: str, head: bytes, fault: Exception) -> Opened:

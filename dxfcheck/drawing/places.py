@@ -46,7 +46,7 @@ def place_of_entity(entity: DXFEntity, given: Given) -> Point | None:
         for name in _POINT_LISTS:
             points = getattr(entity, name, None)
             if points is not None and not callable(points) and len(points) > 0:
-                return _finite(points[0])
+                return _finite(getattr(points[0], "location", points[0]))  # those of a multiline have more than a place
     except LIBRARY_FAULTS:
         return None
     return None

@@ -88,7 +88,7 @@ def flatten(extraction: Extraction, diagonal: float) -> Extraction:
         notices.append(_off_plane(index, entities[index], extraction.primitives, pieces, level))
         if index not in left:
             entities[index] = entities[index]._replace(fate=OFF_PLANE)
-    return Extraction(entities, primitives, notices, [])
+    return Extraction(entities, primitives, notices, [], extraction.unplotted)
 
 
 def _ground(extraction: Extraction) -> list[Heights]:

@@ -22,6 +22,7 @@ __all__ = [
     "Arc",
     "BlockUse",
     "Dimension",
+    "DimensionStyle",
     "Entity",
     "Fate",
     "Fill",
@@ -129,12 +130,33 @@ class Text(NamedTuple):
     box: tuple[Point, ...]
 
 
+class DimensionStyle(NamedTuple):
+    """What the style of a dimension says of the figure it shows; the defaults are those of a style that says nothing.
+
+    ``factor`` is the linear factor, ``rounding`` the step to which figures are rounded (0: none), ``decimals`` how many
+    are shown (None where it is not stated, or not a number of decimals). ``suffix`` is what is written round the
+    figure ('<> mm'), ``alternate`` the factor of a second figure where one is shown, ``alternate_suffix`` what is
+    written round that. ``feet`` is True where figures are shown in feet and inches.
+    """
+
+    factor: float = 1.0
+    rounding: float = 0.0
+    decimals: int | None = None
+    suffix: str = ""
+    alternate: float | None = None
+    alternate_suffix: str = ""
+    feet: bool = False
+
+
 class Dimension(NamedTuple):
     """A dimension: its text as overridden by hand ('' where measured) and what it measures.
 
-    ``measured`` is in the drawing's unit after the style's linear factor, or degrees for an angular one; None where it
-    cannot be told. ``points`` are the definition points that ought to sit on geometry. ``kind`` is 'linear',
-    'aligned', 'angular', 'diameter', 'radius', 'ordinate' or 'arc'.
+    ``measured`` is in the unit of the drawing (of its own block, where it lies in one) after the style's linear factor,
+    or degrees for an angular one; None where it cannot be told. ``points`` are the definition points that ought to sit
+    on geometry: both feet of a linear or aligned one; two on each leg of an angle, or one on each leg, then its vertex;
+    the centre, then the rim, of a radius; the feet, then the centre, of an arc. ``kind`` is 'linear', 'aligned',
+    'angular', 'diameter', 'radius', 'ordinate' or 'arc'. ``direction`` is the unit vector on the sheet along which a
+    linear one or an ordinate measures. ``underlined`` marks a text as not to scale.
     """
 
     source: Source
@@ -142,6 +164,9 @@ class Dimension(NamedTuple):
     measured: float | None
     points: tuple[Point, ...]
     kind: str
+    direction: Point | None = None
+    style: DimensionStyle = DimensionStyle()
+    underlined: bool = False
 
 
 class Fill(NamedTuple):
@@ -195,8 +220,9 @@ class Notice(NamedTuple):
     ``kind`` is one of: 'recovered' (the file was damaged and repaired), 'emptied' (nothing was left after repair),
     'not-finite' (a coordinate is no number), 'off-plane' (z differs from the rest of the sheet, or tilted),
     'mirrored-plane' (extrusion 0, 0, -1), 'uneven-scale', 'outside-reference' (an external reference),
-    'block-cycle', 'block-limit' (depth or count cap), 'block-missing', 'far-from-origin' (digits lost), 'unread-part'
-    and 'hidden-part' (inside a block reference of which other things were read; detail is why, amount how many).
+    'block-array' (amount copies of a block), 'nested-block' (so many blocks deep), 'block-cycle', 'block-limit' (depth
+    or count cap), 'block-missing', 'far-from-origin' (digits lost; amount is the greatest distance), 'unread-part' and
+    'hidden-part' (inside a block reference of which other things were read; detail is why, amount how many).
     ``detail`` is a phrase for the message; ``amount`` a figure where there is one.
     """
 
@@ -218,6 +244,10 @@ class Sketch:
     notices: tuple[Notice, ...]
     diagonal: float
     """Diagonal of the box round all linework of model space, in the drawing's unit; 0 where there is none."""
+    metric: bool | None = None
+    """Whether the header says that patterns are metric ($MEASUREMENT), None where it says nothing."""
+    unplotted: frozenset[str] = frozenset()
+    """Layers of model space that hold something and are not plotted."""
 
     def handles(self, primitive: Primitive) -> str:
         """The handle a drafter would look for: the top-level entity's."""

@@ -12,7 +12,7 @@ from dxfcheck.drawing.extract import extract
 from dxfcheck.drawing.load import open_drawing
 from dxfcheck.drawing.plane import distance_notice, extent_of, flatten
 from dxfcheck.drawing.primitives import LengthUnit, Notice, Sketch
-from dxfcheck.drawing.units import header_unit, parse_unit
+from dxfcheck.drawing.units import header_metric, header_unit, parse_unit
 from dxfcheck.settings import Settings
 
 __all__ = ["read_sketch"]
@@ -24,7 +24,7 @@ def read_sketch(path: str | Path, settings: Settings) -> Sketch:
     Raises DrawingUnreadable where the file is no DXF or damaged beyond repair, OptionInvalid where the settings name
     an unknown unit.
     """
-    stated = parse_unit(settings.unit) if settings.unit is not None else None
+    stated = parse_unit(settings.unit)._replace(source=settings.unit_source) if settings.unit is not None else None
     with collector_paused():
         document, notices = open_drawing(Path(path))
         return _sketch(str(path), document, stated, notices)
@@ -44,4 +44,6 @@ def _sketch(path: str, document: Drawing, stated: LengthUnit | None, notices: tu
         primitives=tuple(flat.primitives),
         notices=(*notices, *flat.notices, *([far] if far else [])),
         diagonal=extent.diagonal,
+        metric=header_metric(document.header.get("$MEASUREMENT")),
+        unplotted=flat.unplotted,
     )

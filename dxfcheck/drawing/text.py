@@ -23,7 +23,7 @@ from dxfcheck.drawing.shapes import Given, NotRead, Shapes, faces_away, require_
 from dxfcheck.geometry import Point
 from dxfcheck.tolerances import TEXT_LINE_OF_HEIGHT, TEXT_WIDTH_OF_HEIGHT
 
-__all__ = ["decode_line", "decode_paragraphs", "read_attribute", "read_mtext", "read_text"]
+__all__ = ["decode_line", "decode_paragraphs", "read_attribute", "read_mtext", "read_text", "unstack"]
 
 _EMPTY = Fate("note", "an empty text")
 _HIDDEN_ATTRIBUTE = 1
@@ -37,6 +37,7 @@ _LEFT_OF_HALIGN = {0: 0.0, 1: -0.5, 2: -1.0, _MIDDLE: -0.5}
 _BOTTOM_OF_VALIGN = {0: 0.0, 1: 0.0, 2: -0.5, 3: -1.0}
 """Lower edge of the box over its height, by vertical alignment (baseline, bottom, middle, top)."""
 _CODE = re.compile(r"%%(\d{3})")
+_STACK = re.compile(r"\\S([^;\\]*?)([\^/#])([^;\\]*);")
 
 
 def decode_line(raw: str) -> str:
@@ -57,6 +58,21 @@ def decode_paragraphs(raw: str) -> str:
     if any(mark in simple for mark in "\\{}^") or "%%" in simple:
         return clean_lines("".join(plain_mtext(raw, split=False)))
     return clean_lines(simple)
+
+
+def unstack(raw: str) -> str:
+    r"""The raw text of a dimension with figures that stand on one another in a row, and '\X' as the end of a line.
+
+    A fraction stands behind a blank ('5 1/2'), and so do two tolerances or limits, with blanks round their stroke
+    (' +0.1 / -0.1'); one that is alone stands alone.
+    """
+    return _STACK.sub(_in_a_row, raw).replace("\\X", "\\P")
+
+
+def _in_a_row(stack: re.Match[str]) -> str:
+    upper, lower = stack[1].strip(), stack[3].strip()
+    stroke = " / " if stack[2] == "^" else "/"
+    return f" {stroke.join(part for part in (upper, lower) if part)}"
 
 
 def read_text(_entity: DXFEntity, given: Given, source: Source, place: Placement) -> Shapes:

@@ -14,7 +14,7 @@ from dxfcheck.drawing.cleaning import clean
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.errors import OptionInvalid
 
-__all__ = ["LENGTH_UNITS", "header_unit", "parse_unit"]
+__all__ = ["LENGTH_UNITS", "header_metric", "header_unit", "parse_unit"]
 
 _INCH = 0.0254
 _SURVEY_FOOT = 1200.0 / 3937.0
@@ -93,3 +93,8 @@ def header_unit(code: Any) -> LengthUnit:  # noqa: ANN401 - a damaged header may
         return _UNITLESS
     name, metres = _BY_CODE[int(code)]
     return LengthUnit(name, "header", metres)
+
+
+def header_metric(code: Any) -> bool | None:  # noqa: ANN401 - a damaged header may hold anything
+    """What a $MEASUREMENT code says: True for metric (1), False for inches (0), None for anything else."""
+    return {0: False, 1: True}.get(code) if isinstance(code, int) else None

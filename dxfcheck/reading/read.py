@@ -5,11 +5,13 @@ from __future__ import annotations
 from collections import Counter
 
 from dxfcheck.drawing.primitives import Sketch
+from dxfcheck.reading.lengths.observe_lengths import observe_lengths
 from dxfcheck.reading.lines.sheet import Sheet, lay_out
 from dxfcheck.reading.lines.sorting import Sorted, sort_primitives
 from dxfcheck.reading.lines.tolerance import tolerance_for
 from dxfcheck.reading.lines.touches import find_touches
 from dxfcheck.reading.mechanisms.model import Model, make_model
+from dxfcheck.reading.observations.missing_rings import observe_missing_rings
 from dxfcheck.reading.observations.observe_ends import observe_ends
 from dxfcheck.reading.observations.observe_joints import observe_joints
 from dxfcheck.reading.observations.observe_lines import observe_lines
@@ -30,7 +32,7 @@ def read_linkages(sketch: Sketch, settings: Settings, *, with_evidence: bool = T
 
     Without evidence it takes a tenth less time.
     """
-    kinds = sort_primitives(sketch)
+    kinds = sort_primitives(sketch, settings.layers)
     tolerance = tolerance_for(sketch.diagonal, settings, [ring for _, ring in kinds.rings])
     sheet = lay_out(kinds, tolerance)
     parts = find_parts(kinds, sheet, settings)
@@ -41,14 +43,19 @@ def read_linkages(sketch: Sketch, settings: Settings, *, with_evidence: bool = T
         *observe_ends(seen),
         *observe_lines(seen),
         *observe_joints(sketch, seen, parts),
+        *observe_lengths(sketch, kinds, sheet.tolerance, model.linkages),
+        *observe_missing_rings(seen, [text for _, text in kinds.texts], model.names),
         *model.driven.observations,
+        *model.required.observations,
     )
+    decided = (*model.driven.evidence, *model.required.evidence)
     return Reading(
         tolerance=tolerance.t,
         linkages=model.linkages,
-        evidence=(*linkage_evidence(model, sheet, parts), *model.driven.evidence) if with_evidence else (),
+        evidence=(*linkage_evidence(model, sheet, parts), *decided) if with_evidence else (),
         observations=observations,
         account=make_account(sketch, fates_of(sketch, kinds, sheet, parts, model)),
+        requirements=model.required.requirements,
     )
 
 

@@ -7,6 +7,7 @@ from typing import Literal, NamedTuple
 
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Linkage
+from dxfcheck.settings import Requirement
 
 __all__ = ["AccountLine", "Evidence", "Observation", "Reading"]
 
@@ -23,7 +24,7 @@ class AccountLine:
 
 
 class Evidence(NamedTuple):
-    """Why something was read as it was: the entities and the reading rule (1 to 11 of DEVELOPERS.md) that decided.
+    """Why something was read as it was: the entities and the reading rule (1 to 12 of DEVELOPERS.md) that decided.
 
     ``subject`` is 'pin', 'link', 'joint', 'frame', 'drive', 'label' ...; ``name`` its name in the report.
     """
@@ -43,7 +44,9 @@ class Observation:
 
     ``kind`` names the rule it is for. ``subject`` is what it is about (a link's or pin's name), ``detail`` a phrase;
     ``amount`` is the figure found and ``limit`` what it was held against, both in the drawing's unit unless the rule
-    says otherwise. ``severity`` overrides the rule's own where the design gives two.
+    says otherwise. ``severity`` overrides the rule's own where the design gives two. ``snap`` is where what lies at
+    ``at`` ought to be moved to, where that can be told. ``case`` names the case of its rule, where the rule has
+    several that differ in their words or remedies.
     """
 
     kind: str
@@ -56,14 +59,20 @@ class Observation:
     detail: str = ""
     mechanism: str | None = None
     severity: Literal["error", "warning", "note"] | None = None
+    snap: Point | None = None
+    case: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Reading:
-    """A sketch as read. ``tolerance`` is the coincidence tolerance that was used, in the drawing's unit."""
+    """A sketch as read. ``tolerance`` is the coincidence tolerance that was used, in the drawing's unit.
+
+    ``requirements`` are the limits and expectations that notes on the sheet state.
+    """
 
     tolerance: float
     linkages: tuple[Linkage, ...]
     evidence: tuple[Evidence, ...]
     observations: tuple[Observation, ...]
     account: tuple[AccountLine, ...]
+    requirements: tuple[Requirement, ...] = ()

@@ -19,9 +19,12 @@ from dxfcheck.inspection import DrawingReport, MechanismReport
 from dxfcheck.linkage import Linkage
 from dxfcheck.reading.reading import AccountLine, Evidence
 from dxfcheck.reports.caution import CAUTION
+from dxfcheck.reports.json_pose import off_by, pose_items
+from dxfcheck.requirements.verdict import Verdict
 from dxfcheck.rules.finding import SEVERITIES, Finding
+from dxfcheck.settings import Acceptance
 
-__all__ = ["json_text", "report_as_dict"]
+__all__ = ["finding_as_dict", "json_text", "report_as_dict"]
 
 Item = dict[str, Any]
 
@@ -48,7 +51,9 @@ def json_text(reports: Sequence[DrawingReport], *, with_evidence: bool = False) 
         return "".join(_lines(report_as_dict(reports, with_evidence=with_evidence), "")) + "\n"
 
 
-_OPEN = frozenset({"drawings", "account", "mechanisms", "links", "pins", "joints", "findings", "evidence"})
+_OPEN = frozenset(
+    {"drawings", "account", "mechanisms", "links", "pins", "joints", "findings", "evidence", "requirements"}
+)
 """The lists that are laid out one item a line; everything else stays on its line."""
 
 
@@ -88,10 +93,11 @@ def _drawing(report: DrawingReport, *, with_evidence: bool) -> Item:
         "error": report.error and _clean(report.error),
         "units": {"length": unit and unit.name, "source": unit and unit.source},
         "tolerance": report.tolerance,
+        "settings": {"files": [_clean(file) for file in report.settings_files], "rules_off": [*report.rules_off]},
         "account": [_account_line(line) for line in report.account],
         "entities": report.entities,
         "mechanisms": [_mechanism(mechanism) for mechanism in report.mechanisms],
-        "findings": [_finding(finding) for finding in report.findings],
+        "findings": [finding_as_dict(finding) for finding in report.findings],
     }
     if with_evidence:
         item["evidence"] = [_evidence(evidence) for evidence in report.evidence]
@@ -129,6 +135,26 @@ def _mechanism(report: MechanismReport) -> Item:
         "solved": analysis.solved,
         "disagreement": analysis.disagreement,
         "grounded": linkage.grounded,
+        "requirements": [_requirement(verdict) for verdict in report.requirements],
+        **pose_items(linkage, analysis),
+    }
+
+
+def _requirement(verdict: Verdict) -> Item:
+    """One limit or expectation and what became of it; speeds as elsewhere, ratios and mobilities plain."""
+    bounds, stated = verdict.bounds, verdict.requirement
+    return {
+        "stated": _clean(stated.stated),
+        "source": stated.source,
+        "where": _clean(stated.where),
+        "quantity": verdict.quantity,
+        "subject": verdict.subject,
+        "against": verdict.against or None,
+        "actual": _figure(verdict.actual),
+        "least": bounds.least,
+        "greatest": bounds.greatest,
+        "expected": bounds.expected,
+        "outcome": verdict.outcome,
     }
 
 
@@ -143,8 +169,9 @@ def _links(linkage: Linkage, analysis: Analysis) -> list[Item]:
             "angular_velocity": _figure(motion.angular_velocity),
             "pole": _pair(motion.pole),
             "determined": motion.determined,
+            "plus_minus": off_by(analysis.bounds, "links", number),
         }
-        for link, motion in zip(linkage.links, analysis.links, strict=True)
+        for number, (link, motion) in enumerate(zip(linkage.links, analysis.links, strict=True))
     ]
 
 
@@ -159,8 +186,9 @@ def _pins(linkage: Linkage, analysis: Analysis, names: list[str]) -> list[Item]:
             "velocity": _pair(motion.velocity),
             "speed": None if motion.velocity is None else abs(motion.velocity),
             "handles": list(pin.handles),
+            "plus_minus": off_by(analysis.bounds, "pins", number),
         }
-        for pin, motion in zip(linkage.pins, analysis.pins, strict=True)
+        for number, (pin, motion) in enumerate(zip(linkage.pins, analysis.pins, strict=True))
     ]
 
 
@@ -175,9 +203,11 @@ def _joints(linkage: Linkage, analysis: Analysis, names: list[str]) -> list[Item
             "relative_angular_velocity": _figure(motion.relative_angular_velocity),
             "slide_speed": _figure(motion.slide_speed),
             "rubbing_speed": _figure(motion.rubbing_speed),
+            "turn_plus_minus": off_by(analysis.bounds, "turns", number),
+            "slide_plus_minus": (None if motion.slide_speed is None else off_by(analysis.bounds, "slides", number)),
             **({"full": joint.full} if joint.kind == "rolling" else {}),
         }
-        for joint, motion in zip(linkage.joints, analysis.joints, strict=True)
+        for number, (joint, motion) in enumerate(zip(linkage.joints, analysis.joints, strict=True))
     ]
 
 
@@ -197,16 +227,27 @@ def _drives(linkage: Linkage, analysis: Analysis, names: list[str]) -> list[Item
     ]
 
 
-def _finding(finding: Finding) -> Item:
+def finding_as_dict(finding: Finding) -> Item:
+    """One finding, as it stands in every JSON report."""
     return {
         "rule": finding.rule,
         "severity": finding.severity,
-        "message": finding.message,
+        "message": _clean(finding.message),
         "remedy": finding.remedy,
         "at": _pair(finding.at),
         "handles": list(finding.handles),
         "layer": finding.layer,
         "mechanism": finding.mechanism,
+        "accepted": finding.accepted and _acceptance(finding.accepted),
+    }
+
+
+def _acceptance(acceptance: Acceptance) -> Item:
+    """Why a finding was accepted, the last day that holds, and the line of the settings file that says so."""
+    return {
+        "reason": _clean(acceptance.reason),
+        "until": acceptance.until and acceptance.until.isoformat(),
+        "where": _clean(acceptance.where),
     }
 
 
@@ -233,9 +274,12 @@ def _figure(value: float | None) -> float | None:
 
 
 def _totals(reports: Sequence[DrawingReport]) -> Item:
-    found = Counter(finding.severity for report in reports for finding in report.findings)
+    """How many drawings and findings; what was accepted is counted by itself."""
+    found = Counter(
+        "accepted" if finding.accepted else finding.severity for report in reports for finding in report.findings
+    )
     return {
         "drawings": len(reports),
         "unreadable": sum(report.status == "unreadable" for report in reports),
-        **{severity: found[severity] for severity in SEVERITIES},
+        **{counted: found[counted] for counted in (*SEVERITIES, "accepted")},
     }

@@ -26,10 +26,10 @@ class TerminalReport:
     def __init__(self, stream: TextIO) -> None:
         self._lines = LineStream(stream)
 
-    def drawing(self, report: DrawingReport) -> None:
-        """One drawing in full."""
+    def drawing(self, report: DrawingReport, *, working: bool = False) -> None:
+        """One drawing in full; ``working`` adds how the speeds are worked out by hand."""
         with collector_paused():
-            self._lines.block(drawing_lines(report, self._lines.width))
+            self._lines.block(drawing_lines(report, self._lines.width, working=working))
 
     def reading(self, report: DrawingReport) -> None:
         """How one drawing was read."""

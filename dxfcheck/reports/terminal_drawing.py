@@ -3,10 +3,11 @@
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 
-from dxfcheck.inspection import DrawingReport
+from dxfcheck.inspection import DrawingReport, MechanismReport
 from dxfcheck.reports.caution import CAUTION
+from dxfcheck.reports.terminal_accepted import accepted_lines
 from dxfcheck.reports.terminal_brief import MECHANISMS_IN_FULL, brief_mechanisms, few_of_each_rule
 from dxfcheck.reports.terminal_layout import Column, Line, count_of, fold, place, table
 from dxfcheck.reports.terminal_mechanism import mechanism_lines
@@ -18,24 +19,34 @@ STYLES = {"error": "bold red", "warning": "yellow", "note": "cyan"}
 INDENT = " " * 11
 
 
-def drawing_lines(report: DrawingReport, width: int) -> list[Line]:
-    """Everything about one drawing."""
+def drawing_lines(report: DrawingReport, width: int, *, working: bool = False) -> list[Line]:
+    """Everything about one drawing; ``working`` adds to each mechanism shown in full how it is solved by hand."""
     lines = verdict_line(report, width)
     if report.status == "unreadable":
         return lines
     lines += map(Line, fold(how_measured(report), width, "  ", "  "))
     unit = unit_name(report)
-    for mechanism in report.mechanisms[:MECHANISMS_IN_FULL]:
+    for number, mechanism in enumerate(report.mechanisms[:MECHANISMS_IN_FULL]):
         lines += [Line(""), *mechanism_lines(mechanism, unit, width)]
+        if working:
+            lines += _working(mechanism, unit, width, legend=number == 0)
     if len(report.mechanisms) > MECHANISMS_IN_FULL:
         lines += [Line(""), *brief_mechanisms(report.mechanisms[MECHANISMS_IN_FULL:], unit, width)]
-    if report.findings:
+    counting = [finding for finding in report.findings if finding.accepted is None]
+    if counting:
         lines += [Line(""), Line("Findings", "bold")]
-        for item in few_of_each_rule(report.findings):
+        for item in few_of_each_rule(counting):
             lines += (
                 map(Line, fold(item, width, "  ", INDENT)) if isinstance(item, str) else _finding_lines(item, width)
             )
-    return lines
+    return lines + accepted_lines([finding for finding in report.findings if finding.accepted is not None], width)
+
+
+def _working(mechanism: MechanismReport, unit: str, width: int, *, legend: bool) -> list[Line]:
+    # Loaded on use: it brings in numpy and networkx, which printing what others found does not need.
+    from dxfcheck.reports.terminal_working import working_lines  # noqa: PLC0415
+
+    return [Line(""), *working_lines(mechanism, unit, width, legend=legend)]
 
 
 def verdict_line(report: DrawingReport, width: int) -> list[Line]:
@@ -89,11 +100,17 @@ def _driven(report: DrawingReport) -> str:
 
 
 def severities(findings: Sequence[Finding]) -> str:
-    """'1 error, 2 warnings', 'no findings'."""
-    counts = Counter(finding.severity for finding in findings)
-    return (
-        ", ".join(count_of(counts[severity], severity) for severity in SEVERITIES if counts[severity]) or "no findings"
-    )
+    """'1 error, 2 warnings, 3 accepted', 'no findings'."""
+    counts = _counts(findings)
+    counted = ", ".join(count_of(counts[severity], severity) for severity in SEVERITIES if counts[severity])
+    if not counts["accepted"]:
+        return counted or "no findings"
+    return f"{counted}, {counts['accepted']} accepted" if counted else f"no findings but {counts['accepted']} accepted"
+
+
+def _counts(findings: Iterable[Finding]) -> Counter[str]:
+    """How many findings of each weight; what was accepted is counted by itself."""
+    return Counter("accepted" if finding.accepted else finding.severity for finding in findings)
 
 
 def how_measured(report: DrawingReport) -> str:
@@ -107,6 +124,10 @@ def how_measured(report: DrawingReport) -> str:
     if report.tolerance is not None:
         name = unit_name(report)
         parts.append(f"ends within {report.tolerance:.2g} {'units' if name == 'unit' else name} meet")
+    if report.settings_files or report.rules_off:
+        parts.append(f"settings: {', '.join(report.settings_files) or 'stated'}")
+    if report.rules_off:
+        parts.append(f"{count_of(len(report.rules_off), 'rule')} off")
     return "; ".join(parts)
 
 
@@ -147,11 +168,13 @@ def _whereabouts(finding: Finding) -> list[str]:
 
 
 def quiet_lines(report: DrawingReport) -> list[Line]:
-    """One unbroken line a finding, for grep and for hooks."""
+    """One unbroken line a finding, for grep and for hooks; what was accepted is only counted at the end."""
     if report.status == "unreadable":
         return [Line(f"{report.path}: {verdict(report)}")]
     lines = []
     for finding in report.findings:
+        if finding.accepted is not None:
+            continue
         at = "" if finding.at is None else f" at {place(finding.at)}"
         lines.append(Line(f"{report.path}: {finding.severity} {finding.rule}{at}: {finding.message}"))
     return lines
@@ -167,15 +190,18 @@ def quiet_summary(reports: Sequence[DrawingReport]) -> Line:
 
 def summary_lines(reports: Sequence[DrawingReport], width: int) -> list[Line]:
     """A row for each of several drawings."""
-    counts = [Counter(finding.severity for finding in report.findings) for report in reports]
+    counts = [_counts(report.findings) for report in reports]
     columns = [
         Column("drawing", "", [report.path for report in reports], numeric=False),
         Column("mechanisms", "", [_unless_unread(report, len(report.mechanisms)) for report in reports]),
         Column("freedoms", "", [_freedoms(report) for report in reports]),
     ]
-    for severity in SEVERITIES:
-        cells = [_unless_unread(report, count[severity]) for report, count in zip(reports, counts, strict=True)]
-        columns.append(Column(f"{severity}s", "", cells))
+    headings: dict[str, str] = {severity: f"{severity}s" for severity in SEVERITIES}
+    if any(count["accepted"] for count in counts):
+        headings["accepted"] = "accepted"
+    for counted, heading in headings.items():
+        cells = [_unless_unread(report, count[counted]) for report, count in zip(reports, counts, strict=True)]
+        columns.append(Column(heading, "", cells))
     return [Line("Summary", "bold"), *table(columns, width), Line("  " + quiet_summary(reports).text)]
 
 

@@ -23,6 +23,8 @@ def explain_lines(rule: Rule, width: int) -> list[Line]:
         ("looks for", rule.looks_for),
         ("matters", rule.matters),
         ("to mend", rule.remedy),
+        ("settings", _settings(rule)),
+        ("source", rule.source),
     )
     for label, text in facts:
         lines += map(Line, fold(text, width, LABEL.format(label), INDENT))
@@ -46,3 +48,9 @@ def explain_all_lines(rules: Sequence[Rule], width: int) -> list[Line]:
 def _severities(rule: Rule) -> str:
     """'error, warning': as a rule, and in special cases."""
     return ", ".join((rule.severity, *rule.also))
+
+
+def _settings(rule: Rule) -> str:
+    """The settings that change what a rule finds, and the one that every rule has."""
+    own = f"rules.{rule.name} (its severity, or off)"
+    return f"{rule.settings}; {own}" if rule.settings else own

@@ -10,8 +10,7 @@ import re
 from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
-from dxfcheck.geometry import Point
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.rules.wording import place
 
 __all__ = [
     "GAP",
@@ -83,12 +82,6 @@ def figure_column(heading: str, unit: str, values: Iterable[float | str | None],
             text = f"{value:.5g}"
             cells.append(figure(value) if "e" in text else text)
     return Column(heading, unit, cells)
-
-
-def place(point: Point) -> str:
-    """A point as (x, y), in the drawing's unit; a coordinate that is rounding noise beside the other is 0."""
-    noise = SHOWN_AS_ZERO * abs(point)
-    return f"({figure(point.real, noise)}, {figure(point.imag, noise)})"
 
 
 def count_of(number: int, noun: str, plural: str = "") -> str:

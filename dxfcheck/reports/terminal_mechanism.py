@@ -10,6 +10,8 @@ from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.reports.terminal_contacts import contact_sentences, joint_counts, sliding_words
 from dxfcheck.reports.terminal_layout import Line, count_of, figure, fold, listed, place, table
 from dxfcheck.reports.terminal_motion import joint_columns, link_columns, pin_columns, turns_a_minute
+from dxfcheck.reports.terminal_pose import finite_words, push_sentences, trust_words
+from dxfcheck.reports.terminal_requirements import requirements_line
 
 __all__ = ["mechanism_lines"]
 
@@ -30,6 +32,9 @@ def mechanism_lines(report: MechanismReport, unit: str, width: int) -> list[Line
     lines = [Line(text, "bold", len(linkage.name)) for text in fold(_heading(linkage), width, indent=INDENT)]
     for label, text in _facts(linkage, analysis, unit):
         lines += map(Line, fold(text, width, LABEL.format(label), INDENT))
+    if report.requirements:
+        text = requirements_line(report.requirements)
+        lines += map(Line, fold(text, width, LABEL.format("held to"), INDENT))
     if not linkage.grounded:
         return lines
     for columns_of in (link_columns, pin_columns, joint_columns):
@@ -64,7 +69,7 @@ def _heading(linkage: Linkage) -> str:
 def _facts(linkage: Linkage, analysis: Analysis, unit: str) -> Iterator[tuple[str, str]]:
     """Label and text of each line above the tables."""
     yield "mobility", _formula(analysis.mobility)
-    yield "at pose", _freedom_at_pose(analysis)
+    yield "at pose", _freedom_at_pose(analysis, unit)
     for number, loop in enumerate(analysis.loops):
         yield "" if number else "loops", " - ".join(linkage.links[link].name for link in loop)
     if not linkage.grounded:
@@ -75,18 +80,24 @@ def _facts(linkage: Linkage, analysis: Analysis, unit: str) -> Iterator[tuple[st
     if not linkage.drives:
         yield "drive", "none"
     yield "speeds", _how_sure(linkage, analysis)
+    if analysis.solved and analysis.bounds is not None:
+        words = trust_words(linkage, analysis, analysis.bounds, unit)
+        yield from [("trust", words)] if words else []
+    if analysis.mobility.at_pose:
+        yield from push_sentences(linkage, analysis, unit)
 
 
-def _freedom_at_pose(analysis: Analysis) -> str:
+def _freedom_at_pose(analysis: Analysis, unit: str) -> str:
     mobility = analysis.mobility
     freedoms = count_of(mobility.at_pose, "freedom")
     if mobility.at_pose == mobility.count:
         return f"{freedoms}, as counted"
-    return (
+    repeats = (
         f"{freedoms}, {mobility.redundant} more than counted: at this pose "
         f"{count_of(mobility.redundant, 'constraint')} only {'repeat' if mobility.redundant > 1 else 'repeats'} "
         "what the others already ask for"
     )
+    return repeats if analysis.finite is None else f"{repeats}; {finite_words(analysis.finite, unit)}"
 
 
 def _drive(linkage: Linkage, drive: Drive, unit: str) -> str:

@@ -10,6 +10,7 @@ from dxfcheck.reading.reading import AccountLine, Evidence
 from dxfcheck.reports.terminal_contacts import towards
 from dxfcheck.reports.terminal_drawing import how_measured, reason, unit_name
 from dxfcheck.reports.terminal_layout import Column, Line, count_of, figure, fold, listed, place, table
+from dxfcheck.reports.terminal_requirements import requirement_facts
 
 __all__ = ["reading_lines"]
 
@@ -30,6 +31,10 @@ def reading_lines(report: DrawingReport, width: int) -> list[Line]:
     reasons = _by_subject(report.evidence)
     for mechanism in report.mechanisms:
         lines += _mechanism_lines(mechanism.linkage, reasons, unit_name(report), width)
+        for stated, where, facts in requirement_facts(mechanism.requirements, unit_name(report)):
+            decided = reasons.pop((mechanism.linkage.name, "requirement", stated), [])
+            lines += _entry(f"requirement '{stated}'", [where] if where else [], decided, width)
+            lines += [Line(text) for fact in facts for text in fold(fact, width, "    ", INDENT)]
     left = [evidence for group in reasons.values() for evidence in group]
     if left:
         lines += [Line(""), Line("Also decided", "bold")]

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 from typing import Literal
 
 from dxfcheck.geometry import Point
+from dxfcheck.settings import Acceptance
 
 __all__ = ["SEVERITIES", "Finding", "Severity"]
 
@@ -16,7 +17,10 @@ SEVERITIES: tuple[Severity, ...] = ("error", "warning", "note")
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Finding:
-    """One finding. ``message`` says what and how much in one or two lines, ``remedy`` how to mend it."""
+    """One finding. ``message`` says what and how much in one or two lines, ``remedy`` how to mend it.
+
+    ``accepted`` is what an office accepted it by; such a finding is shown, but fails no run. None where it counts.
+    """
 
     rule: str
     severity: Severity
@@ -26,3 +30,4 @@ class Finding:
     handles: tuple[str, ...] = ()
     layer: str | None = None
     mechanism: str | None = None
+    accepted: Acceptance | None = None

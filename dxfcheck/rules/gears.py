@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from dxfcheck.rules.finding import Finding
-from dxfcheck.rules.observed import at_pin, figured, finding, observed
+from dxfcheck.rules.observed import at_pin, figured, finding, moved, of_linkages
 from dxfcheck.rules.registry import rule
+from dxfcheck.rules.settings_and_sources import FRAME, GEARING, PITCH, TOLERANCE
 from dxfcheck.rules.subject import RuleSubject
 
 __all__: list[str] = []
@@ -24,10 +25,12 @@ __all__: list[str] = []
     matters="Centre distance and radii contradict one another, so the ratio or the pose is not the one meant; where "
     "they are not read as rolling, the count is one too high.",
     remedy="Make the centre distance the sum of the radii (their difference, if one lies inside the other).",
+    settings=TOLERANCE + "; " + PITCH,
+    source=GEARING,
 )
 def off_tangency(subject: RuleSubject) -> Iterator[Finding]:
     """Pitch circles and racks that gap or overlap."""
-    for seen in observed(subject, "off-tangency"):
+    for seen in of_linkages(subject, "off-tangency"):
         message = figured(seen, subject.sketch.unit)
         yield finding(seen, "warning", message, "correct the radius, or move a centre, so that they are tangent")
 
@@ -41,12 +44,13 @@ def off_tangency(subject: RuleSubject) -> Iterator[Finding]:
     "radius.",
     matters="It is read as about the pin; if it is meant as it is drawn, the wheel runs out of true.",
     remedy="Move the circle onto the pin's centre.",
+    settings=TOLERANCE + "; " + PITCH,
 )
 def off_centre_ring(subject: RuleSubject) -> Iterator[Finding]:
     """Pitch circles beside the centres of their pins."""
-    for seen in observed(subject, "off-centre-ring"):
+    for seen in of_linkages(subject, "off-centre-ring"):
         message = f"{at_pin(seen)}{figured(seen, subject.sketch.unit)}"
-        yield finding(seen, "warning", message, "move the circle onto the pin's centre")
+        yield finding(seen, "warning", message, moved(seen, "the circle's centre", subject.reading.tolerance))
 
 
 @rule(
@@ -57,10 +61,11 @@ def off_centre_ring(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A pitch circle that touches another, with no pin at its centre, and is no part of the frame.",
     matters="It is not read: the wheel and its rolling contact are missing from the count.",
     remedy="Draw a pin at its centre, or put it on a layer FRAME if it stands still.",
+    settings=PITCH,
 )
 def wheel_pin(subject: RuleSubject) -> Iterator[Finding]:
     """Pitch circles without a pin."""
-    for seen in observed(subject, "wheel-pin"):
+    for seen in of_linkages(subject, "wheel-pin"):
         remedy = "draw a pin at its centre, or put it on a layer FRAME if it stands still"
         yield finding(seen, "warning", figured(seen, subject.sketch.unit), remedy)
 
@@ -75,10 +80,11 @@ def wheel_pin(subject: RuleSubject) -> Iterator[Finding]:
     "turns with it; a note where it is read as free to turn on the one link that pushes it.",
     matters="A gear that is fast on a link turns that link; one that is loose on it does not.",
     remedy="Draw a spoke from the link's line to the circle, or both in one block; nothing if it is as read.",
+    settings=PITCH + "; " + FRAME,
 )
 def wheel_owner(subject: RuleSubject) -> Iterator[Finding]:
     """Pitch circles whose link had to be chosen."""
-    for seen in observed(subject, "wheel-owner"):
+    for seen in of_linkages(subject, "wheel-owner"):
         message = f"{at_pin(seen)}{figured(seen, subject.sketch.unit)}"
         remedy = "if that is wrong, draw a spoke from the circle to the link that it is part of"
         yield finding(seen, "warning", message, remedy)
@@ -93,10 +99,11 @@ def wheel_owner(subject: RuleSubject) -> Iterator[Finding]:
     "tells.",
     matters="A compound wheel and two loose wheels give different counts and speeds.",
     remedy="Draw a spoke that touches both circles if they turn together; a link of its own to each if they do not.",
+    settings=PITCH + "; " + FRAME,
 )
 def shared_axis(subject: RuleSubject) -> Iterator[Finding]:
     """Pitch circles about one pin."""
-    for seen in observed(subject, "shared-axis"):
+    for seen in of_linkages(subject, "shared-axis"):
         message = f"{at_pin(seen)}{figured(seen, subject.sketch.unit)}"
         remedy = "draw a spoke that touches both circles if they turn together, else one from each to its own link"
         yield finding(seen, "warning", message, remedy)
@@ -111,11 +118,13 @@ def shared_axis(subject: RuleSubject) -> Iterator[Finding]:
     "rack that no slide along it holds to its wheel.",
     matters="The two can draw apart: the count is then one higher than that of a gear pair on an arm.",
     remedy="Draw the arm that joins the two centres, or the slide that leads the rack.",
+    settings=PITCH + "; " + FRAME,
+    source=GEARING,
 )
 def gear_centres(subject: RuleSubject) -> Iterator[Finding]:
     """Rolling contacts that nothing holds closed."""
-    for seen in observed(subject, "gear-centres"):
-        if "rack" in seen.detail:
+    for seen in of_linkages(subject, "gear-centres"):
+        if seen.case == "rack":
             remedy = "draw the slide that leads the rack along its pitch line"
         else:
             remedy = "draw a link with a pin at both centres, or fix both pins to the frame"

@@ -12,6 +12,7 @@ from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.observed import finding, observed
 from dxfcheck.rules.registry import rule
+from dxfcheck.rules.settings_and_sources import DRIVES, UNITS
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.tolerances import DEAD_CENTRE_RADIANS
 
@@ -81,6 +82,7 @@ def _about(linkage: Linkage, drive: Drive, name: str, message: str, remedy: str)
     "turns there, a slide on the frame to run at 1 length unit a second: every speed is a ratio to that.",
     remedy="Write a note such as 'n = 60 rpm' beside the crank, or use --drive 'A-B = 60 rpm'; for a slide "
     "'v = 50 mm/s', or --drive 'block at C = 50 mm/s'.",
+    settings=DRIVES,
 )
 def assumed_drive(subject: RuleSubject) -> Iterator[Finding]:
     """Drives that were assumed."""
@@ -106,6 +108,7 @@ def assumed_drive(subject: RuleSubject) -> Iterator[Finding]:
     matters="It is left out: speeds are those of other drives, or of an assumed one.",
     remedy="Name the link by two of its pins, as 'ω_AB = 4 rad/s', a block by its pin, as 'v_C = 0.2 m/s', or move the "
     "note to its link.",
+    settings=DRIVES,
 )
 def unknown_drive(subject: RuleSubject) -> Iterator[Finding]:
     """Drive texts that fit no link."""
@@ -127,6 +130,7 @@ def unknown_drive(subject: RuleSubject) -> Iterator[Finding]:
     matters="The figure is taken as so many of the drawing's own units a second: if those are another unit, all "
     "speeds are wrong by that factor.",
     remedy="State the unit: $INSUNITS in the drawing's header, or --units.",
+    settings=UNITS,
 )
 def drive_unit_assumed(subject: RuleSubject) -> Iterator[Finding]:
     """Sliding speeds whose unit could not be brought to the drawing's."""
@@ -143,6 +147,7 @@ def drive_unit_assumed(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A drive whose speed differs from the one that the constraints and the drives before it give.",
     matters="Both cannot be true at once; the later one is left out.",
     remedy="Delete one of the drives, or state the speed that fits.",
+    settings=DRIVES,
 )
 def drive_conflict(subject: RuleSubject) -> Iterator[Finding]:
     """Drives left out because they contradict others."""
@@ -166,6 +171,8 @@ def drive_conflict(subject: RuleSubject) -> Iterator[Finding]:
     "in line, or a block at the end of its stroke.",
     matters="No speed of the drive is possible there: the drive stands at the end of its stroke.",
     remedy="Draw another pose, or drive another link.",
+    settings=DRIVES,
+    source="limit positions: Norton, Design of Machinery, ch. 3 (from memory)",
 )
 def drive_at_limit(subject: RuleSubject) -> Iterator[Finding]:
     """Drives that the constraints hold still."""
@@ -188,6 +195,7 @@ def drive_at_limit(subject: RuleSubject) -> Iterator[Finding]:
     f"slide or slot that it should run in, within {math.degrees(DEAD_CENTRE_RADIANS):.1g} degrees.",
     matters="The one cannot drive the other there, and which way it goes on is not settled.",
     remedy="Draw another pose if this one is not meant, or make sure that something carries it over.",
+    source="toggle positions: Norton, Design of Machinery, ch. 3 (from memory)",
 )
 def dead_centre(subject: RuleSubject) -> Iterator[Finding]:
     """Dead centres of the drawn pose."""

@@ -8,18 +8,20 @@ from __future__ import annotations
 
 import importlib
 import pkgutil
-from collections.abc import Callable, Iterator
-from dataclasses import dataclass
+from collections.abc import Callable, Iterable, Iterator, Mapping
+from dataclasses import dataclass, replace
 from typing import Literal
 
 from dxfcheck.rules.finding import SEVERITIES, Finding, Severity
 from dxfcheck.rules.subject import RuleSubject
+from dxfcheck.settings import RuleWeight
 
-__all__ = ["FAMILIES", "Check", "Family", "Rule", "all_rules", "find_rule", "rule", "run_rules"]
+__all__ = ["FAMILIES", "Check", "Family", "Rule", "all_rules", "find_rule", "in_order", "rule", "run_rules"]
 
-Family = Literal["exchange", "linework", "dimensions", "structure", "pose", "limits"]
-FAMILIES: tuple[Family, ...] = ("exchange", "linework", "dimensions", "structure", "pose", "limits")
-"""In the order in which a drawing is worked through, from the file to the limits it is held against."""
+Family = Literal["exchange", "linework", "dimensions", "structure", "pose", "limits", "settings"]
+FAMILIES: tuple[Family, ...] = ("exchange", "linework", "dimensions", "structure", "pose", "limits", "settings")
+"""In the order in which a drawing is worked through, from the file to the limits it is held against; at the end what is
+wrong with the settings themselves."""
 
 COMMON_PRACTICE = "common practice, no source"
 
@@ -104,10 +106,28 @@ def find_rule(name: str) -> Rule | None:
 
 
 def run_rules(subject: RuleSubject) -> tuple[Finding, ...]:
-    """What all rules find, the gravest first, then by rule, then from left to right and upwards on the sheet."""
-    found = [finding for entered in all_rules() for finding in entered.check(subject)]
-    found.sort(key=_rank)
-    return tuple(found)
+    """What all rules find, the gravest first, then by rule, then from left to right and upwards on the sheet.
+
+    Rules that the settings switch off are not applied; where they state another weight all findings of a rule have it.
+    """
+    weights = dict(subject.settings.rule_weights)
+    applied = all_rules()
+    if weights:
+        applied = tuple(entered for entered in applied if weights.get(entered.name) != "off")
+    found = [finding for entered in applied for finding in entered.check(subject)]
+    if weights:
+        found = [_weighed(finding, weights) for finding in found]
+    return in_order(found)
+
+
+def in_order(findings: Iterable[Finding]) -> tuple[Finding, ...]:
+    """Findings the gravest first, then by rule, then from left to right and upwards on the sheet."""
+    return tuple(sorted(findings, key=_rank))
+
+
+def _weighed(finding: Finding, weights: Mapping[str, RuleWeight]) -> Finding:
+    weight = weights.get(finding.rule, "off")
+    return finding if weight == "off" else replace(finding, severity=weight)
 
 
 def _rank(finding: Finding) -> tuple[int, str, bool, float, float, str]:

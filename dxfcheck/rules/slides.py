@@ -6,8 +6,9 @@ from collections.abc import Iterator
 
 from dxfcheck.reading.reading import Observation
 from dxfcheck.rules.finding import Finding
-from dxfcheck.rules.observed import at_pin, figured, finding, observed
+from dxfcheck.rules.observed import at_pin, figured, finding, of_linkages
 from dxfcheck.rules.registry import rule
+from dxfcheck.rules.settings_and_sources import FRAME, PART_BLOCKS, SYMBOLS, TOLERANCE
 from dxfcheck.rules.subject import RuleSubject
 
 __all__: list[str] = []
@@ -36,12 +37,14 @@ def _what_slides(seen: Observation, subject: RuleSubject) -> str:
     matters="Without a guide the block holds nothing: the count is at least one too high, and the ram has no speed.",
     remedy="Draw the guide through the block, along its side (within half its width) or interrupted at it; delete the "
     "rectangle if nothing slides there.",
+    settings=TOLERANCE + "; " + FRAME,
+    source=SYMBOLS,
 )
 def block_without_guide(subject: RuleSubject) -> Iterator[Finding]:
     """Blocks that fit no guide."""
-    for seen in observed(subject, "block-without-guide"):
+    for seen in of_linkages(subject, "block-without-guide"):
         message = f"the block at pin {seen.subject}: {figured(seen, subject.sketch.unit)}"
-        if "welded" in seen.detail:
+        if seen.case == "welded":
             remedy = "take away the line that ties the guide to the block"
         else:
             remedy = "draw its guide through it or along its side, or delete the rectangle if nothing slides there"
@@ -56,10 +59,11 @@ def block_without_guide(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A block for which lines in two directions, or of two links, would do equally well as its guide.",
     matters="The block slides along one of them; with the other, the speeds are those of another mechanism.",
     remedy="Delete the line that is not its guide, or draw it so that it stays clear of the block.",
+    settings=FRAME,
 )
 def two_guides(subject: RuleSubject) -> Iterator[Finding]:
     """Blocks that two guides fit."""
-    for seen in observed(subject, "two-guides"):
+    for seen in of_linkages(subject, "two-guides"):
         message = f"{_what_slides(seen, subject)}{figured(seen, subject.sketch.unit)}"
         yield finding(seen, "error", message, "delete the line that is not its guide, or keep it clear of the block")
 
@@ -76,7 +80,7 @@ def two_guides(subject: RuleSubject) -> Iterator[Finding]:
 )
 def past_guide_end(subject: RuleSubject) -> Iterator[Finding]:
     """Blocks past the ends of guides, pins past the ends of slots."""
-    for seen in observed(subject, "past-guide-end"):
+    for seen in of_linkages(subject, "past-guide-end"):
         what = "slot" if "slot" in seen.detail else "guide"
         message = f"{_what_slides(seen, subject)}{figured(seen, subject.sketch.unit)}"
         yield finding(seen, "warning", message, f"lengthen the {what}, or draw a pose within the stroke")
@@ -91,10 +95,11 @@ def past_guide_end(subject: RuleSubject) -> Iterator[Finding]:
     "It is read as fixed to the frame.",
     matters="If it is part of a moving link, the count and all speeds are those of another mechanism.",
     remedy="Put the guide on a layer FRAME or hatch it; or join it to the link that carries it.",
+    settings=FRAME,
 )
 def guide_taken_as_frame(subject: RuleSubject) -> Iterator[Finding]:
     """Guides read as frame because nothing holds them."""
-    for seen in observed(subject, "guide-taken-as-frame"):
+    for seen in of_linkages(subject, "guide-taken-as-frame"):
         of_what = f" ({seen.subject} slides on it)" if seen.subject else ""
         message = f"{figured(seen, subject.sketch.unit)}{of_what}"
         remedy = "put it on a layer FRAME or hatch it; or join it to the link that carries it"
@@ -111,10 +116,11 @@ def guide_taken_as_frame(subject: RuleSubject) -> Iterator[Finding]:
     matters="The pin was meant to slide there, and is not held: it is read as the free end of its link.",
     remedy="Draw a rectangle (the block) round the pin, along the guide, or put the pin on the slot's centre line; "
     "delete the guide or slot if nothing slides there.",
+    settings=FRAME,
 )
 def empty_guide(subject: RuleSubject) -> Iterator[Finding]:
     """Guides and slots with nothing in them, beside pins that nothing else holds."""
-    for seen in observed(subject, "empty-guide"):
+    for seen in of_linkages(subject, "empty-guide"):
         message = f"{at_pin(seen)}{figured(seen, subject.sketch.unit)}"
         if "slot" in seen.detail:
             remedy = "put the pin on the slot's centre line, or delete the slot"
@@ -135,7 +141,7 @@ def empty_guide(subject: RuleSubject) -> Iterator[Finding]:
 )
 def slot_pins(subject: RuleSubject) -> Iterator[Finding]:
     """Slots that hold two pins."""
-    for seen in observed(subject, "slot-pins"):
+    for seen in of_linkages(subject, "slot-pins"):
         message = f"{at_pin(seen)}{figured(seen, subject.sketch.unit)}"
         remedy = "put both pins at the centres of the ends if it is a bar; else give each a slot of its own"
         yield finding(seen, "warning", message, remedy)
@@ -149,10 +155,11 @@ def slot_pins(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A pin in a slot that lies beside the slot's centre line by more than 2 % of half the slot's width.",
     matters="A pin that fills its slot cannot stand there: the pose is not one that the mechanism can take.",
     remedy="Move the pin onto the centre line.",
+    settings=TOLERANCE,
 )
 def off_slot_centre(subject: RuleSubject) -> Iterator[Finding]:
     """Pins beside the centre line of their slot."""
-    for seen in observed(subject, "off-slot-centre"):
+    for seen in of_linkages(subject, "off-slot-centre"):
         message = f"{at_pin(seen)}{figured(seen, subject.sketch.unit)}"
         yield finding(seen, "warning", message, "move the pin onto the centre line, or the slot to the pin")
 
@@ -165,10 +172,11 @@ def off_slot_centre(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A ring inside several outlines that lie over one another, with fewer rings than outlines at that place.",
     matters="Which parts turn on that pin decides what the mechanism is.",
     remedy="Draw the hole once for each part that has it, on one centre, or each part in a block of its own.",
+    settings=PART_BLOCKS,
 )
 def doubtful_hole(subject: RuleSubject) -> Iterator[Finding]:
     """Holes under several outlines."""
-    for seen in observed(subject, "doubtful-hole"):
+    for seen in of_linkages(subject, "doubtful-hole"):
         message = f"the hole at pin {seen.subject}: {figured(seen, subject.sketch.unit)}"
         remedy = "draw the hole once for each part that has it, on one centre, or each part as a block of its own"
         yield finding(seen, "warning", message, remedy)

@@ -3,12 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import replace
 
 from dxfcheck.analysis.results import Analysis
 from dxfcheck.drawing.fates import PAPER_SPACE
 from dxfcheck.linkage import Linkage
 from dxfcheck.rules.finding import Finding, Severity
+from dxfcheck.rules.limit_wording import stated_where
 from dxfcheck.rules.registry import rule
+from dxfcheck.rules.settings_and_sources import CONSTRUCTION, DRIVES, FRAME, MOBILITY, SYMBOLS, TOLERANCE
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import listed, plural
 from dxfcheck.tolerances import RANK_DOUBTFUL
@@ -37,6 +40,7 @@ def _about(linkage: Linkage, name: str, severity: Severity, message: str, remedy
     looks_for="A drawing in which nothing joins a link to a frame and no link has two pins shared with others.",
     matters="There is nothing to count; drawings of other trades look alike, so this is no error.",
     remedy="Nothing, if none was meant; else draw pins as rings, links to the rings, and a frame.",
+    settings=FRAME + "; " + CONSTRUCTION,
 )
 def no_linkage(subject: RuleSubject) -> Iterator[Finding]:
     """Drawings without a linkage."""
@@ -63,17 +67,26 @@ def no_linkage(subject: RuleSubject) -> Iterator[Finding]:
     "error",
     "A mechanism without a frame",
     family="structure",
-    looks_for="Links that hang together by pins, none of which is on a frame.",
+    also=("warning",),
+    looks_for="Links that hang together by pins, none of which is on a frame: a warning where they hold one another "
+    "still several times over and no pin has a label, as in a grid of lines with marks.",
     matters="Nothing is fixed, so no speed can be told; the count holds the longest link fixed.",
     remedy="Draw the frame on a layer FRAME, put frame symbols under the fixed pins, or name them with --frame.",
+    settings=FRAME,
+    source=SYMBOLS,
 )
 def no_frame(subject: RuleSubject) -> Iterator[Finding]:
     """Mechanisms that hang on nothing."""
+    grids = {
+        linkage.name
+        for linkage, analysis in subject.mechanisms
+        if analysis.mobility.count < 0 and not any(pin.labelled for pin in linkage.pins)
+    }
     for seen in subject.reading.observations:
         if seen.kind == "no-frame":
             yield Finding(
                 rule="no-frame",
-                severity="error",
+                severity="warning" if seen.mechanism in grids else "error",
                 message=f"no pin of {seen.mechanism} is on a frame: {seen.subject} is held for the count, no speeds",
                 remedy="put the fixed pins on a layer FRAME or on hatched base lines, or name them: --frame A,D",
                 at=seen.at,
@@ -89,9 +102,10 @@ def no_frame(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A pin named by --frame that no pin of the drawing bears.",
     matters="The pin meant is not fixed, and the mechanism is another one.",
     remedy="Name the pins as the report does; `dxfcheck read` lists them.",
+    settings="reading.frame-pins, or --frame",
 )
 def unknown_frame_pin(subject: RuleSubject) -> Iterator[Finding]:
-    """Names in --frame that fit no pin."""
+    """Names in --frame or in the settings that fit no pin."""
     for seen in subject.reading.observations:
         if seen.kind == "unknown-frame-pin":
             known = f"; {seen.detail}" if seen.detail else ""
@@ -99,7 +113,7 @@ def unknown_frame_pin(subject: RuleSubject) -> Iterator[Finding]:
                 rule="unknown-frame-pin",
                 severity="error",
                 message=f"no pin is called {seen.subject}{known}",
-                remedy="name a pin of the drawing with --frame",
+                remedy="name a pin of the drawing, with --frame or in the settings file (frame-pins)",
             )
 
 
@@ -112,6 +126,7 @@ def unknown_frame_pin(subject: RuleSubject) -> Iterator[Finding]:
     "a drawing, with the first ten places.",
     matters="A link whose ends both miss their pins looks like this.",
     remedy="Join them to the linkage, or move them to a layer of their own.",
+    settings=TOLERANCE + "; " + CONSTRUCTION,
 )
 def floating_group(subject: RuleSubject) -> Iterator[Finding]:
     """Linework on link layers that is part of no linkage."""
@@ -138,6 +153,8 @@ def floating_group(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A mechanism on a frame with a count of 0 and no freedom at the drawn pose.",
     matters="It is a structure: the crank will not turn.",
     remedy="Take out a link or add a joint, unless a structure was meant.",
+    settings=FRAME,
+    source=MOBILITY,
 )
 def no_motion(subject: RuleSubject) -> Iterator[Finding]:
     """Mechanisms with count 0 and no freedom."""
@@ -158,6 +175,8 @@ def no_motion(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A mechanism with a count below 0 and no freedom at the drawn pose.",
     matters="It is stiff several times over: it fits together only while lengths are exact, and cannot move.",
     remedy="Take out links or joints until the count is the number of drives.",
+    settings=FRAME,
+    source=MOBILITY,
 )
 def over_constrained(subject: RuleSubject) -> Iterator[Finding]:
     """Mechanisms with a negative count and no freedom."""
@@ -182,6 +201,8 @@ def over_constrained(subject: RuleSubject) -> Iterator[Finding]:
     "chain.",
     matters="The extra freedom holds while lengths are exact, or only for an instant: wear or a tolerance locks it.",
     remedy="Check that the equal lengths are meant; else take out the link that repeats a constraint.",
+    settings=TOLERANCE,
+    source=MOBILITY,
 )
 def special_geometry(subject: RuleSubject) -> Iterator[Finding]:
     """Freedom at the pose beyond the count."""
@@ -209,6 +230,8 @@ def special_geometry(subject: RuleSubject) -> Iterator[Finding]:
     looks_for="A mechanism with more freedoms at the pose than drives that count.",
     matters="The speeds of those links are not known; they are shown as '?'.",
     remedy="State another drive with a note on the sheet or with --drive.",
+    settings=DRIVES,
+    source=MOBILITY,
 )
 def undriven_freedom(subject: RuleSubject) -> Iterator[Finding]:
     """Freedoms left by the drives."""
@@ -234,15 +257,21 @@ def _undriven(linkage: Linkage, analysis: Analysis) -> int:
     "error",
     "Another mobility than stated",
     family="structure",
-    looks_for="A mechanism whose count differs from the one stated with --expect-mobility.",
+    looks_for="A mechanism whose count differs from the one expected with --expect-mobility, in the settings, or by a "
+    "note such as 'M = 1', 'F = 1' or 'mobility 1'.",
     matters="What is drawn is not what was designed.",
     remedy="Look for a link or joint too many or too few.",
+    settings="expect.mobility, or --expect-mobility",
+    source=MOBILITY,
 )
 def expected_mobility(subject: RuleSubject) -> Iterator[Finding]:
-    """Counts that differ from the stated one."""
-    expected = subject.settings.expected_mobility
-    for linkage, analysis in subject.mechanisms if expected is not None else ():
-        count = analysis.mobility.count
-        if count != expected:
-            message = f"the count of {linkage.name} is {count}, stated was {expected}"
-            yield _about(linkage, "expected-mobility", "error", message, "look for a link or joint too many or too few")
+    """Counts that differ from the expected one."""
+    linkages = {linkage.name: linkage for linkage, _ in subject.mechanisms}
+    for verdict in subject.judged.verdicts:
+        if verdict.quantity != "mobility" or verdict.outcome != "broken":
+            continue
+        stated, linkage = verdict.requirement, linkages[verdict.mechanism]
+        message = f"the count of {linkage.name} is {verdict.actual:g}, stated was {verdict.bounds.expected:g}"
+        message += f" {stated_where(stated).removeprefix('set ')}" if stated.source == "note" else ""
+        found = _about(linkage, "expected-mobility", "error", message, "look for a link or joint too many or too few")
+        yield replace(found, at=found.at if stated.at is None else stated.at, handles=stated.handles or found.handles)

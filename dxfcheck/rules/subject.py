@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
+
+from dxfcheck.requirements.verdict import Judged
 
 if TYPE_CHECKING:  # the rules can be listed and explained without loading any stage
     from dxfcheck.analysis.results import Analysis
@@ -17,9 +19,13 @@ __all__ = ["RuleSubject"]
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class RuleSubject:
-    """One drawing as the rules see it; ``mechanisms`` are the reading's linkages, each with its analysis."""
+    """One drawing as the rules see it; ``mechanisms`` are the reading's linkages, each with its analysis.
+
+    ``judged`` says which limits and expectations they keep.
+    """
 
     sketch: Sketch
     reading: Reading
     mechanisms: tuple[tuple[Linkage, Analysis], ...]
     settings: Settings
+    judged: Judged = field(default_factory=Judged)

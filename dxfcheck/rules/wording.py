@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import PLACES_NAMED
+from dxfcheck.tolerances import PLACE_DIGITS, PLACE_LEAST_DECIMALS, PLACE_MOST_DECIMALS, PLACES_NAMED
 
 __all__ = ["length", "listed", "place", "plural"]
 
@@ -17,8 +18,17 @@ def length(value: float, unit: LengthUnit) -> str:
 
 
 def place(at: Point) -> str:
-    """Coordinates as a drafter types them."""
-    return f"({at.real:.6g}, {at.imag:.6g})"
+    """Coordinates as a drafter types them: to the same decimals, in full, and 0 where only rounding noise is left."""
+    larger = max(abs(at.real), abs(at.imag), 10.0**-PLACE_MOST_DECIMALS)
+    before_point = math.floor(math.log10(larger)) + 1
+    decimals = min(max(PLACE_DIGITS - before_point, PLACE_LEAST_DECIMALS), PLACE_MOST_DECIMALS)
+    return f"({_typed(at.real, decimals)}, {_typed(at.imag, decimals)})"
+
+
+def _typed(coordinate: float, decimals: int) -> str:
+    """A coordinate to so many decimals, without noughts at its end."""
+    text = f"{coordinate:.{decimals}f}".rstrip("0").rstrip(".")
+    return "0" if text == "-0" else text
 
 
 def plural(count: int, noun: str) -> str:

@@ -42,6 +42,19 @@ def test_read_shows_and_never_fails_on_findings() -> None:
     assert request.settings.frame_pins == ("A",)
 
 
+def test_a_settings_file_may_be_named() -> None:
+    assert parse_arguments(["check", "a.dxf"]).settings_file is None
+    assert parse_arguments(["read", "a.dxf", "--settings", "office.toml"]).settings_file == "office.toml"
+
+
+def test_settings_takes_a_path_or_the_current_folder() -> None:
+    assert parse_arguments(["settings"]).paths == (".",)
+    line = "settings a.dxf --starter --units mm --expect-mobility 2 --json -"
+    request = parse_arguments(line.split())
+    assert (request.paths, request.starter, request.json) == (("a.dxf",), True, "-")
+    assert request.settings == Settings(unit="mm", expected_mobility=2)
+
+
 def test_explain_takes_one_rule_or_none() -> None:
     assert parse_arguments(["explain"]).rule is None
     assert parse_arguments(["explain", "loose-end"]).rule == "loose-end"

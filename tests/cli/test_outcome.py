@@ -1,12 +1,13 @@
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import Any
 
 import pytest
 
 from dxfcheck.cli.outcome import Outcome, exit_status
 from dxfcheck.rules.finding import Finding, Severity
-from tests.reports.samples import tipper, unreadable
+from tests.reports.samples import ACCEPTED, tipper, unreadable
 
 
 def with_finding(severity: Severity) -> Outcome:
@@ -14,6 +15,7 @@ def with_finding(severity: Severity) -> Outcome:
 
 
 CLEAN = Outcome(tipper(findings=()))
+ACCEPTED_ONLY = Outcome(tipper(findings=(ACCEPTED, replace(ACCEPTED, severity="error"))))
 NOTE, WARNING, ERROR = with_finding("note"), with_finding("warning"), with_finding("error")
 UNREADABLE = Outcome(unreadable())
 FAULTY = Outcome(unreadable(), "a fault")
@@ -31,6 +33,8 @@ FAULTY = Outcome(unreadable(), "a fault")
         ([WARNING], "note", 1),
         ([CLEAN, ERROR], "error", 1),
         ([ERROR], "never", 0),
+        ([ACCEPTED_ONLY], "note", 0),
+        ([ACCEPTED_ONLY, WARNING], "warning", 1),
         ([ERROR, UNREADABLE], "error", 2),
         ([UNREADABLE], "never", 2),
         ([UNREADABLE, FAULTY, ERROR], "never", 3),

@@ -34,6 +34,15 @@ def test_a_drawing_is_checked_and_piped_without_colour() -> None:
     assert "\x1b" not in done.stdout
 
 
+def test_quiet_lines_are_the_same_on_any_screen() -> None:
+    truss = str(ROOT / "fixtures" / "bench-truss.dxf")
+    lines = run("check", truss, "--quiet").stdout.splitlines()
+    assert len(lines) == 2
+    assert lines[0].startswith(f"{truss}: error no-motion at (0, 0): M1 cannot move")
+    assert lines[1] == "1 drawing: 1 error"
+    assert run("check", truss, "--quiet", FORCE_COLOR="1", COLUMNS="40").stdout.splitlines() == lines
+
+
 def test_the_same_drawing_gives_the_same_bytes_whatever_the_hash_seed() -> None:
     reports = {run("check", TIPPER, "--json", "-", PYTHONHASHSEED=seed).stdout for seed in ("1", "2")}
     assert len(reports) == 1

@@ -5,6 +5,7 @@ import signal
 import subprocess
 import sys
 from collections.abc import Iterator
+from functools import partial
 from pathlib import Path
 
 import pytest
@@ -12,7 +13,7 @@ import pytest
 from dxfcheck.cli import pool, workers
 from dxfcheck.cli.outcome import Outcome
 from dxfcheck.cli.paths import Target
-from dxfcheck.cli.workers import inspect_all
+from dxfcheck.cli.workers import inspect_all, inspect_one
 from dxfcheck.settings import Settings
 
 ROOT = Path(__file__).parents[2]
@@ -50,6 +51,57 @@ def test_little_work_is_done_in_one_process_and_much_in_many(tmp_path: Path, mon
     monkeypatch.setattr(workers, "WORTH_A_POOL", 10)
     list(inspect_all(targets, Settings(), None))
     assert started == [4]
+
+
+def die_of(name: str, target: Target) -> Outcome:
+    """What a worker does that one drawing kills."""
+    if name in target.path:
+        os._exit(1)
+    return inspect_one(Settings(), target, with_evidence=False)
+
+
+def test_a_worker_that_dies_takes_one_drawing_with_it(tmp_path: Path) -> None:
+    targets = no_drawings(tmp_path, 25)
+    outcomes = list(pool.inspect_side_by_side(targets, partial(die_of, "17.dxf"), 2))
+    assert [outcome.report.path for outcome in outcomes] == [target.path for target in targets]
+    lost = [outcome for outcome in outcomes if outcome.fault is not None]
+    assert [outcome.report.path for outcome in lost] == [targets[17].path]
+
+
+def test_one_unreadable_file_changes_nothing_for_the_others(tmp_path: Path) -> None:
+    broken, _ = no_drawings(tmp_path, 1)
+    good = Target(str(ROOT / "fixtures" / "tray-tipper.dxf"))
+    side_by_side = list(inspect_all([good, broken, good], Settings(), 2))
+    alone = next(inspect_all([good], Settings(), 1))
+    assert [outcome.report.status for outcome in side_by_side] == ["checked", "unreadable", "checked"]
+    assert side_by_side[0] == side_by_side[2] == alone
+
+
+def test_small_drawings_are_handed_out_by_the_batch_and_large_ones_alone(
+    tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    targets = no_drawings(tmp_path, 23)
+    Path(targets[4].path).write_bytes(b" " * 1000)
+    monkeypatch.setattr(pool, "BATCH_BYTES", 900)
+    batches = pool.batches_of(targets, 10)
+    assert [target for batch in batches for target in batch] == targets
+    assert [len(batch) for batch in batches] == [4, 1, 10, 9]
+    assert [len(batch) for batch in pool.batches_of(targets[:3], 0)] == [1, 1, 1]
+
+
+def test_a_process_that_hands_out_its_work_loads_no_numpy() -> None:
+    code = (
+        "import sys; from dxfcheck.cli import main; main(['check', 'tray-tipper.dxf', 'mixer.dxf', '--jobs', '2']);"
+        "sys.exit('numpy' in sys.modules or 'ezdxf' in sys.modules)"
+    )
+    done = subprocess.run(
+        [sys.executable, "-c", code],
+        capture_output=True,
+        cwd=ROOT / "fixtures",
+        env={**os.environ, "PYTHONPATH": str(ROOT)},
+        check=False,
+    )
+    assert done.returncode == 0, done.stderr
 
 
 INTERRUPTED = """

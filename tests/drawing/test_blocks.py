@@ -263,3 +263,16 @@ def test_nested_references_land_where_the_library_s_matrices_take_them(sketch_of
     sketch = sketch_of(draw)
     assert line_ends(shape for shape in sketch.primitives if isinstance(shape, Segment)) == sorted(expected)
     assert len(expected) == 9
+
+
+def test_arrays_and_deep_nests_are_noticed_with_their_figures(sketch_of: Sketcher) -> None:
+    def draw(drawing: Drawing) -> None:
+        drawing.blocks.new("PIN").add_circle((0, 0), 2)
+        for number, inner in enumerate(("PIN", "NEST 0", "NEST 1")):
+            drawing.blocks.new(f"NEST {number}").add_blockref(inner, (0, 0))
+        drawing.modelspace().add_blockref("PIN", (0, 0), {"row_count": 2, "row_spacing": 9, "column_count": 3})
+        drawing.modelspace().add_blockref("NEST 2", (50, 0))
+        drawing.modelspace().add_blockref("NEST 1", (90, 0))
+
+    noticed = [(notice.kind, notice.detail, notice.amount) for notice in sketch_of(draw).notices]
+    assert noticed == [("block-array", "block PIN", 6.0), ("nested-block", "block NEST 2", 4.0)]

@@ -8,6 +8,7 @@ import pytest
 from ezdxf.document import Drawing
 
 from dxfcheck.drawing.extract import extract
+from dxfcheck.drawing.fates import UNDERLAY
 from dxfcheck.drawing.primitives import Fate, Segment, Sketch
 
 Sketcher = Callable[..., Sketch]
@@ -40,10 +41,12 @@ def test_every_entity_is_in_the_account_in_drawing_order_paper_after_model(sketc
         (lambda msp: msp.add_attdef("NAME", (3, 4)), Fate("note", "attribute definition")),
         (lambda msp: msp.add_spline([(3, 4), (5, 6), (7, 4)]), Fate("unread", "SPLINE is not read")),
         (lambda msp: msp.add_3dface([(3, 4), (5, 6), (7, 4)]), Fate("unread", "3DFACE is not read")),
-        (lambda msp: msp.add_ray((3, 4), (1, 0)), Fate("unread", "RAY is not read")),
+        (lambda msp: msp.add_ray((3, 4), (1, 0)), Fate("skipped", "a construction line without an end")),
+        (lambda msp: msp.add_xline((3, 4), (1, 0)), Fate("skipped", "a construction line without an end")),
+        (lambda msp: msp.add_mline([(3, 4), (5, 6)]), Fate("unread", "MLINE is not read")),
         (lambda msp: msp.add_leader([(3, 4), (5, 6)]), Fate("note", "leader")),
     ],
-    ids=["point", "attdef", "spline", "face", "ray", "leader"],
+    ids=["point", "attdef", "spline", "face", "ray", "xline", "mline", "leader"],
 )
 def test_what_is_not_read_says_so_and_where(sketch_of: Sketcher, draw: Callable[[Any], object], fate: Fate) -> None:
     sketch = sketch_of(lambda drawing: draw(drawing.modelspace()))
@@ -156,3 +159,23 @@ def test_an_elevation_that_is_no_number_is_noticed(sketch_of: Sketcher) -> None:
         drawing.modelspace().add_polyline2d([(0, 0), (4, 0)], dxfattribs={"elevation": (0, 0, float("nan"))})
 
     assert [notice.kind for notice in sketch_of(draw).notices] == ["not-finite"]
+
+
+def test_pictures_and_underlays_lie_in_other_files(sketch_of: Sketcher) -> None:
+    def draw(drawing: Drawing) -> None:
+        picture = drawing.add_image_def("bench.png", (640, 480))
+        drawing.modelspace().add_image(picture, (3, 4), (10, 8))
+        drawing.modelspace().add_underlay(drawing.add_underlay_def("bench.pdf"), (3, 4))
+
+    sketch = sketch_of(draw)
+    assert [entity.fate for entity in sketch.entities] == [UNDERLAY, UNDERLAY]
+
+
+def test_layers_that_are_not_plotted_are_named(sketch_of: Sketcher) -> None:
+    def draw(drawing: Drawing) -> None:
+        drawing.layers.add("AXES").dxf.plot = 0
+        drawing.layers.add("UNUSED").dxf.plot = 0
+        for layer in ("AXES", "Defpoints", "LINKS"):
+            drawing.modelspace().add_line((0, 0), (5, 0), dxfattribs={"layer": layer})
+
+    assert sketch_of(draw).unplotted == {"AXES", "Defpoints"}

@@ -6,8 +6,10 @@ from pathlib import Path
 
 import ezdxf
 import pytest
+from ezdxf.filemanagement import dxf_file_info
 
 from dxfcheck.drawing import load_sketch
+from dxfcheck.drawing.load import open_drawing, stated_encoding
 from dxfcheck.drawing.primitives import Sketch
 from dxfcheck.errors import DrawingUnreadable
 from dxfcheck.settings import Settings
@@ -151,3 +153,21 @@ def test_the_library_s_log_does_not_reach_the_screen(
     assert caplog.records == []
     assert capfd.readouterr() == ("", "")
     assert not logging.getLogger("ezdxf").disabled
+
+
+@pytest.mark.parametrize(
+    "path", sorted((Path(__file__).parents[2] / "fixtures").glob("*.dxf")), ids=lambda path: path.stem
+)
+def test_the_encoding_found_at_the_beginning_is_the_one_that_the_library_finds(path: Path) -> None:
+    with path.open("rb") as file:
+        found = stated_encoding(file.read(4096))
+    assert found in (None, dxf_file_info(path).encoding)
+
+
+def test_text_of_an_old_drawing_is_read_in_its_code_page(tmp_path: Path) -> None:
+    document = ezdxf.new("R2000")
+    document.encoding = "cp1251"
+    document.modelspace().add_text("Ножка")
+    document.saveas(tmp_path / "old.dxf")
+    read = open_drawing(tmp_path / "old.dxf").document
+    assert [text.dxf.text for text in read.modelspace().query("TEXT")] == ["Ножка"]

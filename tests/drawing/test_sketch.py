@@ -32,6 +32,8 @@ def test_the_unit_comes_from_the_header(sketch_of: Sketcher) -> None:
 def test_an_option_overrules_the_header_and_scales_nothing(sketch_of: Sketcher) -> None:
     sketch = sketch_of(in_unit(4), settings=Settings(unit="in"))
     assert sketch.unit == ("in", "option", 0.0254)
+    stated = sketch_of(in_unit(4), settings=Settings(unit="in", unit_source="settings"))
+    assert stated.unit.source == "settings"
     assert sketch.diagonal == 1
 
 

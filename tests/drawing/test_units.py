@@ -6,7 +6,7 @@ import sys
 import pytest
 
 from dxfcheck.drawing.primitives import LengthUnit
-from dxfcheck.drawing.units import LENGTH_UNITS, header_unit, parse_unit
+from dxfcheck.drawing.units import LENGTH_UNITS, header_metric, header_unit, parse_unit
 from dxfcheck.errors import OptionInvalid
 
 UNITLESS = LengthUnit("unitless", "assumed", None)
@@ -59,3 +59,8 @@ def test_an_unknown_unit_is_refused_with_the_known_ones() -> None:
 def test_units_and_primitives_do_not_load_the_dxf_library() -> None:
     program = "import sys, dxfcheck.drawing.units, dxfcheck.drawing.primitives; sys.exit('ezdxf' in sys.modules)"
     assert subprocess.run([sys.executable, "-c", program], check=False).returncode == 0
+
+
+@pytest.mark.parametrize(("code", "metric"), [(0, False), (1, True), (None, None), (7, None), ("1", None)])
+def test_the_header_may_say_that_patterns_are_metric(code: object, metric: bool | None) -> None:  # noqa: FBT001
+    assert header_metric(code) is metric

@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+from datetime import date
+
 from dxfcheck.analysis.results import Analysis, DriveVerdict, JointMotion, LinkMotion, Mobility, PinMotion
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.inspection import DrawingReport, MechanismReport
 from dxfcheck.linkage import Drive, Joint, Link, Linkage, Pin
 from dxfcheck.reading.reading import AccountLine, Evidence
 from dxfcheck.rules.finding import Finding
+from dxfcheck.settings import Acceptance
 
 MILLIMETRES = LengthUnit("mm", "header", 1e-3)
 A, B, C, D = 0j, 40j, 160 + 80j, 120 + 0j
@@ -77,6 +80,20 @@ MIRRORED = Finding(
     severity="note",
     message="The sheet is drawn from behind.",
     remedy="nothing, if it is meant so.",
+)
+ACCEPTED = Finding(
+    rule="empty-pin",
+    severity="warning",
+    message="this ring looks like a pin of the linkage, but no link ends on it",
+    remedy="draw the link to it, or delete the ring",
+    at=60 + 10j,
+    accepted=Acceptance(
+        rule="empty-pin",
+        reason="spare hole for the tray stop",
+        at=60 + 10j,
+        until=date(2027, 3, 31),
+        where="dxfcheck.toml:12",
+    ),
 )
 ACCOUNT = (
     AccountLine("LINE", "LINKS", "link", "a line between pins", 3),

@@ -13,8 +13,10 @@ from jsonschema.exceptions import ValidationError
 from dxfcheck import __version__
 from dxfcheck.inspection import DrawingReport
 from dxfcheck.reports.json_report import json_text, report_as_dict
+from dxfcheck.requirements.verdict import Bounds, Outcome, Verdict
+from dxfcheck.settings import Requirement
 from tests.reports.contacts import seed_planet, shuttle_yoke, soil_roller
-from tests.reports.samples import OMEGA_BC, TIPPER_ANALYSIS, press, tipper, unreadable
+from tests.reports.samples import ACCEPTED, LOOSE_END, OMEGA_BC, TIPPER_ANALYSIS, press, tipper, unreadable
 
 SCHEMA = json.loads((files("dxfcheck") / "reports" / "report.schema.json").read_text(encoding="utf-8"))
 ALL = [tipper(), press(), unreadable()]
@@ -52,7 +54,7 @@ def test_no_drawing_at_all_is_a_valid_report() -> None:
 def test_the_keys_stand_in_their_order() -> None:
     drawing = report_as_dict(ALL)["drawings"][0]
     assert list(drawing) == [
-        "path", "status", "error", "units", "tolerance", "account", "entities", "mechanisms", "findings",
+        "path", "status", "error", "units", "tolerance", "settings", "account", "entities", "mechanisms", "findings",
     ]  # fmt: skip
     assert list(drawing["mechanisms"][0])[:9] == [
         "name", "links", "pins", "joints", "mobility", "loops", "drives", "solved", "disagreement",
@@ -97,7 +99,24 @@ def test_an_unreadable_drawing_says_why() -> None:
 
 
 def test_the_totals_count_drawings_and_findings() -> None:
-    assert report_as_dict(ALL)["totals"] == {"drawings": 3, "unreadable": 1, "error": 0, "warning": 1, "note": 1}
+    assert report_as_dict(ALL)["totals"] == {
+        "drawings": 3, "unreadable": 1, "error": 0, "warning": 1, "note": 1, "accepted": 0,
+    }  # fmt: skip
+
+
+def test_an_accepted_finding_says_why_until_when_and_where_and_is_counted_apart() -> None:
+    report = report_as_dict([tipper(findings=(LOOSE_END, ACCEPTED, ACCEPTED))])
+    validate(report)
+    assert [finding["accepted"] for finding in report["drawings"][0]["findings"]][:2] == [
+        None,
+        {"reason": "spare hole for the tray stop", "until": "2027-03-31", "where": "dxfcheck.toml:12"},
+    ]
+    assert report["totals"]["warning"] == 1
+    assert report["totals"]["accepted"] == 2
+    stated = ACCEPTED.accepted
+    assert stated is not None
+    endless = replace(ACCEPTED, accepted=replace(stated, until=None))
+    assert report_as_dict([tipper(findings=(endless,))])["drawings"][0]["findings"][0]["accepted"]["until"] is None
 
 
 def test_a_negative_zero_is_a_plain_zero() -> None:
@@ -170,3 +189,33 @@ def test_the_schema_lets_keys_be_added() -> None:
     report = report_as_dict(ALL)
     report["drawings"][0]["mechanisms"][0]["added_later"] = 1
     validate(report)
+
+
+def test_what_a_mechanism_is_held_against_stands_with_its_figures() -> None:
+    (mechanism,) = tipper().mechanisms
+    stated = Requirement(quantity="pin-speed", subject="C", stated="v_C <= 2 m/s", source="note")
+    outcomes: tuple[tuple[Outcome, float | None], ...] = (("kept", 392.9), ("not known", None))
+    verdicts = [
+        Verdict(
+            requirement=stated,
+            mechanism="M1",
+            quantity="pin-speed",
+            subject="C",
+            outcome=outcome,
+            bounds=Bounds(None, 2000.0, None),
+            actual=actual,
+        )
+        for outcome, actual in outcomes
+    ]
+    report = replace(tipper(), mechanisms=(replace(mechanism, requirements=tuple(verdicts)),))
+    as_dict = report_as_dict([report])
+    Draft202012Validator(SCHEMA).validate(as_dict)
+    kept, unknown = as_dict["drawings"][0]["mechanisms"][0]["requirements"]
+    assert [kept[key] for key in ("stated", "source", "quantity", "subject")] == [
+        "v_C <= 2 m/s",
+        "note",
+        "pin-speed",
+        "C",
+    ]
+    assert (kept["actual"], kept["least"], kept["greatest"], kept["outcome"]) == (392.9, None, 2000.0, "kept")
+    assert (unknown["actual"], unknown["outcome"]) == (None, "not known")

@@ -12,6 +12,7 @@ from dxfcheck.reports.terminal import TerminalReport
 from dxfcheck.reports.terminal_drawing import verdict
 from dxfcheck.rules.finding import Finding
 from tests.reports.samples import (
+    ACCEPTED,
     LOOSE_END,
     PRESS,
     PRESS_ANALYSIS,
@@ -113,6 +114,14 @@ def with_freedom(at_pose: int, *, grounded: bool = True, solved: bool = False) -
     [
         (tipper(findings=()), "1 mechanism, moves with 1 freedom, driven as stated; no findings"),
         (tipper(), "1 mechanism, moves with 1 freedom, driven as stated; 1 warning, 1 note"),
+        (
+            tipper(findings=(ACCEPTED, LOOSE_END, ACCEPTED)),
+            "1 mechanism, moves with 1 freedom, driven as stated; 1 warning, 2 accepted",
+        ),
+        (
+            tipper(findings=(ACCEPTED,)),
+            "1 mechanism, moves with 1 freedom, driven as stated; no findings but 1 accepted",
+        ),
         (replace(press(), mechanisms=()), "holds no linkage; no findings"),
         (replace(press(), mechanisms=(with_freedom(0),)), "1 mechanism, cannot move; no findings"),
         (
@@ -247,3 +256,9 @@ def test_what_is_read_is_shown_with_the_rule_that_decided() -> None:
 
 def test_an_unreadable_drawing_is_read_as_nothing() -> None:
     assert read(unreadable()) == "broken.dxf: not read: is no DXF file; export it anew\n"
+
+
+def test_settings_that_had_a_say_and_rules_off_are_told() -> None:
+    report = replace(tipper(), settings_files=("dxfcheck.toml",), rules_off=("empty-pin", "short-line"))
+    assert "settings: dxfcheck.toml; 2 rules off" in " ".join(printed(report).split())
+    assert "settings:" not in printed(tipper())

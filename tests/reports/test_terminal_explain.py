@@ -22,6 +22,7 @@ NEAR_MISS = Rule(
     remedy="snap the end to the rim or the centre.",
     check=finds_nothing,
     also=("warning",),
+    settings="reading.tolerance",
 )
 NO_MOTION = Rule(
     name="no-motion",
@@ -45,6 +46,9 @@ def test_a_rule_is_explained() -> None:
         "  matters    the link hangs on nothing and the count comes",
         "             out wrong.",
         "  to mend    snap the end to the rim or the centre.",
+        "  settings   reading.tolerance; rules.near-miss (its",
+        "             severity, or off)",
+        "  source     common practice, no source",
     ]
 
 
@@ -57,3 +61,8 @@ def test_all_rules_are_listed_by_family() -> None:
         "structure",
         "  no-motion  error           the linkage cannot move",
     ]
+
+
+def test_a_rule_without_settings_of_its_own_can_still_be_switched_off() -> None:
+    lines = [line.text for line in explain_lines(NO_MOTION, 60)]
+    assert lines[-2] == "  settings   rules.no-motion (its severity, or off)"

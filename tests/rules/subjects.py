@@ -7,6 +7,7 @@ from collections.abc import Sequence
 from dxfcheck.analysis import analyse
 from dxfcheck.drawing.primitives import Entity, LengthUnit, Notice
 from dxfcheck.reading.read import read_linkages
+from dxfcheck.requirements.judge import judge_requirements
 from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.registry import run_rules
 from dxfcheck.rules.subject import RuleSubject
@@ -29,7 +30,8 @@ def findings(
     drawn = sketch(*things, entities=entities, notices=notices, unit=unit)
     reading = read_linkages(drawn, chosen)
     mechanisms = tuple((linkage, analyse(linkage)) for linkage in reading.linkages)
-    subject = RuleSubject(sketch=drawn, reading=reading, mechanisms=mechanisms, settings=chosen)
+    judged = judge_requirements(mechanisms, chosen, reading.requirements, unit)
+    subject = RuleSubject(sketch=drawn, reading=reading, mechanisms=mechanisms, settings=chosen, judged=judged)
     return [finding for finding in run_rules(subject) if finding.rule == rule]
 
 

@@ -1,6 +1,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Sequence
+from dataclasses import replace
 from pathlib import Path
 
 import pytest
@@ -75,6 +76,20 @@ def test_findings_come_gravest_first_then_by_rule_then_by_place() -> None:
         ("b-rule", "warning", 5 + 1j),
         ("b-rule", "warning", None),
         ("a-rule", "note", 0j),
+    ]
+
+
+@pytest.mark.usefixtures("empty_registry")
+def test_settings_switch_rules_off_and_give_all_findings_of_a_rule_another_weight() -> None:
+    enter("silent")(finds(found("silent", "error", 0j)))
+    enter("graver")(finds(found("graver", "note", 0j), found("graver", "warning", 1j)))
+    enter("other")(finds(found("other", "warning", 0j)))
+    settings = Settings(rule_weights=(("silent", "off"), ("graver", "error")))
+    findings = run_rules(replace(SUBJECT, settings=settings))
+    assert [(each.rule, each.severity) for each in findings] == [
+        ("graver", "error"),
+        ("graver", "error"),
+        ("other", "warning"),
     ]
 
 

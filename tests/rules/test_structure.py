@@ -100,3 +100,10 @@ def test_another_mobility_than_stated(expected: int | None, told: int) -> None:
     found = findings("expected-mobility", *tipper(), settings=Settings(expected_mobility=expected))
     assert [each.message for each in found] == [f"the count of M1 is 1, stated was {expected}"] * told
     assert all(each.severity == "error" for each in found)
+
+
+def test_a_note_may_state_the_mobility_and_is_where_the_finding_points() -> None:
+    found = only("expected-mobility", *tipper(), text("Laufgrad F = 2", 60 + 300j, handle="note"))
+    assert found.message == "the count of M1 is 1, stated was 2 by the note 'Laufgrad F = 2' at (60, 300)"
+    assert (found.at, found.handles) == (60 + 300j, ("note",))
+    assert findings("expected-mobility", *tipper(), text("M = 1", 60 + 300j)) == []

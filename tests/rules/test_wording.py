@@ -13,8 +13,21 @@ def test_a_length_carries_its_unit_where_there_is_one() -> None:
     assert length(5.0, LengthUnit("unitless", "assumed", None)) == "5"
 
 
-def test_a_place_is_written_as_it_is_typed() -> None:
-    assert place(12.5 - 3.25j) == "(12.5, -3.25)"
+@pytest.mark.parametrize(
+    ("at", "text"),
+    [
+        (12.5 - 3.25j, "(12.5, -3.25)"),
+        (1.27e-14 - 3e-15j, "(0, 0)"),
+        (200 + 1.27e-14j, "(200, 0)"),
+        (-2e-4 + 300j, "(0, 300)"),
+        (0.0512345678 + 0.2j, "(0.051235, 0.2)"),
+        (12345.6785 + 7.0004j, "(12345.678, 7)"),
+        (1e6 + 1234567.891234j, "(1000000, 1234567.891)"),
+        (100 + 2000j, "(100, 2000)"),
+    ],
+)
+def test_a_place_is_written_as_it_is_typed(at: complex, text: str) -> None:
+    assert place(at) == text
 
 
 @pytest.mark.parametrize(

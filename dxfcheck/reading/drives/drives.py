@@ -9,7 +9,7 @@ from dataclasses import dataclass, replace
 from typing import NamedTuple
 
 from dxfcheck.drawing.primitives import LengthUnit, Text
-from dxfcheck.linkage import Drive, Linkage
+from dxfcheck.linkage import Drive, DriveSource, Linkage
 from dxfcheck.reading.drives.drive_assumed import Reasoned, assume_drive
 from dxfcheck.reading.drives.drive_names import Target
 from dxfcheck.reading.drives.drive_notes import Near, Shapes, near_links
@@ -33,9 +33,10 @@ class Driven:
 
 
 class _Said(NamedTuple):
-    """A statement and where it stands: a text with its handle and the links near it, or None for an option."""
+    """A statement, where it was made, and for a note its text with its handle and the links near it."""
 
     statement: DriveStatement
+    source: DriveSource
     text: Text | None = None
     handle: str = ""
     near: Near = ()
@@ -56,6 +57,13 @@ class _Said(NamedTuple):
         )
 
 
+SOURCES: tuple[DriveSource, ...] = ("option", "settings", "note", "assumed")
+STATED = {
+    "option": "stated by option: {}",
+    "settings": "stated in the settings: {}",
+    "note": "stated by the note '{}'",
+}
+
 Motion = tuple[int, int | None, frozenset[int]]
 """Linkage, slide joint, and the two links that move against one another."""
 
@@ -74,8 +82,9 @@ def drive_linkages(
     speeds are given a second.
     """
     notes = [(number, each) for number, text in enumerate(texts) for each in find_statements(text.content)]
-    said = [_Said(parse_drive(option)) for option in settings.drives]
-    said += [_Said(statement, texts[number], handles[number]) for number, statement in notes]
+    said = [_Said(parse_drive(option), "option") for option in settings.drives]
+    said += [_Said(parse_drive(drive), "settings") for drive in settings.settings_drives]
+    said += [_Said(statement, "note", texts[number], handles[number]) for number, statement in notes]
     stated, observations = _settle(said, linkages, shapes, unit) if said else ({}, [])
     drives = [_drives_of(linkage, stated.get(number, ())) for number, linkage in enumerate(linkages)]
     driven = tuple(
@@ -98,7 +107,7 @@ def _settle(
     said = _with_links_near(said, lookup, shapes)
     found: defaultdict[int, list[Reasoned]] = defaultdict(list)
     observations: list[Observation] = []
-    by_option: set[Motion] = set()
+    taken: dict[Motion, DriveSource] = {}
     for each in said:
         reach = NOTE_REACH_IN_HEIGHTS * each.text.height if each.text is not None else 0.0
         target, why = aim_of(each.statement, lookup, each.near, reach)
@@ -106,11 +115,10 @@ def _settle(
             if each.statement.explicit or each.near:
                 observations.append(each.observed("unknown-drive", why))
             continue
-        # A note gives way to an option on the same motion; two notes on one both stand, to agree or to conflict.
+        # Options come first, then settings, then notes: on the same motion the later kind gives way to the earlier.
+        # Two of one kind both stand, to agree or to conflict.
         motion = (target.linkage, target.joint, frozenset((target.link, target.against)))
-        if each.text is None:
-            by_option.add(motion)
-        elif motion in by_option:
+        if taken.setdefault(motion, each.source) != each.source:
             continue
         rate, seen = _rate(each, unit, linkages[target.linkage].name)
         observations += seen
@@ -156,24 +164,24 @@ def _reasoned(said: _Said, target: Target, rate: float) -> Reasoned:
         against=target.against,
         rate=rate,
         kind=statement.kind,
-        source="option" if text is None else "note",
+        source=said.source,
         joint=target.joint,
         stated=statement.text,
         at=None if text is None else text.at,
         handles=() if text is None else (said.handle,),
     )
-    where = f"stated by option: {statement.text}" if text is None else f"stated by the note '{statement.text}'"
+    where = STATED[said.source].format(statement.text)
     return Reasoned(drive, f"{where}; {target.meaning}" if target.meaning else where)
 
 
 def _drives_of(linkage: Linkage, stated: Sequence[Reasoned]) -> list[Reasoned]:
-    """The stated drives, options first, or else an assumed one."""
+    """The stated drives, options first, then settings, or else an assumed one."""
     if not stated and linkage.grounded:
         assumed = assume_drive(linkage)
         return [assumed] if assumed is not None else []
     links = linkage.links
     return sorted(
-        stated, key=lambda each: (each.drive.source != "option", links[each.drive.link].name, each.drive.rate)
+        stated, key=lambda each: (SOURCES.index(each.drive.source), links[each.drive.link].name, each.drive.rate)
     )
 
 

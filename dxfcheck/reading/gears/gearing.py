@@ -227,5 +227,6 @@ class _Train:
 
 def _renumbered(contact: Contact, index: Mapping[int, int]) -> Contact:
     """A contact between keys as one between indices, the frame (or else the lower index) first."""
-    first, second = sorted((index[contact.bodies[0]], index[contact.bodies[1]]))
-    return contact._replace(bodies=(first, second))
+    one, other = (index[body] for body in contact.bodies)
+    numbered = contact._replace(bodies=(one, other))
+    return numbered if one <= other else numbered.swapped()

@@ -78,6 +78,7 @@ class Rolling:
             direction=directed(along * 1j),
             why=f"pitch circle of radius {one.radius:g} rolls on that of radius {other.radius:g}, {where}",
             rings=rings,
+            curves=(one.at, other.at),
         )
 
     def _held_apart(self, one: Wheel, other: Wheel) -> bool:
@@ -121,17 +122,7 @@ class Rolling:
             )
             detail = f"the pitch circle of radius {wheel.radius:g} misses {what} by {{amount}}: {apart}"
             self.oddities.append(
-                Oddity(
-                    "off-tangency",
-                    track.foot,
-                    detail,
-                    track.miss,
-                    silent,
-                    site=wheel.site,
-                    rings=wheel.rings,
-                    strands=(track.strand,),
-                    severity="warning",
-                )
+                _odd_track("off-tangency", track, wheel, detail)._replace(amount=track.miss, limit=silent)
             )
         on_frame = line_owner == self._pool.frame
         held = self._keeps_distance(track, line_owner, () if on_frame else beside)
@@ -139,17 +130,7 @@ class Rolling:
             detail = (
                 f"nothing holds the rack at the pitch circle of radius {wheel.radius:g}: no slide along it was found"
             )
-            self.oddities.append(
-                Oddity(
-                    "gear-centres",
-                    track.foot,
-                    detail,
-                    site=wheel.site,
-                    rings=wheel.rings,
-                    strands=(track.strand,),
-                    severity="warning",
-                )
-            )
+            self.oddities.append(_odd_track("gear-centres", track, wheel, detail)._replace(case="rack"))
         return Contact(
             kind="rolling",
             bodies=(wheel_owner, line_owner),
@@ -159,6 +140,7 @@ class Rolling:
             strands=(track.strand,),
             rings=wheel.rings,
             full=on_frame and not held,
+            curves=(wheel.at, None),
         )
 
     def _keeps_distance(self, track: Track, line_owner: int, beside: Collection[int]) -> bool:
@@ -180,6 +162,13 @@ class Rolling:
             return True
         parts = [self._pool.parts[key] for key in level if key in self._pool.parts]
         return any(site in body.pins for body in parts) or not level.isdisjoint(beside)
+
+
+def _odd_track(kind: str, track: Track, wheel: Wheel, detail: str) -> Oddity:
+    """Something wrong where a wheel meets a line."""
+    return Oddity(
+        kind, track.foot, detail, site=wheel.site, rings=wheel.rings, strands=(track.strand,), severity="warning"
+    )
 
 
 def _off_tangency(mesh: Mesh, one: Wheel, other: Wheel, t: float) -> Oddity:

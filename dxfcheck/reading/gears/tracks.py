@@ -77,7 +77,7 @@ def held_by_frame(
 
     The legs and the base line of the symbol under the wheel's own pin may end there by chance: they do not count.
     """
-    held = {wheel.number for wheel in wheels if frame_reason(wheel.source) is not None}
+    held = {wheel.number for wheel in wheels if frame_reason(wheel.source, sheet.roles) is not None}
     ending = {
         wheel.number: {
             strand

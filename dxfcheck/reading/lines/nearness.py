@@ -23,6 +23,8 @@ REACH_BUCKET = 8.0
 POINTS_AT_ONCE = 50_000
 """Points looked up at a time, which bounds the memory of the candidate lists."""
 
+_TINY = float(np.finfo(np.float64).tiny)
+
 
 def near_pairs(
     points: ComplexArray, reaches: FloatArray, starts: ComplexArray, ends: ComplexArray
@@ -53,15 +55,18 @@ def near_pairs(
 
 def pair_distances(points: ComplexArray, starts: ComplexArray, ends: ComplexArray) -> FloatArray:
     """Distances from points to bounded straight pieces, element by element (arrays of shapes that broadcast)."""
-    along_x, along_y = ends.real - starts.real, ends.imag - starts.imag
-    out_x, out_y = points.real - starts.real, points.imag - starts.imag
-    square = np.maximum(along_x * along_x + along_y * along_y, np.finfo(np.float64).tiny)
-    parameter = np.clip((out_x * along_x + out_y * along_y) / square, 0.0, 1.0)
-    return np.hypot(out_x - parameter * along_x, out_y - parameter * along_y)
+    # Few numpy calls, as most sheets are small and a call costs more than its work; its clip alone as much as the rest.
+    along = ends - starts
+    towards = along.conj()
+    out = points - starts
+    square = np.maximum((along * towards).real, _TINY)
+    parameter = np.minimum(np.maximum((out * towards).real / square, 0.0), 1.0)
+    distances: FloatArray = np.abs(out - parameter * along)
+    return distances
 
 
 def _buckets(reaches: FloatArray) -> list[IntArray]:
-    positive = np.maximum(reaches, np.finfo(np.float64).tiny)
+    positive = np.maximum(reaches, _TINY)
     level = np.floor(np.log(positive) / np.log(REACH_BUCKET))
     return [np.nonzero(level == each)[0] for each in np.unique(level)]
 

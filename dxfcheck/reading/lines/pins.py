@@ -13,10 +13,11 @@ from dxfcheck.drawing.primitives import Arc, Ring
 from dxfcheck.geometry import Point
 from dxfcheck.reading.lines.linework import Linework, Strand
 from dxfcheck.reading.lines.nearness import near_pairs
-from dxfcheck.reading.lines.roles import frame_reason
+from dxfcheck.reading.lines.roles import BUILT_IN_ROLES, frame_reason
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
 from dxfcheck.reading.lines.unions import Unions
+from dxfcheck.settings import LayerRoles
 from dxfcheck.tolerances import DISC_OFFSET_OF_RADIUS, ROUND_LOOP_LIKENESS, ROUND_LOOP_PIECES, STACKED_OF_RADIUS
 
 __all__ = ["Disc", "PinSite", "PinSites", "find_pins", "rings_of_arcs", "rings_of_lines"]
@@ -166,7 +167,12 @@ def _circle_through(lines: Sequence[Strand], tolerance: Tolerance) -> Ring | Non
     return Ring(lines[0].primitive.source, centre, radius)
 
 
-def find_pins(rings: Sequence[Ring], tolerance: Tolerance, pitch: Sequence[Ring] = ()) -> PinSites:
+def find_pins(
+    rings: Sequence[Ring],
+    tolerance: Tolerance,
+    pitch: Sequence[Ring] = (),
+    roles: LayerRoles = BUILT_IN_ROLES,
+) -> PinSites:
     """Pins from rings: concentric ones are one pin, one that holds another pin off its centre is a disc.
 
     One that lies about the centre of a ``pitch`` circle as well is the rim of that wheel.
@@ -181,7 +187,7 @@ def find_pins(rings: Sequence[Ring], tolerance: Tolerance, pitch: Sequence[Ring]
             kept.sort(key=lambda ring: ring.radius)
         if kept:
             site_of_group[number] = len(pins)
-            frame = next(filter(None, [frame_reason(ring.source) for ring in kept]), None)
+            frame = next(filter(None, [frame_reason(ring.source, roles) for ring in kept]), None)
             radii = tuple([ring.radius for ring in kept])
             pins.append(PinSite(len(pins), kept[0].centre, radii, tuple(kept), frame))
     discs = [

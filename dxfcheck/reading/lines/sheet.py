@@ -11,10 +11,12 @@ from dxfcheck.drawing.primitives import Fill
 from dxfcheck.reading.lines.landing import Landings, find_landings
 from dxfcheck.reading.lines.linework import Linework, Strand, make_linework
 from dxfcheck.reading.lines.pins import PinSite, PinSites, find_pins, rings_of_arcs, rings_of_lines
+from dxfcheck.reading.lines.roles import BUILT_IN_ROLES
 from dxfcheck.reading.lines.sorting import Sorted
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches, find_touches
 from dxfcheck.reading.lines.typed import typed_step
+from dxfcheck.settings import LayerRoles
 
 __all__ = ["Sheet", "lay_out"]
 
@@ -24,7 +26,8 @@ class Sheet:
     """Rings, linework and fills of a sheet, and how they meet.
 
     ``landings`` are those of all linework, before it is known what is frame, mark or link. ``of_ring`` maps a ring (by
-    id) to the primitives it was made of; ``ring_strands`` are strands used up as rings.
+    id) to the primitives it was made of; ``ring_strands`` are strands used up as rings. ``roles`` say which layers and
+    blocks are frame.
     """
 
     linework: Linework
@@ -35,6 +38,7 @@ class Sheet:
     of_ring: Mapping[int, tuple[int, ...]]
     fills: tuple[Fill, ...]
     tolerance: Tolerance
+    roles: LayerRoles = BUILT_IN_ROLES
 
     @property
     def strands(self) -> tuple[Strand, ...]:
@@ -60,7 +64,7 @@ def lay_out(kinds: Sorted, tolerance: Tolerance) -> Sheet:
     of_ring: dict[int, tuple[int, ...]] = {id(ring): (index,) for index, ring in kinds.rings}
     of_ring.update({id(ring): tuple(kinds.lines[strand][0] for strand in strands) for ring, strands in made})
     used = frozenset(strand for _, strands in made for strand in strands)
-    sites = find_pins(rings, tolerance, [ring for _, ring in kinds.pitch_rings])
+    sites = find_pins(rings, tolerance, [ring for _, ring in kinds.pitch_rings], kinds.roles)
     found = find_landings(sites.pins, linework, tolerance)
     landings = Landings(
         landings=tuple(each for each in found.landings if each.strand not in used),
@@ -75,6 +79,7 @@ def lay_out(kinds: Sorted, tolerance: Tolerance) -> Sheet:
         of_ring=of_ring,
         fills=tuple(fill for _, fill in kinds.fills),
         tolerance=tolerance,
+        roles=kinds.roles,
     )
 
 

@@ -8,6 +8,7 @@ from collections.abc import Set as AbstractSet
 from dataclasses import dataclass
 from typing import NamedTuple
 
+from dxfcheck.geometry import dot
 from dxfcheck.linkage import Joint, Link, Linkage, Pin
 from dxfcheck.reading.bodies.body import Body
 from dxfcheck.reading.lines.linework import Strand
@@ -53,7 +54,7 @@ class Named:
     ``pin_names`` by site, ``pin_keys`` to sort them naturally; ``labelled`` the sites with a label on the sheet;
     ``strand_handles`` and ``ring_handles`` (of pitch circles, by primitive) are those of single shapes,
     ``body_handles`` and ``site_handles`` of bodies and of each site's rings, ``frame_handles`` of the frame linework on
-    each fixed site; ``body_layers`` and ``site_layers`` the layer of each.
+    each fixed site; ``body_layers`` and ``site_layers`` the layer of each. ``resolution`` is that of the drawing.
     """
 
     pin_names: Mapping[int, str]
@@ -67,6 +68,7 @@ class Named:
     site_handles: Mapping[int, tuple[str, ...]]
     frame_handles: Mapping[int, tuple[str, ...]]
     site_layers: Mapping[int, str | None]
+    resolution: float = 0.0
 
 
 def find_assemblies(bodies: Sequence[Body], fixed: frozenset[int], contacts: Sequence[Contact] = ()) -> list[Assembly]:
@@ -102,8 +104,10 @@ def _assembly(
     fixed: frozenset[int],
     touching: Mapping[int, Sequence[Contact]],
 ) -> Assembly:
-    sites = tuple(sorted({site for member in members for site in bodies[member].pins}))
     contacts = tuple(dict.fromkeys(contact for member in members for contact in touching.get(member, ())))
+    # A pin of the frame that a slot of a member runs over belongs to no member.
+    over = {each.site for each in contacts if each.carrier is not None and each.site is not None}
+    sites = tuple(sorted(over.union(*(bodies[member].pins for member in members))))
     grounded = any(site in fixed for site in sites) or any(bodies[contact.bodies[0]].frame for contact in contacts)
 
     def joints_of(member: int) -> int:
@@ -183,7 +187,7 @@ def _linkage(
         )
         for pin, site in enumerate(ordered_sites)
     ]
-    others = _contact_joints(assembly, ordered, pins, pin_of, named)
+    others = _contact_joints(assembly, ordered, pins, pin_of, named, strands)
     linkage = Linkage(
         name=name,
         links=tuple(links),
@@ -191,6 +195,7 @@ def _linkage(
         joints=(*_joints(pins), *(joint for joint, _ in others)),
         frame=frame,
         grounded=assembly.grounded,
+        resolution=named.resolution,
     )
     made_of = (None, *ordered) if assembly.grounded else tuple(ordered)
     return Assembled(linkage, made_of, tuple(ordered_sites), tuple(contact for _, contact in others))
@@ -204,7 +209,12 @@ def _joints(pins: Iterable[Pin]) -> Iterator[Joint]:
 
 
 def _contact_joints(
-    assembly: Assembly, ordered: Sequence[int], pins: Sequence[Pin], pin_of: Mapping[int, int], named: Named
+    assembly: Assembly,
+    ordered: Sequence[int],
+    pins: Sequence[Pin],
+    pin_of: Mapping[int, int],
+    named: Named,
+    strands: Sequence[Strand],
 ) -> list[tuple[Joint, Contact]]:
     """Slides, pins in slots and rolling contacts, each from the first of its links to the other."""
     link_of = {body: number for number, body in enumerate(ordered, start=int(assembly.grounded))}
@@ -212,9 +222,11 @@ def _contact_joints(
     for contact in assembly.contacts:
         one, other = (link_of.get(body, 0) for body in contact.bodies)
         pin = pin_of.get(contact.site) if contact.site is not None else None
-        if contact.kind == "pin in slot" and pin is not None:
+        carrier = None if contact.carrier is None else (one, other)[contact.carrier]
+        if carrier is not None and pin is not None:
             # A pin of several links runs in the slot as the first of them.
-            other = next(link for link in pins[pin].links if link != one)
+            runner = next(link for link in pins[pin].links if link != carrier)
+            one, other = (carrier, runner) if contact.carrier == 0 else (runner, carrier)
         joint = Joint(
             kind=contact.kind,
             first=min(one, other),
@@ -231,11 +243,27 @@ def _contact_joints(
                 )
             ),
             full=contact.full,
+            carrier=carrier,
+            curves=contact.curves if one <= other else contact.curves[::-1],
+            drawn_length=_drawn_length(contact, strands),
         )
         found.append((joint, contact))
     order = {"slide": 0, "pin in slot": 1, "rolling": 2}
     found.sort(key=lambda each: (order[each[0].kind], each[0].first, each[0].second, each[0].pin or 0))
     return found
+
+
+def _drawn_length(contact: Contact, strands: Sequence[Strand]) -> float | None:
+    """How far the guide, slot or block of a slide is drawn along its direction; None for rolling and for curves."""
+    if contact.kind == "rolling" or contact.curves != (None, None):
+        return None
+    along = [
+        dot(point, contact.direction)
+        for strand in contact.strands
+        for piece in strands[strand].pieces
+        for point in (piece.start, piece.end)
+    ]
+    return max(along) - min(along) if along else None
 
 
 def _frame_link(

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from dxfcheck.drawing.primitives import Arc, Sketch
 from dxfcheck.geometry import Point
@@ -16,6 +16,7 @@ from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.sorting import Sorted
 from dxfcheck.reading.mechanisms.assemble import Assembled, Assembly, Named, assemble, find_assemblies
 from dxfcheck.reading.parts.parts import Parts
+from dxfcheck.reading.requirements.requirement_notes import Required, read_requirement_notes
 from dxfcheck.reading.texts.labels import PinNames, name_pins, natural_key
 from dxfcheck.settings import Settings
 
@@ -26,8 +27,8 @@ __all__ = ["Model", "make_model"]
 class Model:
     """The linkages of a sketch, and what it holds besides.
 
-    ``assembled`` has the linkages without drives beside their bodies, ``driven`` the same with drives. ``stray`` are
-    assemblies that show too little to be called a linkage.
+    ``assembled`` has the linkages without drives beside their bodies, ``driven`` the same with drives, ``required``
+    what notes hold them against. ``stray`` are assemblies that show too little to be called a linkage.
     ``unknown_frame_pins`` are names in the settings that no pin has. ``strand_handles`` are by strand.
     """
 
@@ -35,6 +36,7 @@ class Model:
     fixed: frozenset[int]
     assembled: tuple[Assembled, ...]
     driven: Driven
+    required: Required
     stray: tuple[Assembly, ...]
     unknown_frame_pins: tuple[str, ...]
     strand_handles: tuple[str, ...]
@@ -49,6 +51,7 @@ def make_model(sketch: Sketch, settings: Settings, kinds: Sorted, sheet: Sheet, 
     """Name the pins, group bodies into mechanisms, make their joints and give them their drives."""
     bodies = parts.bodies.bodies
     used = {site for body in bodies if not body.frame for site in body.pins}
+    used.update(each.site for each in parts.contacts if each.carrier is not None and each.site is not None)
     texts = [text for _, text in kinds.texts]
     drawn = frozenset(site for body in bodies if body.frame for site in body.pins)
     assemblies = find_assemblies(bodies, drawn, parts.contacts)
@@ -61,25 +64,32 @@ def make_model(sketch: Sketch, settings: Settings, kinds: Sorted, sheet: Sheet, 
     stray = [assembly for assembly in assemblies if not assembly.linkage]
     strand_handles = tuple(sketch.handles(strand.primitive) for strand in sheet.strands)
     named = _named(sketch, kinds, sheet, parts, names, used, strand_handles)
+    named = replace(named, resolution=_resolution(sheet, settings))
     strands = sheet.strands
     assembled = tuple(assemble(good, bodies, strands, sheet.pins, fixed, named, sheet.tolerance))
-    driven = drive_linkages(
-        [each.linkage for each in assembled],
-        [[_drawn_pieces(body, bodies, sheet) for body in each.bodies] for each in assembled],
-        texts,
-        [sketch.handles(text) for text in texts],
-        settings,
-        sketch.unit,
-    )
+    linkages = [each.linkage for each in assembled]
+    shapes = [[_drawn_pieces(body, bodies, sheet) for body in each.bodies] for each in assembled]
+    handles = [sketch.handles(text) for text in texts]
+    required = read_requirement_notes(linkages, shapes, texts, handles)
+    driven = drive_linkages(linkages, shapes, required.texts, handles, settings, sketch.unit)
     return Model(
         names=names,
         fixed=fixed,
         assembled=assembled,
         driven=driven,
+        required=required,
         stray=tuple(stray),
         unknown_frame_pins=tuple(name for name in settings.frame_pins if name not in names.names.values()),
         strand_handles=strand_handles,
     )
+
+
+def _resolution(sheet: Sheet, settings: Settings) -> float:
+    """What a coordinate may be off by: half a step of typed decimals, a stated tolerance, gaps in what meets."""
+    t = sheet.tolerance.t
+    gaps = [landing.offset for landing in sheet.landings.landings if landing.offset <= t]
+    apart = [abs(ring.centre - pin.at) for pin in sheet.pins if len(pin.rings) > 1 for ring in pin.rings]
+    return max(sheet.tolerance.typed_rings / 2.0, settings.tolerance or 0.0, *gaps, *apart, 0.0)
 
 
 def _named(

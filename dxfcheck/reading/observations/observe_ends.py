@@ -2,18 +2,20 @@
 
 from __future__ import annotations
 
+import math
 from collections import defaultdict
 from collections.abc import Iterator, Sequence
 
 from dxfcheck.drawing.primitives import Segment
-from dxfcheck.geometry import Point
+from dxfcheck.geometry import Point, angle_between_lines
 from dxfcheck.reading.bodies.body import Body
 from dxfcheck.reading.lines.landing import Miss
 from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.touches import Touch
 from dxfcheck.reading.observations.seen import Seen, about_strand, pin_name
+from dxfcheck.reading.observations.snapping import place_on_line, place_on_pin
 from dxfcheck.reading.reading import Observation
-from dxfcheck.tolerances import RIM_GAP_IN_DIAMETERS
+from dxfcheck.tolerances import GUIDE_TURN_DEGREES, RIM_GAP_IN_DIAMETERS
 
 __all__ = ["observe_ends"]
 
@@ -34,6 +36,7 @@ def _ends(seen: Seen) -> Iterator[Observation]:
     misses: defaultdict[tuple[int, int], list[Miss]] = defaultdict(list)
     for miss in seen.misses:
         misses[miss.strand, miss.end].append(miss)
+    told: list[Observation] = []
     for index, number in sorted(seen.body_of.items()):
         body = seen.bodies.bodies[number]
         if body.frame or index in seen.shaped:
@@ -42,14 +45,61 @@ def _ends(seen: Seen) -> Iterator[Observation]:
         for end in range(len(strand.ends)):
             if (index, end) in landed or _on_own_disc(seen, body, strand.ends[end]):
                 continue
-            near = _neighbours(seen, index, end)
-            if any(touch.meets for touch in near):
-                continue
-            found = _free_end(seen, strand, end, near, misses[index, end], through[index])
-            # An arm that hangs on no linkage is told of as a whole; only what it may have missed is told of its ends.
-            # A guide, or the rod in a barrel, ends where it likes.
-            if found.kind == "near-miss" or (number in seen.body_names and index not in seen.guides):
+            found = _odd_end(seen, strand, end, misses[index, end], through[index])
+            if found is not None and not _faces(found, told, seen.tolerance.t):
+                told.append(found)
                 yield found
+
+
+def _odd_end(
+    seen: Seen, strand: Strand, end: int, misses: Sequence[Miss], through: Sequence[int]
+) -> Observation | None:
+    """What is to be said of an end that lands on no pin, if anything."""
+    near = _neighbours(seen, strand.number, end)
+    if any(touch.meets for touch in near):
+        return _along_a_line(seen, strand, end, near, through) if through else None
+    found = _free_end(seen, strand, end, near, misses, through)
+    # An arm that hangs on no linkage is told of as a whole; only what it may have missed is told of its ends. A guide,
+    # or the rod in a barrel, ends where it likes.
+    linked = seen.body_of[strand.number] in seen.body_names and strand.number not in seen.guides
+    return found if linked or found.kind == "near-miss" else None
+
+
+def _faces(found: Observation, told: Sequence[Observation], t: float) -> bool:
+    """Whether the other end of the same gap was told of: it lies where this one is to be snapped to."""
+    return found.snap is not None and any(
+        each.at is not None and abs(each.at - found.snap) <= t and each.handles[::-1] == found.handles for each in told
+    )
+
+
+def _along_a_line(
+    seen: Seen, strand: Strand, end: int, near: Sequence[Touch], through: Sequence[int]
+) -> Observation | None:
+    """An end past a pin on a line that ends at that pin, in one direction with it: drawn over it, and so welded to it.
+
+    As where a coupler in line with the crank begins a little before their pin: the two would be one rigid link.
+    """
+    met = {touch.strand for touch in near if touch.meets}
+    for landing in seen.bodies.landings:
+        if landing.strand in met and landing.pin in through and landing.how == "end":
+            other = seen.strands[landing.strand]
+            straight = isinstance(strand.primitive, Segment) and isinstance(other.primitive, Segment)
+            along = [each.ends[1] - each.ends[0] for each in (strand, other)]
+            if straight and angle_between_lines(*along) <= math.radians(GUIDE_TURN_DEGREES):
+                name, at = pin_name(seen, landing.pin), seen.sites.pins[landing.pin].at
+                return about_strand(
+                    seen,
+                    "near-miss",
+                    strand,
+                    strand.ends[end],
+                    amount=abs(strand.ends[end] - at),
+                    detail=f"runs {{amount}} past pin {name} along another line and is welded to it: one rigid link",
+                    severity="warning",
+                    snap=place_on_pin(seen, strand, end, landing.pin),
+                    case="past",
+                    also=(seen.handles[landing.strand],),
+                )
+    return None
 
 
 def _neighbours(seen: Seen, strand: int, end: int) -> list[Touch]:
@@ -100,6 +150,8 @@ def _past_a_pin(seen: Seen, strand: Strand, end: int, through: Sequence[int]) ->
                 limit=limit,
                 detail=f"runs {{amount}} past the centre of pin {pin_name(seen, site)} and is read as pinned there",
                 severity="warning",
+                snap=place_on_pin(seen, strand, end, site),
+                case="past",
             )
     return None
 
@@ -126,6 +178,7 @@ def _short_of_a_pin(seen: Seen, strand: Strand, end: int, misses: Sequence[Miss]
         amount=miss.gap,
         limit=limit,
         detail=detail,
+        snap=place_on_pin(seen, strand, end, miss.pin),
     )
 
 
@@ -134,23 +187,31 @@ def _short_of_a_line(seen: Seen, strand: Strand, end: int, near: Sequence[Touch]
     if not near or inside:
         return None
     touch = min(near, key=lambda each: (each.gap, each.strand))
+    met, past = place_on_line(strand, end, seen.strands[touch.strand])
+    where = "runs {amount} past" if past else "stops {amount} short of"
     return about_strand(
         seen,
         "near-miss",
         strand,
         strand.ends[end],
-        amount=touch.gap,
+        amount=abs(met - strand.ends[end]),
         limit=seen.tolerance.t,
-        detail="stops {amount} short of the line it seems to be welded to and is not joined to it",
+        detail=f"{where} the line it seems to be welded to and is not joined to it",
+        snap=met,
+        case="overshoot" if past else "",
         also=(seen.handles[touch.strand],),
     )
 
 
 def _rods_that_miss(seen: Seen) -> Iterator[Observation]:
-    """Lines of no body whose two ends both stop just short of rims they point at: a rod with no joint left."""
+    """Lines of no body whose two ends both stop just short of rims they point at: a rod with no joint left.
+
+    Where there is a linkage, of its pins; else, as every rod may have missed, of any ring.
+    """
+    pins_meant = seen.pin_names or range(len(seen.sites.pins))
     by_strand: defaultdict[int, defaultdict[int, list[Miss]]] = defaultdict(lambda: defaultdict(list))
     for miss in seen.misses:
-        if miss.strand not in seen.body_of and miss.strand not in seen.idle and miss.pin in seen.pin_names:
+        if miss.strand not in seen.body_of and miss.strand not in seen.idle and miss.pin in pins_meant:
             by_strand[miss.strand][miss.end].append(miss)
     for index, misses in sorted(by_strand.items()):
         strand = seen.strands[index]

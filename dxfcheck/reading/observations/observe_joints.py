@@ -17,6 +17,10 @@ OF_LINKAGES = frozenset({"block-without-guide"})
 """Kinds that say nothing where the pin is no linkage's: a plate with one hole is no block."""
 
 
+AT_THE_PIN = frozenset({"off-centre-ring"})
+"""Kinds of which what lies elsewhere belongs on the pin's centre."""
+
+
 def observe_joints(sketch: Sketch, seen: Seen, parts: Parts) -> Iterator[Observation]:
     """The oddities of the joints of linkages, and of what would have been one."""
     for oddity in parts.oddities:
@@ -41,6 +45,8 @@ def observe_joints(sketch: Sketch, seen: Seen, parts: Parts) -> Iterator[Observa
             detail=oddity.detail,
             mechanism=mechanism,
             severity=oddity.severity,
+            case=oddity.case,
+            snap=seen.sites.pins[site].at if site is not None and oddity.kind in AT_THE_PIN else None,
         )
 
 

@@ -8,6 +8,7 @@ from collections.abc import Iterator
 from dxfcheck.drawing.primitives import Segment
 from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.observations.seen import Seen, about_strand, pin_name
+from dxfcheck.reading.observations.snapping import foot_on_strand, place_on_pin
 from dxfcheck.reading.reading import Observation
 from dxfcheck.tolerances import LINE_OFF_CENTRE_OF_RADIUS
 
@@ -52,7 +53,17 @@ def _end_off_centre(seen: Seen, landing: Landing) -> Iterator[Observation]:
     limit = seen.tolerance.rim(nearest)
     if landing.offset > limit:
         detail = f"points {{amount}} past the centre of pin {pin_name(seen, pin.number)}"
-        yield about_strand(seen, "off-centre-end", strand, point, amount=landing.offset, limit=limit, detail=detail)
+        yield about_strand(
+            seen,
+            "off-centre-end",
+            strand,
+            point,
+            amount=landing.offset,
+            limit=limit,
+            detail=detail,
+            snap=place_on_pin(seen, strand, landing.end or 0, pin.number),
+            case="end",
+        )
 
 
 def _line_off_centre(seen: Seen, landing: Landing, read_as: str) -> Iterator[Observation]:
@@ -62,7 +73,17 @@ def _line_off_centre(seen: Seen, landing: Landing, read_as: str) -> Iterator[Obs
     if limit < landing.offset <= LINE_OFF_CENTRE_OF_RADIUS * pin.radius:
         name = pin_name(seen, pin.number)
         detail = f"runs past the centre of pin {name} by {{amount}}, inside its ring, and is read as {read_as}"
-        yield about_strand(seen, "off-centre-end", strand, pin.at, amount=landing.offset, limit=limit, detail=detail)
+        yield about_strand(
+            seen,
+            "off-centre-end",
+            strand,
+            pin.at,
+            amount=landing.offset,
+            limit=limit,
+            detail=detail,
+            snap=foot_on_strand(pin.at, strand),
+            case="frame" if read_as == "fixed there" else "",
+        )
 
 
 def _doubles(seen: Seen) -> Iterator[Observation]:
@@ -114,13 +135,16 @@ def _stacked(seen: Seen) -> Iterator[Observation]:
     """Pins that stand on one another, where at least one of them carries a link."""
     for one, other, distance in seen.sites.stacked:
         if one in seen.pin_names or other in seen.pin_names:
-            pins = [seen.sites.pins[one], seen.sites.pins[other]]
+            # The ring that carries a link stays; the other one is to be moved onto it.
+            stays, moves = (one, other) if one in seen.pin_names else (other, one)
+            pins = [seen.sites.pins[moves], seen.sites.pins[stays]]
             names = [pin_name(seen, pin.number) for pin in pins]
             yield Observation(
                 kind="stacked-pins",
                 at=pins[0].at,
                 amount=distance,
                 limit=seen.tolerance.t,
-                subject=f"{names[0]} and {names[1]}",
+                subject=f"{names[1]} and {names[0]}",
+                snap=pins[1].at,
                 layer=pins[0].rings[0].source.layer,
             )

@@ -12,6 +12,8 @@ from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.sorting import Sorted
 from dxfcheck.reading.mechanisms.assemble import Assembly
 from dxfcheck.reading.mechanisms.model import Model
+from dxfcheck.reading.observations.exploded_labels import observe_exploded_labels
+from dxfcheck.reading.observations.set_aside import clipped_strokes, cut_outs
 from dxfcheck.reading.observations.unread_shapes import shapes_shown
 from dxfcheck.reading.parts.parts import Parts
 from dxfcheck.reading.reading import Observation
@@ -28,6 +30,7 @@ def observe_sheet(sketch: Sketch, kinds: Sorted, sheet: Sheet, parts: Parts, mod
     yield from _repeated_labels(model.linkages)
     yield from _floating(sheet, parts, model)
     yield from _specks(sheet, parts, model)
+    yield from observe_exploded_labels(sheet, parts, model)
     for name in model.unknown_frame_pins:
         known = ", ".join(sorted(set(model.names.names.values()))[:PLACES_NAMED])
         yield Observation(
@@ -108,6 +111,8 @@ def _floating(sheet: Sheet, parts: Parts, model: Model) -> Iterator[Observation]
         and not strand.frame
         and strand.primitive.source.layer in layers
     ]
+    windows = cut_outs(loose, linked, parts, sheet) | clipped_strokes(loose, parts, sheet)
+    loose = [strand for strand in loose if strand.number not in windows]
     groups = [_place_of(assembly, sheet) for assembly in model.stray]
     places = [(strand.ends or strand.corners or (strand.pieces[0].start,))[0] for strand in loose]
     count = len(loose) + len(groups)

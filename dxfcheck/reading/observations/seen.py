@@ -68,6 +68,8 @@ def about_strand(  # noqa: PLR0913 (the fields of an observation)
     limit: float | None = None,
     detail: str = "",
     severity: str | None = None,
+    snap: complex | None = None,
+    case: str = "",
     also: Iterable[str] = (),
 ) -> Observation:
     """An observation about one strand, with the names of its link and mechanism."""
@@ -83,6 +85,8 @@ def about_strand(  # noqa: PLR0913 (the fields of an observation)
         detail=detail,
         mechanism=seen.mechanisms.get(body) if body is not None else None,
         severity=severity,  # type: ignore[arg-type]
+        snap=snap,
+        case=case,
     )
 
 

@@ -191,6 +191,8 @@ def _slot_contacts(
                     site=site,
                     strands=(*slot.strands, *slot.block),
                     room=slot.shape.room(at, direction),
+                    carrier=None if slot.block else 0,
+                    curves=(slot.shape.middle, None),
                 )
 
 
@@ -243,7 +245,8 @@ def _pruned(
     for contact in contacts:
         one, other = (index[body] for body in contact.bodies)
         framed = bodies[contact.bodies[1]].frame
-        settled.append(contact._replace(bodies=(other, one) if framed else (one, other)))
+        numbered = contact._replace(bodies=(one, other))
+        settled.append(numbered.swapped() if framed else numbered)
     return Joints(
         bodies=tuple(bodies[number] for number in kept),
         contacts=tuple(settled),

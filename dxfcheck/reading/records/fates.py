@@ -45,6 +45,8 @@ def _texts(fates: dict[int, Fate], kinds: Sorted, model: Model) -> None:
             fates[index] = Fate("label", "names a pin")
         elif number in model.driven.notes:
             fates[index] = Fate("drive note", "states a drive")
+        elif number in model.required.notes:
+            fates[index] = Fate("note", "states a limit or an expectation")
         else:
             fates[index] = Fate("note", "text")
 

@@ -17,7 +17,9 @@ class Contact(NamedTuple):
     ``strands`` are what it is drawn with (block and guide, slot, rack), ``rings`` its pitch circles (indices of
     primitives). ``full`` is a rolling contact that nothing else holds together: it removes two freedoms.
     ``room`` is how far the second body can go against and along ``direction`` before the guide or slot ends (less than
-    0: it is drawn past that end); None where it has no ends.
+    0: it is drawn past that end); None where it has no ends. ``carrier`` is which of the two has the slot, 0 or 1;
+    ``curves`` are the centres of the circle that the first body offers and of that of the second (pitch circle, curved
+    slot), None for a straight one.
     """
 
     kind: Literal["slide", "pin in slot", "rolling"]
@@ -30,13 +32,23 @@ class Contact(NamedTuple):
     rings: tuple[int, ...] = ()
     full: bool = False
     room: tuple[float, float] | None = None
+    carrier: int | None = None
+    curves: tuple[Point | None, Point | None] = (None, None)
+
+    def swapped(self) -> Contact:
+        """The same with its two bodies the other way round; direction and room stay as they are."""
+        return self._replace(
+            bodies=self.bodies[::-1],
+            carrier=None if self.carrier is None else 1 - self.carrier,
+            curves=self.curves[::-1],
+        )
 
 
 class Oddity(NamedTuple):
     """Something wrong about such a joint, for the rule of name ``kind`` to weigh.
 
     ``detail`` is a phrase, with '{amount}' where the figure goes; ``amount`` and ``limit`` in the drawing's unit.
-    ``body`` is the body it is about, where there is one.
+    ``body`` is the body it is about, where there is one; ``case`` the case of its rule, where there are several.
     """
 
     kind: str
@@ -49,6 +61,7 @@ class Oddity(NamedTuple):
     strands: tuple[int, ...] = ()
     rings: tuple[int, ...] = ()
     severity: Literal["error", "warning", "note"] | None = None
+    case: str = ""
 
 
 def directed(vector: Point) -> Point:

@@ -32,7 +32,7 @@ from dxfcheck.reading.shapes.obrounds import Channel
 from dxfcheck.reading.shapes.slots import Bar, Slot
 from dxfcheck.tolerances import SMOOTH_JOINT_DEGREES
 
-__all__ = ["Holes", "OutlineLinks", "cut_slots", "find_outline_links", "holes_of", "owner_of_cut"]
+__all__ = ["OutlineLinks", "cut_slots", "find_outline_links", "owner_of_cut"]
 
 
 class Holes(NamedTuple):
@@ -166,22 +166,6 @@ def _bars_among(contours: Sequence[Contour], bars: Sequence[Bar]) -> dict[int, B
     return {number: bar for number, bar in found if number is not None}
 
 
-def holes_of(
-    contours: Sequence[Contour],
-    pins: Sequence[PinSite],
-    strands: Sequence[Strand],
-    tolerance: Tolerance,
-    voids: Sequence[Channel] = (),
-) -> Holes:
-    """Give each pin to the contours it is a hole of.
-
-    Where as many rings are drawn on one centre as outlines hold it, all have it. Where rings are fewer, outlines with
-    an arc about the hole or the hole on their axis have it, as bars do, and those drawn with it (in one block
-    reference, or alone on its layer); unless all holders are such bars, an oddity 'doubtful-hole' says how it was read.
-    """
-    return _share(contours, _wholly_inside(contours, pins, tolerance, voids), pins, strands, tolerance)
-
-
 def _share(
     contours: Sequence[Contour],
     inside: Sequence[Sequence[int]],
@@ -190,7 +174,12 @@ def _share(
     tolerance: Tolerance,
     bars: Collection[int] = (),
 ) -> Holes:
-    """Give each site inside some contours (``inside``, for each of them) to those that own it; ``bars`` always do."""
+    """Give each site inside some contours (``inside``, for each of them) to those that own it; ``bars`` always do.
+
+    Where as many rings are drawn on one centre as outlines hold it, all have it. Where rings are fewer, outlines with
+    an arc about the hole or the hole on their axis have it, as bars do, and those drawn with it (in one block
+    reference, or alone on its layer); unless all holders are such bars, an oddity 'doubtful-hole' says how it was read.
+    """
     holders: defaultdict[int, list[int]] = defaultdict(list)
     for number, sites in enumerate(inside):
         for site in sites:

@@ -37,6 +37,11 @@ class Channel(ABC):
     def length(self) -> float:
         """Length of its centre line."""
 
+    @property
+    def middle(self) -> Point | None:
+        """Centre of the circle that its centre line lies on; None for a straight one."""
+        return None
+
     @abstractmethod
     def tangent_at(self, point: Point) -> Point:
         """Unit direction of its centre line where a place is nearest to it, from the first end to the second."""
@@ -120,6 +125,11 @@ class CurvedSlot(Channel):
     @property
     def _turn(self) -> float:
         return cmath.phase((self.centres[1] - self.pole) / (self.centres[0] - self.pole)) % math.tau
+
+    @property
+    def middle(self) -> Point:
+        """Centre of the circle that its centre line lies on."""
+        return self.pole
 
     def tangent_at(self, point: Point) -> Point:
         """Unit direction of its centre line at the angle of a place, counter-clockwise; ValueError at its pole."""

@@ -131,6 +131,8 @@ def _slots(
         shapes.extend(find_curved_slots(sheet.strands, sheet.touching, tolerance))
     shapes = [shape for shape in shapes if set(shape.strands).isdisjoint(apart)]
     carrying = {landing.pin for landing in drawn}
+    # A ring of the frame alone holds a slotted link as well.
+    carrying.update(pin.number for pin in pins if pin.frame is not None)
     found = find_slots(shapes, pins, sheet.linework, tolerance, carrying=carrying, outlines=contours)
     used = {strand for slot in found.slots for strand in (*slot.strands, *slot.block)}
     in_contours = {strand for contour in contours for strand in contour.strands}

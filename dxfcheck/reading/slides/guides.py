@@ -84,6 +84,8 @@ def _rivals(best: Guide, other: Guide) -> bool:
         return False
     if other.axis != best.axis:
         # A wall that closes a cylinder runs beside the piston at the end of its stroke.
+        if other.how == STROKES and best.how == INTERRUPTED and best.frame:
+            return False  # the hatch along each piece of the guide ends at the block, too
         return other.how != BESIDE or best.how == BESIDE
     shared = set(best.strands) & set(other.strands)
     return not shared and not (best.frame and other.frame)

@@ -91,6 +91,7 @@ def _welded(slide: Slide, body_of: Mapping[int, int], pins: Sequence[PinSite]) -
         site=box.sites[0],
         body=body_of.get(box.strands[0]),
         strands=(*box.strands, *slide.guide.strands),
+        case="welded",
     )
 
 

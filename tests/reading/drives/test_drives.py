@@ -125,6 +125,26 @@ def test_options_and_notes_on_several_links_all_count_options_first() -> None:
     ]
 
 
+def test_a_drive_of_the_settings_comes_before_the_note_and_after_the_option_on_the_same_link() -> None:
+    settings = Settings(settings_drives=("A-B = 3 rad/s",))
+    assert driven(*tipper(), note("ω_AB = 10 rad/s"), settings=settings) == {"A-B": (3.0, "settings")}
+    settings = Settings(settings_drives=("A-B = 3 rad/s", "C-D = 1 rad/s"), drives=("A-B = 2 rad/s",))
+    assert driven(*tipper(), note("ω_AB = 10 rad/s"), settings=settings) == {
+        "A-B": (2.0, "option"),
+        "C-D": (1.0, "settings"),
+    }
+
+
+def test_a_drive_of_the_settings_says_so() -> None:
+    found = read(*tipper(), settings=Settings(settings_drives=("A-B = 3 rad/s",)))
+    (evidence,) = [each for each in found.evidence if each.subject == "drive"]
+    assert evidence.why == "stated in the settings: A-B = 3 rad/s"
+
+
+def test_a_drive_of_the_settings_for_no_link_is_an_unknown_drive() -> None:
+    assert "no link is called 'X-Y'" in unknown(*tipper(), settings=Settings(settings_drives=("X-Y = 1 rad/s",)))
+
+
 def test_an_option_for_no_link_is_an_unknown_drive() -> None:
     assert "no link is called 'X-Y'" in unknown(*tipper(), settings=Settings(drives=("X-Y = 1 rad/s",)))
 

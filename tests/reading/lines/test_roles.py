@@ -4,6 +4,7 @@ import pytest
 
 from dxfcheck.drawing.primitives import BlockUse, Source
 from dxfcheck.reading.lines.roles import construction_reason, frame_reason, is_label_layer, is_pitch
+from dxfcheck.settings import LayerRoles
 
 
 def source(layer: str = "0", linetype: str = "CONTINUOUS", *blocks: str) -> Source:
@@ -25,6 +26,18 @@ def test_other_layers_say_nothing_of_a_frame(layer: str) -> None:
 def test_a_frame_block_counts_however_deep_it_is_nested() -> None:
     assert frame_reason(source("0", "CONTINUOUS", "MACHINE", "ground_symbol")) == "block ground_symbol"
     assert frame_reason(source("0", "CONTINUOUS", "MACHINE", "PIN")) is None
+
+
+def test_stated_layers_take_the_place_of_the_built_in_ones() -> None:
+    roles = LayerRoles(frame=("Träger*",), pitch=("teilkreis",), construction=())
+    assert frame_reason(source("TRAEGER"), roles) is None
+    assert frame_reason(source("träger-2"), roles) == "layer träger-2"
+    assert frame_reason(source("TRAGER"), roles) == "layer TRAGER"  # accents count as little as case
+    assert frame_reason(source("0", "CONTINUOUS", "TRÄGER"), roles) == "block TRÄGER"
+    assert frame_reason(source("FRAME"), roles) is None
+    assert is_pitch(source("TEILKREIS"), roles)
+    assert not is_pitch(source("PITCH"), roles)
+    assert construction_reason(source("DIM"), roles) is None
 
 
 def test_the_layer_is_told_before_the_block() -> None:

@@ -1,12 +1,15 @@
 from __future__ import annotations
 
+import cmath
+import math
+
 import pytest
 
 from dxfcheck.linkage import Linkage
 from dxfcheck.reading.parts.joints import Joints
 from dxfcheck.settings import Settings
 from tests.reading.slides.sliders import B, C, block, crank_and_rod, dibber, guide, named, slid, strokes
-from tests.sketches import Drawn, laid_out, line, linkage, obround, observed, path, read, rectangle, ring, rod
+from tests.sketches import Drawn, arc, laid_out, line, linkage, obround, observed, path, read, rectangle, ring, rod
 
 SLOT = obround(130 + 0j, 180 + 0j, 4.5, handle="slot")
 FRAME_SLOT = SLOT._replace(layer="FRAME")
@@ -49,6 +52,44 @@ def test_a_slot_on_a_link() -> None:
     assert kinds(found) == [("pin in slot", "A-B", "D-E")]
     assert found.joints[-1].direction == 1j
     assert len(found.joints) == 3
+
+
+def test_a_slotted_link_runs_over_a_ring_of_the_frame_that_holds_nothing_else() -> None:
+    """A slotted bar on the crank pin B, guided by the fixed pin D."""
+    pins = {"A": 0j, "B": 40 + 0j, "D": 140 + 0j}
+    rings = [ring(at, layer="FRAME" if name in "AD" else "0") for name, at in pins.items()]
+    bar = (line(44 + 0j, 115 + 0j), obround(120 + 0j, 160 + 0j, 5, handle="slot"))
+    found = linkage(*rings, *named(**pins), rod(0j, 40 + 0j, handle="crank"), *bar)
+    assert kinds(found) == [("pin in slot", "frame", "B")]
+    slot = found.joints[-1]
+    assert [(pin.name, pin.fixed) for pin in found.pins] == [("A", True), ("B", False), ("D", True)]
+    assert (slot.pin, slot.carrier, len(found.joints)) == (2, 2, 3)
+
+
+def test_a_joint_tells_whose_the_slot_is_and_on_which_circle_it_runs() -> None:
+    on_frame = linkage(*crank_and_rod(), FRAME_SLOT).joints[-1]
+    assert (on_frame.carrier, on_frame.curves) == (0, (None, None))
+    middle, turn = C + 200j, 8.0
+    ends = [middle + cmath.rect(200.0, math.radians(-90 + side)) for side in (-turn, turn)]
+    slot = (
+        arc(middle, 195.5, -90 - turn, 2 * turn, layer="FRAME"),
+        arc(middle, 204.5, -90 - turn, 2 * turn, layer="FRAME"),
+        arc(ends[0], 4.5, 90 - turn, 180, layer="FRAME"),
+        arc(ends[1], 4.5, -90 + turn, 180, layer="FRAME"),
+    )
+    bent = linkage(*crank_and_rod(), *slot).joints[-1]
+    assert (bent.kind, bent.carrier) == ("pin in slot", 0)
+    assert bent.direction == pytest.approx(1 + 0j)
+    assert bent.curves[0] == pytest.approx(middle)
+    assert bent.curves[1] is None
+
+
+def test_a_rolling_contact_tells_the_centres_of_its_wheels() -> None:
+    pins = {"A": 0j, "D": 80 + 0j}
+    rings = [ring(at, layer="FRAME") for at in pins.values()]
+    wheels = [ring(0j, 20.0, layer="PITCH"), ring(80 + 0j, 60.0, layer="PITCH")]
+    (mesh,) = [joint for joint in linkage(*rings, *named(**pins), *wheels).joints if joint.kind == "rolling"]
+    assert mesh.curves == (0j, 80 + 0j)
 
 
 def test_a_pin_past_the_end_of_its_slot_is_told() -> None:

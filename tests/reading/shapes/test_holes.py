@@ -13,7 +13,7 @@ from dxfcheck.reading.lines.linework import make_linework
 from dxfcheck.reading.lines.pins import find_pins
 from dxfcheck.reading.lines.touches import find_touches
 from dxfcheck.reading.shapes.contours import Contour, find_contours
-from dxfcheck.reading.shapes.holes import OutlineLinks, cut_slots, find_outline_links, holes_of, owner_of_cut
+from dxfcheck.reading.shapes.holes import OutlineLinks, cut_slots, find_outline_links, owner_of_cut
 from dxfcheck.reading.shapes.obrounds import Channel, Obround, find_obrounds
 from dxfcheck.reading.shapes.slots import find_slots
 from tests.sketches import SOURCE, TOLERANCE, Drawn, arc, laid_out, line, obround, path, ring, sketch
@@ -147,9 +147,9 @@ def test_the_source_of_a_ring_decides_where_its_outlines_differ(
     pins = find_pins([Ring(source(*ring_source), 0j, 4.0), Ring(SOURCE, 90j, 4.0)], TOLERANCE).pins
     touching = find_touches(linework, TOLERANCE, TOLERANCE.close)
     found = find_contours(linework, touching, TOLERANCE, (), pins)
-    holes_found = holes_of(found, pins, linework.strands, TOLERANCE)
-    assert [sites == (0,) for sites in holes_found.held] == owners
-    assert [odd.kind for odd in holes_found.oddities] == ["doubtful-hole"]
+    links = find_outline_links(found, linework.strands, (), pins, (), TOLERANCE)
+    assert [(strand in held(links)) for strand in range(len(found))] == owners
+    assert [odd.kind for odd in links.oddities] == ["doubtful-hole"]
 
 
 def test_a_nut_round_a_hole_is_no_holder_of_it() -> None:

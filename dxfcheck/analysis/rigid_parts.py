@@ -1,0 +1,103 @@
+"""Which links form rigid sub-structures at the drawn pose, whatever the drives do.
+
+Links without relative motion at a joint in any of the allowed motions are candidates; what hangs together so is rigid
+only if it is so by itself, taken out of the linkage: a crank at rest in line with its coupler is not locked. What is
+not is looked at again on its own, until every part is rigid or a single link. Source of the count: columns less rank,
+as for the whole (constraints.py).
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from dxfcheck.analysis.constraints import Body, Matrix, bodies_of
+from dxfcheck.analysis.freedom import freedom_at_pose, part_of
+from dxfcheck.analysis.results import RigidParts
+from dxfcheck.analysis.topology import Topology, topology_of
+from dxfcheck.analysis.vicinity import fastest_nearby
+from dxfcheck.linkage import Linkage
+from dxfcheck.tolerances import STILL_JOINT
+
+__all__ = ["rigid_parts"]
+
+
+def rigid_parts(linkage: Linkage, topology: Topology, bodies: list[Body], motions: Matrix) -> RigidParts:
+    """The moving links that are rigid with the frame, and the other groups of links rigid in themselves.
+
+    ``motions`` are the motions that the constraints allow, one a row, no drive applied. Joints with the held link of an
+    assembly that nothing ties to the frame count like all others.
+    """
+    with_frame: list[int] = []
+    others: list[tuple[int, ...]] = []
+    for links in _rigid_within(linkage, topology, bodies, motions):
+        if linkage.frame in links and linkage.grounded:
+            with_frame += [link for link in links if link != linkage.frame]
+        else:
+            others.append(links)
+    return RigidParts(with_frame=tuple(with_frame), others=tuple(sorted(others)))
+
+
+def _rigid_within(linkage: Linkage, topology: Topology, bodies: list[Body], motions: Matrix) -> list[tuple[int, ...]]:
+    """Every largest group of two or more links that is rigid by itself, in ascending order."""
+    if not len(motions):
+        return [tuple(range(topology.links))] if topology.links > 1 else []
+    found: list[tuple[int, ...]] = []
+    for links in _groups(topology, _still_joints(linkage, topology, bodies, motions)):
+        part = part_of(linkage, links)
+        inner = topology_of(part)
+        own = bodies_of(part)
+        left = freedom_at_pose(part, inner, own).motions
+        if not len(left):
+            found.append(links)
+        elif len(links) < topology.links:
+            found += [tuple([links[link] for link in group]) for group in _rigid_within(part, inner, own, left)]
+    return found
+
+
+def _groups(topology: Topology, still: NDArray[np.bool_]) -> list[tuple[int, ...]]:
+    """Links that hang together by joints without relative motion, two or more."""
+    around: list[list[int]] = [[] for _ in range(topology.links)]
+    for joint, is_still in zip(topology.joints, still.tolist(), strict=True):
+        if is_still:
+            around[joint.first].append(joint.second)
+            around[joint.second].append(joint.first)
+    groups = []
+    met = [False] * topology.links
+    for first in range(topology.links):
+        if met[first] or not around[first]:
+            continue
+        met[first] = True
+        group = [first]
+        for link in group:
+            for other in around[link]:
+                if not met[other]:
+                    met[other] = True
+                    group.append(other)
+        groups.append(tuple(sorted(group)))
+    return groups
+
+
+def _still_joints(linkage: Linkage, topology: Topology, bodies: list[Body], motions: Matrix) -> NDArray[np.bool_]:
+    """For each joint whether its two links do not move against one another in any motion, beside the fastest near."""
+    first = np.array([joint.first for joint in linkage.joints], dtype=np.intp)
+    second = np.array([joint.second for joint in linkage.joints], dtype=np.intp)
+    sizes = np.array([body.size for body in bodies])
+    centres = np.array([body.centre for body in bodies])
+    least = np.minimum(sizes[first], sizes[second])
+    places = np.array([joint.at for joint in linkage.joints], dtype=complex)
+    slides = np.array([joint.kind == "slide" for joint in linkage.joints], dtype=bool)
+    places[slides] = np.where(sizes[first] <= sizes[second], centres[first], centres[second])[slides]
+    apart = np.zeros(len(linkage.joints))
+    speeds = np.zeros(topology.links)
+    held = 3 * topology.frame
+    for motion in motions:
+        whole = np.concatenate([motion[:held], np.zeros(3), motion[held:]]).reshape(-1, 3)
+        turns = whole[:, 0] / sizes
+        velocities = whole[:, 1] + 1j * whole[:, 2]
+        here, there = (velocities[ends] + 1j * turns[ends] * (places - centres[ends]) for ends in (first, second))
+        apart += ((turns[second] - turns[first]) * least) ** 2 + abs(there - here) ** 2
+        speeds = np.maximum(speeds, abs(whole).max(axis=1))
+    nearby = fastest_nearby(topology, speeds)
+    still: NDArray[np.bool_] = np.sqrt(apart) <= STILL_JOINT * np.maximum(nearby[first], nearby[second])
+    return still

@@ -1,0 +1,1 @@
+"""What changed between two drawings as a mechanism; see ``compare.compare_reports``."""

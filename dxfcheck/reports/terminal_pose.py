@@ -1,0 +1,76 @@
+"""The drawn pose in words: freedoms beyond the count, who pushes whom, how far speeds can be trusted."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+
+from dxfcheck.analysis.results import Advantage, Analysis, FiniteMotion, SpeedBounds
+from dxfcheck.linkage import Linkage
+from dxfcheck.reports.terminal_layout import figure, listed
+from dxfcheck.tolerances import SHOWN_AS_ZERO
+
+__all__ = ["finite_words", "push_sentences", "trust_words"]
+
+SHOWN = 6
+"""At most so many pushes and advantages are put into words; the JSON report has all."""
+
+
+def finite_words(finite: FiniteMotion, unit: str) -> str:
+    """What a small step showed, with its figures."""
+    step = f"after a turn of {math.degrees(finite.turn):.2g} deg"
+    if finite.verdict == "through":
+        return f"it moves through: {step} all joints close again, while these lengths stay exact"
+    misfit = f"off by {finite.misfit:.2g} {unit} (limit {finite.limit:.2g})"
+    if finite.verdict == "locked":
+        left_open = f"{step} a joint stays open by {finite.opening:.2g} {unit}"
+        return f"momentary: it locks after the first step; {left_open}, as if a length were {misfit}"
+    kept = "1 freedom is" if finite.freedom == 1 else f"{finite.freedom} freedoms are"
+    return f"momentary: {step} {kept} left"
+
+
+def push_sentences(linkage: Linkage, analysis: Analysis, unit: str) -> Iterator[tuple[str, str]]:
+    """Label and text of the transmission angles and of the drive's speed over the outputs'."""
+    names = [link.name for link in linkage.links]
+    for number, each in enumerate(analysis.transmissions[:SHOWN]):
+        degrees = math.degrees(each.angle)
+        angle = f"transmission angle {degrees:.4g} deg"
+        if each.square:
+            angle += f" (pressure angle {90.0 - degrees:.4g} deg)"
+        pin = linkage.pins[each.pin].name
+        yield "" if number else "push", f"{names[each.pusher]} pushes {names[each.pushed]} at {pin}: {angle}"
+    if analysis.advantages:
+        ratios = [f"{names[each.link]} {_ratio(linkage, each, unit)}" for each in analysis.advantages[:SHOWN]]
+        yield "advantage", f"drive speed over output speed: {listed(ratios)}"
+
+
+def _ratio(linkage: Linkage, each: Advantage, unit: str) -> str:
+    """The figure, with its unit where the one turns and the other slides."""
+    if each.ratio is None:
+        return "no limit"
+    drive_turns = linkage.drives[0].kind == "turn"
+    if drive_turns == each.turns:
+        return figure(each.ratio)
+    return f"{figure(each.ratio)} {f'rad/{unit}' if drive_turns else f'{unit}/rad'}"
+
+
+def trust_words(linkage: Linkage, analysis: Analysis, bounds: SpeedBounds, unit: str) -> str:
+    """What the speeds may be off by, for the link that is off by the greatest part of itself."""
+    turns = [abs(motion.angular_velocity or 0.0) for motion in analysis.links]
+    speeds = [abs(motion.velocity or 0.0) for motion in analysis.pins]
+    parts = [
+        (off / value, name)
+        for values, offs, names in (
+            (turns, bounds.links, [link.name for link in linkage.links]),
+            (speeds, bounds.pins, [pin.name for pin in linkage.pins]),
+        )
+        for value, off, name in zip(values, offs, names, strict=True)
+        if value > SHOWN_AS_ZERO * max(values)
+    ]
+    if not parts:
+        return ""
+    part, name = max(parts)
+    if part < SHOWN_AS_ZERO:
+        return "places are drawn exactly: no digit shown is in doubt"
+    within = f"every coordinate within {bounds.resolution:.2g} {unit}"
+    return f"{within}: speeds within {100.0 * part:.2g} % ({name} at worst)"
