@@ -45,6 +45,7 @@ class Requirement:
     ``against`` names the link that a ratio or a relative speed is taken to, '' for the frame. ``least`` and
     ``greatest`` bound it, None where it is not bounded. ``expected`` is the figure that was stated, where there is
     one; the bounds then are how far off it may be. Where ``signed`` is False the size is held against the bounds.
+    One without any figure lifts what others state of its subject.
     ``stated`` is the text as written, ``where`` the file and line it stands in ('' for an option or a note).
     ``mechanism`` is the one that a note belongs to; '' for every one that has such a subject.
     """
@@ -62,6 +63,11 @@ class Requirement:
     at: Point | None = None
     handles: tuple[str, ...] = ()
     mechanism: str = ""
+
+    @property
+    def lifts(self) -> bool:
+        """Whether it bounds nothing, and so takes back what others state of its subject."""
+        return self.least is None and self.greatest is None and self.expected is None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -578,3 +578,21 @@ may be off by is then worked out only where it is shown."""
 
 BOUNDS_SHOWN_OF = 40
 """On a sheet of at most so many mechanisms what each speed may be off by is shown, however small."""
+
+AT_REST_BESIDE = 1e-10
+"""In a large mechanism a link that moves by less than this part of the motion of those it hangs on rests: that is
+rounding error."""
+
+IDLE_RELATIVE = 1e-6
+"""A link's own constraints hold it where their singular values are above this part of the greatest: joints at one place
+lie within rounding of one another."""
+
+FREED_LINKS = 24
+"""In a locked part of at most so many links each is tried for whether its removal lets the others move; a person looks
+through no longer list, and each try costs two ranks."""
+
+SETTLING_DRIVES = 6
+"""So many missing drives at most are proposed by name: whoever lacks more has not begun to state them."""
+
+RIGID_TRIANGLE = 3
+"""Three bars pinned at their ends are a usual way to draw one link, and no locked part is told of."""

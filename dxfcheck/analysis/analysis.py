@@ -3,16 +3,14 @@
 from __future__ import annotations
 
 from dxfcheck.analysis.constraints import bodies_of
-from dxfcheck.analysis.dependence import dependent_joints
-from dxfcheck.analysis.free_parts import free_parts
+from dxfcheck.analysis.faults import faults_of, faults_without_frame
 from dxfcheck.analysis.freedom import freedom_at_pose
 from dxfcheck.analysis.loop_equations import LoopSolution, solve_loops
 from dxfcheck.analysis.loops import link_loops
 from dxfcheck.analysis.mobility import count_mobility
 from dxfcheck.analysis.motions import joint_motions, link_motions, pin_motions, unknown_motions
 from dxfcheck.analysis.pose import bounds_of, finite_of, pose_of
-from dxfcheck.analysis.results import Analysis, DriveVerdict, Mobility
-from dxfcheck.analysis.rigid_parts import rigid_parts
+from dxfcheck.analysis.results import Analysis, DriveVerdict
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.analysis.transmission import advantages
 from dxfcheck.analysis.velocity import Motion, apply_drives
@@ -34,6 +32,7 @@ def analyse(linkage: Linkage, *, bounds_shown: bool = True) -> Analysis:
     mobility = count_mobility(linkage, at_pose)
     if not linkage.grounded:
         links, pins, joints = unknown_motions(linkage)
+        found = faults_without_frame(linkage, topology, bodies, mobility, freedom.motions)
         return Analysis(
             mobility=mobility,
             loops=link_loops(topology),
@@ -44,14 +43,15 @@ def analyse(linkage: Linkage, *, bounds_shown: bool = True) -> Analysis:
             solved=False,
             disagreement=None,
             rank_gap=freedom.gap,
-            rigid_parts=rigid_parts(linkage, topology, bodies, freedom.motions) if _is_unusual(mobility) else None,
-            dependent_joints=dependent_joints(linkage, topology, bodies) if at_pose > mobility.count else (),
+            rigid_parts=found.rigid_parts,
+            dependent_joints=found.dependent_joints,
         )
     pose = pose_of(linkage)
     motion, verdicts = apply_drives(linkage, topology, bodies, freedom.motions, pose.dead_centres)
     second = solve_loops(linkage, topology, motion.taken, at_pose) if motion.taken else None
     solved = _is_solved(motion, verdicts)
     links, joints = link_motions(linkage, motion), joint_motions(linkage, motion)
+    faults = faults_of(linkage, topology, mobility, freedom.motions, motion, solved=solved)
     return Analysis(
         mobility=mobility,
         loops=link_loops(topology),
@@ -63,22 +63,13 @@ def analyse(linkage: Linkage, *, bounds_shown: bool = True) -> Analysis:
         disagreement=None if second is None else _disagreement(motion, second),
         dead_centres=pose.dead_centres,
         rank_gap=freedom.gap,
-        rigid_parts=(
-            rigid_parts(linkage, topology, bodies, freedom.motions) if _is_unusual(mobility) or not solved else None
-        ),
-        dependent_joints=dependent_joints(linkage, topology, bodies) if at_pose > mobility.count else (),
-        free_parts=() if solved else free_parts(linkage, motion),
         near_dead_centres=pose.near_dead_centres,
         transmissions=pose.transmissions,
         advantages=advantages(linkage, links, joints, [linkage.drives[number] for number in motion.taken]),
         finite=finite_of(linkage, bodies, freedom, mobility),
         bounds=bounds_of(linkage, topology, motion, wanted=bounds_shown) if solved else None,
+        **faults._asdict(),
     )
-
-
-def _is_unusual(mobility: Mobility) -> bool:
-    """Whether the count says less than there is, or that nothing can move: then parts are looked at for themselves."""
-    return mobility.at_pose != mobility.count or mobility.count <= 0
 
 
 _KEPT = frozenset({"taken", "repeats"})

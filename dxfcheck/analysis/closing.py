@@ -12,10 +12,10 @@ from dataclasses import dataclass
 from typing import Literal, NamedTuple
 
 from dxfcheck.analysis.closure import Chain, Hanging, Term
-from dxfcheck.analysis.solved_linkage import acts_as
+from dxfcheck.analysis.solved_linkage import SolvedLinkage, acts_as
 from dxfcheck.geometry import Point, cross, dot
 from dxfcheck.linkage import Joint
-from dxfcheck.tolerances import FLAT_TRIANGLE, SHOWN_AS_ZERO
+from dxfcheck.tolerances import FLAT_TRIANGLE, SHOWN_AS_ZERO, WORKING_UNKNOWNS
 
 __all__ = ["Closing", "Equation", "StepForm", "Triangle", "Unknown", "close"]
 
@@ -68,8 +68,9 @@ class Closing:
     """What is sought in a step and what settles it.
 
     'given': drives and known links state all. 'line' and 'triangle': the two ``chains`` are equal where they meet, at
-    ``joint``, with one or two unknowns. 'equations': in all other cases. ``gap`` is the greatest closing error, length
-    units a second (a turning's taken at the linkage's own size).
+    ``joint``, with one or two unknowns. 'equations': in all other cases; of more unknowns than WORKING_UNKNOWNS they
+    are not ``written_out``. ``gap`` is the greatest closing error, length units a second (a turning's taken at the
+    linkage's own size).
     """
 
     form: StepForm
@@ -79,6 +80,7 @@ class Closing:
     triangle: Triangle | None = None
     equations: tuple[Equation, ...] = ()
     gap: float = 0.0
+    written_out: bool = True
 
 
 def close(hanging: Hanging) -> Closing:
@@ -88,10 +90,21 @@ def close(hanging: Hanging) -> Closing:
         simple = _simple(hanging, hanging.closing[0], unknowns, SHOWN_AS_ZERO * hanging.solved.fastest)
         if simple is not None:
             return simple
+    if len(unknowns) > WORKING_UNKNOWNS:
+        gap = max([_joint_gap(hanging.solved, number) for number in hanging.closing], default=0.0)
+        return Closing(form="equations", unknowns=unknowns, gap=gap, written_out=False)
     equations = tuple(_equations(hanging, unknowns))
     gaps = [each.gap * (hanging.solved.reach if each.axis is None else 1.0) for each in equations]
     form: StepForm = "equations" if unknowns else "given"
     return Closing(form=form, unknowns=unknowns, equations=equations, gap=max(gaps, default=0.0))
+
+
+def _joint_gap(solved: SolvedLinkage, number: int) -> float:
+    """By how much the two links of a joint differ in what it holds."""
+    joint = solved.linkage.joints[number]
+    relative = solved.velocity(joint.second, joint.at) - solved.velocity(joint.first, joint.at)
+    turning = abs(solved.turns[joint.second] - solved.turns[joint.first]) if acts_as(joint) == "slide" else 0.0
+    return max([turning * solved.reach, *[abs(dot(relative, axis)) for axis in _axes(joint)]])
 
 
 def _unknowns(hanging: Hanging) -> tuple[Unknown, ...]:
@@ -163,14 +176,17 @@ def triangle_of(known: Point, one: Point, other: Point, noise: float) -> Triangl
 
 
 def _equations(hanging: Hanging, unknowns: tuple[Unknown, ...]) -> Iterator[Equation]:
-    """What every closing joint, and every drive that is no plain value, asks of the unknowns."""
+    """What every closing joint, and every drive that is no plain value, asks of the unknowns.
+
+    At a joint that is the first link's velocity less the second's; with its sign turned where no cell is positive.
+    """
     place = {(each.kind, each.number): number for number, each in enumerate(unknowns)}
     values = [each.value for each in unknowns]
     for number in hanging.closing:
         joint = hanging.solved.linkage.joints[number]
-        chains = hanging.chain(joint.second, joint.at), hanging.chain(joint.first, joint.at)
+        chains = hanging.chain(joint.first, joint.at), hanging.chain(joint.second, joint.at)
         if acts_as(joint) == "slide":
-            cells, right = _turning(hanging, (joint.second, joint.first), place)
+            cells, right = _turning(hanging, (joint.first, joint.second), place)
             yield _equation(values, cells, right, joint=number)
         for axis in _axes(joint):
             cells, right = _along(chains, axis, place)
@@ -205,6 +221,8 @@ def _equation(
     drive: int | None = None,
     axis: Point | None = None,
 ) -> Equation:
+    if max(cells, default=0.0) <= 0.0:
+        cells, right = [0.0 - cell for cell in cells], 0.0 - right
     left = math.fsum([cell * value for cell, value in zip(cells, values, strict=True)])
     return Equation(joint=joint, drive=drive, axis=axis, cells=tuple(cells), right=right, gap=abs(left - right))
 

@@ -42,9 +42,16 @@ from dxfcheck.analysis.constraints import (
 from dxfcheck.analysis.fronts import Front, fronts_of
 from dxfcheck.analysis.topology import Topology
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import MOST_PUT_OFF, RANK_DOUBTFUL, RANK_GREATEST, STILL_OF_BORDER, TALLEST_MOTION
+from dxfcheck.tolerances import (
+    AT_REST_BESIDE,
+    MOST_PUT_OFF,
+    RANK_DOUBTFUL,
+    RANK_GREATEST,
+    STILL_OF_BORDER,
+    TALLEST_MOTION,
+)
 
-__all__ = ["Condition", "Stage", "freedom_by_fronts", "split_rows", "split_with_care", "stages"]
+__all__ = ["Condition", "Stage", "freedom_by_fronts", "motion_under", "split_rows", "split_with_care", "stages"]
 
 
 class Remainder(NamedTuple):
@@ -106,28 +113,60 @@ _NOTHING: Matrix = np.zeros((0, 0))
 
 
 class Condition(NamedTuple):
-    """A further constraint, as a sum of unknowns that is nothing: (link, which of w, vx and vy, coefficient)."""
+    """A further constraint: a sum of unknowns (link, which of w, vx and vy, coefficient), and what it shall come to."""
 
     cells: tuple[tuple[int, int, float], ...]
+    wanted: float
 
 
-def freedom_by_fronts(
-    linkage: Linkage, topology: Topology, bodies: list[Body], conditions: tuple[Condition, ...] = ()
-) -> Freedom:
-    """The motions that the constraints allow: what constraints.freedom_of gives, at a cost in step with the links.
-
-    ``conditions`` are asked for besides: drives that stand still.
-    """
+def freedom_by_fronts(linkage: Linkage, topology: Topology, bodies: list[Body]) -> Freedom:
+    """The motions that the constraints allow: what constraints.freedom_of gives, at a cost in step with the links."""
     steps: list[Step] = []
     least, most, any_rows = 1.0, 0.0, False
-    for stage in stages(linkage, topology, bodies, split_rows, conditions):
+    for stage in stages(linkage, topology, bodies, split_rows):
         split = stage.split
         if stage.joints or stage.parts:
             any_rows = True
             least, most = min(least, split.gap[0]), max(most, split.gap[1])
         if split.carry is not None:
             steps.append(Step(stage.own, stage.columns[len(stage.own) :], split.carry, split.free))
-    return Freedom(_motions_of(steps, topology), (least, most) if any_rows else None)
+    raw = _motions_of(steps, topology)
+    flat = np.delete(raw, topology.frame, axis=0).reshape(3 * (topology.links - 1), raw.shape[2])
+    return Freedom(_orthonormal_motions(flat), (least, most) if any_rows else None)
+
+
+def _orthonormal_motions(columns: Matrix) -> Matrix:
+    """The same motions, of unit size and square to one another, one a row."""
+    if columns.shape[1] == 1:
+        only: Matrix = (columns / np.linalg.norm(columns)).T
+        return only
+    return np.asarray(np.linalg.qr(columns)[0].T) if columns.size else columns.T
+
+
+def motion_under(
+    linkage: Linkage, topology: Topology, bodies: list[Body], conditions: tuple[Condition, ...]
+) -> tuple[Matrix, Matrix] | None:
+    """One motion that fulfils further conditions, and the motions that leave them at nothing; None if there is none.
+
+    Both over (w, vx, vy) of all links, the held one too; the free motions one a row, none a mixture of others: what
+    rests in them has no rounding error. The conditions are written with what they shall come to as the first unknown of
+    a link of its own, dealt with last; its other two are nothing.
+    """
+    clock = topology.links
+    extended = [Condition((*each.cells, (clock, 0, -each.wanted)), 0.0) for each in conditions]
+    extended += [Condition(((clock, which, 1.0),), 0.0) for which in (1, 2)]
+    wider = topology._replace(links=clock + 1)
+    steps = [
+        Step(stage.own, stage.columns[len(stage.own) :], stage.split.carry, stage.split.free)
+        for stage in stages(linkage, wider, [*bodies, Body(0j, 0.0)], split_rows, tuple(extended), clock)
+        if stage.split.carry is not None
+    ]
+    motions = _motions_of(steps, wider)
+    if not steps or clock not in steps[-1].links or steps[-1].free.shape[1] != 1 or not motions[clock, 0, -1]:
+        return None
+    flat = motions[:clock].reshape(3 * clock, motions.shape[2])
+    free = flat[:, :-1]
+    return flat[:, -1] / motions[clock, 0, -1], (free / np.linalg.norm(free, axis=0)).T
 
 
 def stages(
@@ -136,6 +175,7 @@ def stages(
     bodies: list[Body],
     splitter: Splitter,
     conditions: tuple[Condition, ...] = (),
+    last: int = -1,
 ) -> Iterator[Stage]:
     """Takes every step of the order; ``splitter`` is split_rows, or split_with_care to be told of every row."""
     step_of_grid: list[float] = []
@@ -147,7 +187,8 @@ def stages(
 
     rows_of = _Rows(linkage, topology, bodies, conditions)
     remainders: list[Remainder] = []
-    for front in fronts_of(topology, [{link for link, _, _ in condition.cells} for condition in conditions]):
+    related = [{link for link, _, _ in condition.cells} for condition in conditions]
+    for front in fronts_of(topology, related, last):
         numbers = tuple([number for number in front.parts if len(remainders[number].rows)])
         parts = [remainders[number] for number in numbers]
         for number in numbers:
@@ -217,12 +258,16 @@ def _front_matrix(front: Front, columns: tuple[int, ...], parts: list[Remainder]
 
 
 def split_rows(matrix: Matrix, own: int, tolerance: Callable[[], float], *, may_put_off: bool) -> Split:
-    """The common case without a full decomposition: the links follow their border firmly and no row repeats another."""
+    """The common case without a full decomposition: the links follow their border firmly and no row repeats another.
+
+    The triangle of a QR of all rows holds that of the links' own columns, what stands beside it, and below that what is
+    left for the border; the orthogonal factor is not asked for.
+    """
     rows, columns = matrix.shape
     if rows < own:
         return split_with_care(matrix, own, tolerance, may_put_off=may_put_off)
-    turned, upper = np.linalg.qr(matrix[:, :own], mode="complete")
-    upper = upper[:own]
+    triangle: Matrix = np.asarray(np.linalg.qr(matrix, mode="r"))
+    upper = triangle[:own, :own]
     try:
         inverse = np.linalg.inv(upper)
     except np.linalg.LinAlgError:
@@ -233,13 +278,12 @@ def split_rows(matrix: Matrix, own: int, tolerance: Callable[[], float], *, may_
     free = np.zeros((own, 0))
     if own == columns:
         return Split(np.zeros((own, 0)), free, _NOTHING, (firm, 0.0), _NOTHING, _NOTHING)
-    beside = turned.T @ matrix[:, own:]
-    carry = inverse @ beside[:own]
+    carry = inverse @ triangle[:own, own:]
     np.negative(carry, out=carry)
-    left = beside[own:]
-    if len(left):
+    left = triangle[own:, own:]
+    if rows > own:
         left, least = _orthonormal(left)
-        if least < RANK_DOUBTFUL:
+        if rows > columns or least < RANK_DOUBTFUL:
             return split_with_care(matrix, own, tolerance, may_put_off=may_put_off)
         firm = min(firm, least)
     return Split(carry, free, left, (firm, 0.0), _NOTHING, _NOTHING)
@@ -292,22 +336,23 @@ def _gap_of(values: list[float], rank: int) -> tuple[float, float]:
 
 
 def _motions_of(steps: list[Step], topology: Topology) -> Matrix:
-    """An orthonormal basis of the allowed motions, one a row, over the unknowns of the moving links in their order."""
+    """The motions of all links, by link, unknown and motion; those of the last step come last.
+
+    What rests beside a border that moves is put to rest exactly: rounding error handed on would look like a motion.
+    """
     freedom = sum([step.free.shape[1] for step in steps])
     motions = np.zeros((topology.links, 3, freedom))
     first = freedom
     for step in reversed(steps):
         links, border = list(step.links), list(step.border)
-        moved = step.carry @ motions[border].reshape(3 * len(border), freedom)
+        around = motions[border].reshape(3 * len(border), freedom)
+        moved = step.carry @ around
         if step.free.shape[1]:
             first -= step.free.shape[1]
             moved[:, first : first + step.free.shape[1]] += step.free
+        here = np.maximum(abs(around).max(axis=0, initial=0.0), abs(moved).max(axis=0))
+        moved[abs(moved) <= AT_REST_BESIDE * here] = 0.0
         motions[links] = moved.reshape(len(links), 3, freedom)
-        if moved.size and not abs(moved).max() < TALLEST_MOTION:
+        if freedom and not here.max() < TALLEST_MOTION:
             motions /= np.maximum(1.0, abs(motions).max(axis=(0, 1)))
-    flat = np.delete(motions, topology.frame, axis=0).reshape(3 * (topology.links - 1), freedom)
-    if freedom == 1:
-        only: Matrix = (flat / np.linalg.norm(flat)).T
-        return only
-    basis: Matrix = np.linalg.qr(flat)[0].T if freedom else flat.T
-    return basis
+    return motions

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import replace
 from functools import partial
 
 from dxfcheck.analysis.constraints import Body, Freedom, bodies_of, constraint_matrix, freedom_of, rank_tolerance
 from dxfcheck.analysis.elimination import freedom_by_fronts
 from dxfcheck.analysis.topology import Topology, topology_of
-from dxfcheck.linkage import Linkage
+from dxfcheck.linkage import Joint, Linkage
 from dxfcheck.tolerances import DENSE_LINKS
 
 __all__ = ["freedom_at_pose", "freedom_of_linkage", "part_of"]
@@ -26,23 +27,30 @@ def freedom_of_linkage(linkage: Linkage) -> Freedom:
     return freedom_at_pose(linkage, topology_of(linkage), bodies_of(linkage))
 
 
-def part_of(linkage: Linkage, links: tuple[int, ...], joints: tuple[int, ...] | None = None) -> Linkage:
-    """Some links with the joints among them (or those given), the first of them held; without drives.
+def part_of(linkage: Linkage, links: tuple[int, ...]) -> Linkage:
+    """Some links with the joints among them, the first of them held; without drives.
 
     The pins stay as they are: they are asked for their places only.
     """
     number = {link: place for place, link in enumerate(links)}
-    chosen = linkage.joints if joints is None else [linkage.joints[joint] for joint in joints]
     return replace(
         linkage,
         links=tuple([linkage.links[link] for link in links]),
-        joints=tuple(
-            [
-                replace(joint, first=number[joint.first], second=number[joint.second])
-                for joint in chosen
-                if joint.first in number and joint.second in number
-            ]
-        ),
+        joints=tuple(_among(linkage, number)),
         drives=(),
         frame=0,
     )
+
+
+def _among(linkage: Linkage, number: dict[int, int]) -> Iterator[Joint]:
+    """The joints among some links; what hung at a pin on a link that is left out hangs on another that is there."""
+    at_pin: dict[int, list[int]] = {}
+    for joint in linkage.joints:
+        ends = [number[link] for link in (joint.first, joint.second) if link in number]
+        if joint.kind == "pin" and joint.pin is not None:
+            there = at_pin.setdefault(joint.pin, ends[:1])
+            new = [link for link in ends if link not in there]
+            ends = [*there[:1], *new] if new and there else []
+            there += new
+        if len(ends) > 1:
+            yield replace(joint, first=ends[0], second=ends[1])

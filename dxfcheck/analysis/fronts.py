@@ -38,10 +38,11 @@ class Front(NamedTuple):
     conditions: tuple[int, ...] = ()
 
 
-def fronts_of(topology: Topology, conditions: Sequence[set[int]] = ()) -> list[Front]:
+def fronts_of(topology: Topology, conditions: Sequence[set[int]] = (), last: int = -1) -> list[Front]:
     """Every moving link once, each joint with the first of its links; a step comes after those whose border it meets.
 
-    The frame is at rest and is nobody's neighbour. ``conditions`` are the moving links of each further constraint.
+    The frame is at rest and is nobody's neighbour. ``conditions`` are the moving links of each further constraint;
+    ``last`` is a link to be dealt with after all others.
     """
     neighbours, joints_at = _neighbours_of(topology)
     told_at: list[list[int]] = [[] for _ in range(topology.links)]
@@ -49,7 +50,11 @@ def fronts_of(topology: Topology, conditions: Sequence[set[int]] = ()) -> list[F
         for link in related:
             neighbours[link] |= related - {link}
             told_at[link].append(number)
-    waiting = [(len(around), link) for link, around in enumerate(neighbours) if link != topology.frame]
+
+    def place_in_order(link: int) -> int:
+        return len(neighbours[link]) + (topology.links if link == last else 0)
+
+    waiting = [(place_in_order(link), link) for link in range(topology.links) if link != topology.frame]
     heapify(waiting)
     done = [False] * topology.links
     placed: set[int] = set()
@@ -58,9 +63,9 @@ def fronts_of(topology: Topology, conditions: Sequence[set[int]] = ()) -> list[F
     fronts: list[Front] = []
     while waiting:
         degree, link = heappop(waiting)
-        if done[link] or degree != len(neighbours[link]):
+        if done[link] or degree != place_in_order(link):
             continue
-        links, border = _group_of(link, neighbours)
+        links, border = _group_of(link, neighbours, last)
         parts = sorted(set().union(*[parts_at[member] for member in links]))
         for part in parts:
             for outer in fronts[part].border:
@@ -69,7 +74,7 @@ def fronts_of(topology: Topology, conditions: Sequence[set[int]] = ()) -> list[F
             done[member] = True
         for outer in border:
             _close_up(neighbours, outer, links, border)
-            heappush(waiting, (len(neighbours[outer]), outer))
+            heappush(waiting, (place_in_order(outer), outer))
             parts_at[outer].add(len(fronts))
         joints = _not_yet(links, joints_at, placed)
         fronts.append(Front(tuple(links), tuple(sorted(border)), joints, tuple(parts), _not_yet(links, told_at, told)))
@@ -110,13 +115,13 @@ def _neighbours_of(topology: Topology) -> tuple[list[set[int]], list[list[int]]]
     return neighbours, joints_at
 
 
-def _group_of(link: int, neighbours: list[set[int]]) -> tuple[list[int], set[int]]:
+def _group_of(link: int, neighbours: list[set[int]], last: int) -> tuple[list[int], set[int]]:
     """A link and a few more that widen its border no further; with the border."""
     links, border = [link], set(neighbours[link])
     while border and len(links) < LINKS_OF_FRONT and len(border) <= WIDEST_JOINED:
         fewest, best, added = 2, -1, set[int]()
         for other in border:
-            if len(neighbours[other]) >= len(border) + len(links) + fewest:
+            if other == last or len(neighbours[other]) >= len(border) + len(links) + fewest:
                 continue
             new = neighbours[other].difference(border, links)
             if (len(new), other) < (fewest, best):

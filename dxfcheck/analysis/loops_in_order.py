@@ -11,7 +11,6 @@ nothing is decided about ranks here: it is told the freedom.
 from __future__ import annotations
 
 from collections import deque
-from collections.abc import Iterable
 from typing import NamedTuple
 
 import numpy as np
@@ -34,6 +33,9 @@ TURNS, SLIDES = 0, 1
 
 SOLVED_AT_ONCE = 12
 """Loops are taken together until so many unknowns can be expressed: larger steps cost less each, and more in all."""
+
+Equations = list[tuple[Unknown, float, float, float]]
+"""A loop's three equations: what each unknown adds to the turns, and to the velocities across and up."""
 
 Row = dict[Unknown, float]
 
@@ -89,8 +91,8 @@ def rates_in_order(
     linkage's size. Of the rates that stay without a firm pivot, as many combinations are free as ``freedom`` says.
     """
     scales = _scales_of(linkage, loops, whole)
-    equations = list(_equations(linkage, acts_as, _in_order(loops), scales))
-    passed = {unknown for rows in equations for row in rows for unknown in row}
+    equations = [_equations(linkage, acts_as, loop, scales) for loop in _in_order(loops)]
+    passed = {unknown for loop in equations for unknown, _, _, _ in loop}
     outside = [unknown for unknown in _unknowns_of(acts_as) if unknown not in passed]
     rates = [rate / scales.of(path) if isinstance(path, int) else rate for path, _, rate in drives]
     solved, left, waiting = _eliminated(equations)
@@ -170,27 +172,20 @@ def _middle_of(joints: list[Joint], whole: float) -> tuple[Point, float]:
     return middle, max([abs(place - middle) for place in places]) or whole
 
 
-def _equations(
-    linkage: Linkage, acts_as: list[str], loops: Iterable[Passage], scales: _Scales
-) -> Iterable[tuple[Row, Row, Row]]:
-    """For each loop: the turns add up to nothing, and so do both parts of the velocities about its middle."""
-    for loop in loops:
-        middle, size = _middle_of([linkage.joints[joint] for joint, _ in loop], scales.whole)
-        turn, across, up = Row(), Row(), Row()
-        for number, sense in loop:
-            joint = linkage.joints[number]
-            if acts_as[number] != "slide":
-                arm = sense * (middle - joint.at) / size
-                key = (number, TURNS)
-                turn[key] = turn.get(key, 0.0) + sense
-                across[key] = across.get(key, 0.0) - arm.imag
-                up[key] = up.get(key, 0.0) + arm.real
-            if acts_as[number] != "pin":
-                along = sense * _along(joint) * (scales.of(number) / size)
-                key = (number, SLIDES)
-                across[key] = across.get(key, 0.0) + along.real
-                up[key] = up.get(key, 0.0) + along.imag
-        yield turn, across, up
+def _equations(linkage: Linkage, acts_as: list[str], loop: Passage, scales: _Scales) -> Equations:
+    """The turns add up to nothing, and so do both parts of the velocities about the loop's middle."""
+    joints = linkage.joints
+    middle, size = _middle_of([joints[number] for number, _ in loop], scales.whole)
+    equations: Equations = []
+    for number, sense in loop:
+        joint = joints[number]
+        if acts_as[number] != "slide":
+            arm = sense * (middle - joint.at) / size
+            equations.append(((number, TURNS), sense, -arm.imag, arm.real))
+        if acts_as[number] != "pin":
+            along = sense * _along(joint) * (scales.of(number) / size)
+            equations.append(((number, SLIDES), 0.0, along.real, along.imag))
+    return equations
 
 
 def _along(joint: Joint) -> Point:
@@ -199,43 +194,45 @@ def _along(joint: Joint) -> Point:
     return along * 1j if joint.kind == "rolling" else along
 
 
-def _eliminated(equations: list[tuple[Row, Row, Row]]) -> tuple[list[_Solved], _Open, list[Unknown]]:
+def _eliminated(equations: list[Equations]) -> tuple[list[_Solved], _Open, list[Unknown]]:
     """The unknowns as sums of later ones; the equations left at the end; and the combinations that are in none."""
     left = _Open([], np.zeros((0, 0)), np.zeros((0, 0)))
     solved: list[_Solved] = []
     loose: list[Unknown] = []
-    rows: list[Row] = []
+    loops: list[Equations] = []
     ending: list[Unknown] = []
-    for number, (own, last) in enumerate(zip(equations, _ending(equations), strict=True), start=1):
-        rows += own
+    for number, (loop, last) in enumerate(zip(equations, _ending(equations), strict=True), start=1):
+        loops.append(loop)
         ending += last
         if len(ending) >= SOLVED_AT_ONCE or number == len(equations):
-            step, left, more = _solve(left, rows, ending, len(solved))
+            step, left, more = _solve(left, loops, ending, len(solved))
             solved.append(step)
             loose += more
-            rows, ending = [], []
+            loops, ending = [], []
     return solved, left, loose
 
 
-def _ending(equations: list[tuple[Row, Row, Row]]) -> list[list[Unknown]]:
+def _ending(equations: list[Equations]) -> list[list[Unknown]]:
     """For each loop the unknowns that no later loop passes."""
     last: dict[Unknown, int] = {}
-    for number, rows in enumerate(equations):
-        for row in rows:
-            last |= dict.fromkeys(row, number)
+    for number, loop in enumerate(equations):
+        for unknown, _, _, _ in loop:
+            last[unknown] = number
     ending: list[list[Unknown]] = [[] for _ in equations]
     for unknown, number in last.items():
         ending[number].append(unknown)
     return ending
 
 
-def _solve(before: _Open, rows: list[Row], ending: list[Unknown], steps: int) -> tuple[_Solved, _Open, list[Unknown]]:
+def _solve(
+    before: _Open, loops: list[Equations], ending: list[Unknown], steps: int
+) -> tuple[_Solved, _Open, list[Unknown]]:
     """Unknowns as sums of those that later loops pass, and of combinations of their own that the equations leave open.
 
     By the singular values of their columns: those that are firm solve as many equations.
     """
     ends = len(ending)
-    unknowns, firm, weak = _laid_out(before, rows, ending)
+    unknowns, firm, weak = _laid_out(before, loops, ending)
     turned, values, axes = np.linalg.svd(firm[:, :ends], full_matrices=True)
     held = int(np.count_nonzero(values >= LOOP_FIRM))
     beyond = turned.T @ firm[:, ends:]
@@ -249,19 +246,25 @@ def _solve(before: _Open, rows: list[Row], ending: list[Unknown], steps: int) ->
     return _Solved(ending, later, of), left, loose
 
 
-def _laid_out(before: _Open, rows: list[Row], ending: list[Unknown]) -> tuple[list[Unknown], Matrix, Matrix]:
-    """All unknowns, those that end first, and the firm and weak rows over them."""
+def _laid_out(before: _Open, loops: list[Equations], ending: list[Unknown]) -> tuple[list[Unknown], Matrix, Matrix]:
+    """All unknowns, those that end first; the firm rows over them, three a loop below what was left; the weak rows."""
     column = {unknown: number for number, unknown in enumerate(ending)}
-    for unknown in [*before.unknowns, *[unknown for row in rows for unknown in row]]:
+    for unknown in before.unknowns:
         column.setdefault(unknown, len(column))
-    firm = np.zeros((len(before.firm) + len(rows), len(column)))
+    cells: list[tuple[int, int, float]] = []
+    row = len(before.firm)
+    for loop in loops:
+        for unknown, turn, across, up in loop:
+            at = column.setdefault(unknown, len(column))
+            cells += ((row, at, turn), (row + 1, at, across), (row + 2, at, up))
+        row += 3
+    firm = np.zeros((row, len(column)))
     weak = np.zeros((len(before.weak), len(column)))
     known = [column[unknown] for unknown in before.unknowns]
     firm[: len(before.firm), known] = before.firm
     weak[:, known] = before.weak
-    for number, row in enumerate(rows, start=len(before.firm)):
-        for unknown, part in row.items():
-            firm[number, column[unknown]] = part
+    rows, columns, values = zip(*cells, strict=True)
+    np.add.at(firm, (rows, columns), values)
     return list(column), firm, weak
 
 

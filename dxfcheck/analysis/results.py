@@ -15,11 +15,14 @@ __all__ = [
     "DriveVerdict",
     "FiniteMotion",
     "FreePart",
+    "IdleLink",
     "JointMotion",
     "LinkMotion",
+    "LockedPart",
     "Mobility",
     "PinMotion",
     "RigidParts",
+    "SettlingDrive",
     "SpeedBounds",
     "Transmission",
 ]
@@ -206,6 +209,44 @@ class FreePart(NamedTuple):
     slides: tuple[int, ...]
 
 
+class LockedPart(NamedTuple):
+    """Moving links that are rigid with one another, and with the frame where ``with_frame``; indices, ascending.
+
+    ``redundant`` is how many of the constraints among them are more than hold them still. ``links_to_go`` are the
+    links, each of which alone, taken out, lets the others move where nothing is redundant; where something is, each of
+    which alone takes a redundant constraint away. None where there are more links than are tried.
+    """
+
+    links: tuple[int, ...]
+    with_frame: bool
+    redundant: int
+    links_to_go: tuple[int, ...]
+
+
+class IdleLink(NamedTuple):
+    """A link with a motion of its own that moves no other link; an index.
+
+    ``freedoms`` is how many such motions it has. ``turns`` says that one of them turns it; it then turns about ``pin``,
+    where that is a pin of the linkage.
+    """
+
+    link: int
+    freedoms: int
+    turns: bool
+    pin: int | None
+
+
+class SettlingDrive(NamedTuple):
+    """A drive that would settle what is free: ``link`` against ``against``, indices.
+
+    ``joint`` is the slide that it runs along, None for one that turns.
+    """
+
+    link: int
+    against: int
+    joint: int | None
+
+
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Analysis:
     """Everything worked out for one linkage at the drawn pose.
@@ -222,7 +263,10 @@ class Analysis:
     ``finite`` says what becomes of freedoms beyond the count after a small step; None where there are none, or where it
     could not be judged. ``bounds`` say by how much speeds may be off; None where they were not worked out.
     ``rigid_parts`` and ``dependent_joints`` are worked out where the freedom at the pose differs from the count or the
-    count is not above 0, ``rigid_parts`` also where not all is solved; ``free_parts`` where a grounded linkage is not.
+    count is not above 0, ``rigid_parts`` also where not all is solved or a joint of a solved linkage stands still;
+    ``free_parts`` where a grounded linkage is not solved. ``locked_parts`` are the rigid parts one by one, with what
+    would free them. ``idle_links`` are links whose free motion moves nothing else; ``settling_drives`` the drives that
+    would together settle all else that is free, () where it is settled or none were found.
     """
 
     mobility: Mobility
@@ -243,3 +287,6 @@ class Analysis:
     rigid_parts: RigidParts | None = None
     dependent_joints: tuple[DependentJoints, ...] = ()
     free_parts: tuple[FreePart, ...] = ()
+    locked_parts: tuple[LockedPart, ...] = ()
+    idle_links: tuple[IdleLink, ...] = ()
+    settling_drives: tuple[SettlingDrive, ...] = ()

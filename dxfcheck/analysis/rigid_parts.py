@@ -8,6 +8,8 @@ as for the whole (constraints.py).
 
 from __future__ import annotations
 
+from typing import NamedTuple
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -16,6 +18,7 @@ from dxfcheck.analysis.freedom import freedom_at_pose, part_of
 from dxfcheck.analysis.results import RigidParts
 from dxfcheck.analysis.topology import Topology, topology_of
 from dxfcheck.analysis.vicinity import fastest_nearby
+from dxfcheck.geometry import Point
 from dxfcheck.linkage import Linkage
 from dxfcheck.tolerances import STILL_JOINT
 
@@ -43,7 +46,8 @@ def _rigid_within(linkage: Linkage, topology: Topology, bodies: list[Body], moti
     if not len(motions):
         return [tuple(range(topology.links))] if topology.links > 1 else []
     found: list[tuple[int, ...]] = []
-    for links in _groups(topology, _still_joints(linkage, topology, bodies, motions)):
+    pairs = _neighbours(linkage)
+    for links in _groups(topology, pairs, _still(pairs, topology, bodies, motions)):
         part = part_of(linkage, links)
         inner = topology_of(part)
         own = bodies_of(part)
@@ -55,13 +59,35 @@ def _rigid_within(linkage: Linkage, topology: Topology, bodies: list[Body], moti
     return found
 
 
-def _groups(topology: Topology, still: NDArray[np.bool_]) -> list[tuple[int, ...]]:
-    """Links that hang together by joints without relative motion, two or more."""
+class _Pair(NamedTuple):
+    """Two links that a joint ties to one another, or that share a pin of three or more."""
+
+    first: int
+    second: int
+    at: Point
+    slides: bool
+
+
+def _neighbours(linkage: Linkage) -> list[_Pair]:
+    """All pairs of neighbours: at a pin of several links each with each, not only with the one that the joints name."""
+    pairs = []
+    at_pin: dict[int, list[int]] = {}
+    for joint in linkage.joints:
+        pairs.append(_Pair(joint.first, joint.second, joint.at, joint.kind == "slide"))
+        if joint.kind == "pin" and joint.pin is not None:
+            there = at_pin.setdefault(joint.pin, [joint.first])
+            pairs += [_Pair(link, joint.second, joint.at, slides=False) for link in there if link != joint.first]
+            there.append(joint.second)
+    return pairs
+
+
+def _groups(topology: Topology, pairs: list[_Pair], still: NDArray[np.bool_]) -> list[tuple[int, ...]]:
+    """Links that hang together by neighbours without relative motion, two or more."""
     around: list[list[int]] = [[] for _ in range(topology.links)]
-    for joint, is_still in zip(topology.joints, still.tolist(), strict=True):
+    for pair, is_still in zip(pairs, still.tolist(), strict=True):
         if is_still:
-            around[joint.first].append(joint.second)
-            around[joint.second].append(joint.first)
+            around[pair.first].append(pair.second)
+            around[pair.second].append(pair.first)
     groups = []
     met = [False] * topology.links
     for first in range(topology.links):
@@ -78,17 +104,17 @@ def _groups(topology: Topology, still: NDArray[np.bool_]) -> list[tuple[int, ...
     return groups
 
 
-def _still_joints(linkage: Linkage, topology: Topology, bodies: list[Body], motions: Matrix) -> NDArray[np.bool_]:
-    """For each joint whether its two links do not move against one another in any motion, beside the fastest near."""
-    first = np.array([joint.first for joint in linkage.joints], dtype=np.intp)
-    second = np.array([joint.second for joint in linkage.joints], dtype=np.intp)
+def _still(pairs: list[_Pair], topology: Topology, bodies: list[Body], motions: Matrix) -> NDArray[np.bool_]:
+    """For each pair whether the two do not move against one another in any motion, beside the fastest near."""
+    first = np.array([pair.first for pair in pairs], dtype=np.intp)
+    second = np.array([pair.second for pair in pairs], dtype=np.intp)
     sizes = np.array([body.size for body in bodies])
     centres = np.array([body.centre for body in bodies])
     least = np.minimum(sizes[first], sizes[second])
-    places = np.array([joint.at for joint in linkage.joints], dtype=complex)
-    slides = np.array([joint.kind == "slide" for joint in linkage.joints], dtype=bool)
+    places = np.array([pair.at for pair in pairs], dtype=complex)
+    slides = np.array([pair.slides for pair in pairs], dtype=bool)
     places[slides] = np.where(sizes[first] <= sizes[second], centres[first], centres[second])[slides]
-    apart = np.zeros(len(linkage.joints))
+    apart = np.zeros(len(pairs))
     speeds = np.zeros(topology.links)
     held = 3 * topology.frame
     for motion in motions:

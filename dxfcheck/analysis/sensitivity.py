@@ -192,10 +192,9 @@ def _pin_changes(pins: Sequence[Pin], changes: _Changes) -> Matrix:
     rows, turns = np.arange(len(pins)), np.array([motion.turns[link] for link in links])
     changed[rows, 2 * rows] += 1j * turns
     changed[rows, 2 * rows + 1] -= turns
-    sizes = np.abs(velocities)
-    moving = sizes > 0.0
-    along = np.where(moving, velocities, 1.0) / np.where(moving, sizes, 1.0)
-    sized: Matrix = np.where(moving[:, np.newaxis], (changed * along.conjugate()[:, np.newaxis]).real, np.abs(changed))
+    along = np.exp(1j * np.angle(velocities))[:, np.newaxis]
+    moving = (velocities != 0.0)[:, np.newaxis]
+    sized: Matrix = np.where(moving, (changed * along.conjugate()).real, np.abs(changed))
     return sized
 
 

@@ -19,7 +19,7 @@ from dxfcheck.analysis.constraints import CELLS, ROWS, Body, Matrix, bodies_of, 
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.analysis.velocity import rate_row
 from dxfcheck.linkage import JointKind, Linkage
-from dxfcheck.tolerances import RANK_RELATIVE
+from dxfcheck.tolerances import DENSE_LINKS, RANK_RELATIVE
 
 __all__ = ["SolutionStep", "StepKind", "solution_order"]
 
@@ -137,10 +137,15 @@ class _Growth:
         return [each for each in near if all(link in members or link in self._known for link in each.ends)]
 
     def _settles(self, links: list[int]) -> bool:
-        """Whether these links are determined once the known ones are: by count, then by rank at the drawn pose."""
+        """Whether these links are determined once the known ones are: by count, then by rank at the drawn pose.
+
+        Of very many links the count is all that is asked for: nobody solves them by hand in any order.
+        """
         between = self._between(links)
         if sum([each.rows for each in between]) < UNKNOWNS * len(links):
             return False
+        if len(links) > DENSE_LINKS:
+            return True
         matrix = _matrix(self._linkage, self._bodies, between, links)
         values: list[float] = np.linalg.svd(matrix, compute_uv=False).tolist()
         return values[-1] > RANK_RELATIVE * values[0]

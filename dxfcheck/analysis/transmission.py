@@ -11,8 +11,10 @@ from __future__ import annotations
 import math
 from collections import defaultdict, deque
 from collections.abc import Sequence
+from functools import lru_cache
 
 from dxfcheck.analysis.results import Advantage, DeadCentre, JointMotion, LinkMotion, Transmission
+from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology, topology_of
 from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.tolerances import REST_RELATIVE
 
@@ -26,7 +28,8 @@ def transmissions(linkage: Linkage, pairs: Sequence[DeadCentre]) -> tuple[Transm
     """
     if not linkage.drives:
         return ()
-    depth = _depths(linkage)
+    driven = {link for drive in linkage.drives for link in (drive.link, drive.against)} - {linkage.frame}
+    depth = _depths(topology_of(linkage), tuple(sorted(driven)))
     found = []
     for centre in pairs:
         if centre.driven is None:
@@ -37,19 +40,19 @@ def transmissions(linkage: Linkage, pairs: Sequence[DeadCentre]) -> tuple[Transm
     return tuple(found)
 
 
-def _depths(linkage: Linkage) -> dict[int, int]:
+@lru_cache(maxsize=TOPOLOGIES_KEPT)
+def _depths(topology: Topology, driven: tuple[int, ...]) -> dict[int, int]:
     """How many joints each moving link is away from a driven one, without passing the frame."""
     beside: defaultdict[int, set[int]] = defaultdict(set)
-    for joint in linkage.joints:
+    for joint in topology.joints:
         beside[joint.first].add(joint.second)
         beside[joint.second].add(joint.first)
-    driven = sorted({link for drive in linkage.drives for link in (drive.link, drive.against)} - {linkage.frame})
     depth = dict.fromkeys(driven, 0)
     waiting = deque(driven)
     while waiting:
         link = waiting.popleft()
         for other in sorted(beside[link]):
-            if other != linkage.frame and other not in depth:
+            if other != topology.frame and other not in depth:
                 depth[other] = depth[link] + 1
                 waiting.append(other)
     return depth

@@ -15,10 +15,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from dxfcheck.analysis.constraints import Body
-from dxfcheck.analysis.elimination import Condition, freedom_by_fronts
+from dxfcheck.analysis.elimination import Condition, motion_under
 from dxfcheck.analysis.results import DeadCentre, DriveVerdict
 from dxfcheck.analysis.topology import Topology
-from dxfcheck.analysis.vicinity import fastest_nearby, links_near
+from dxfcheck.analysis.vicinity import links_near
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.tolerances import (
@@ -55,8 +55,9 @@ class Motion:
     """Motion of every link (the held one at rest) and what the drives leave free.
 
     ``turns`` are rad/s, ``centres`` the velocities of the bodies' centres. ``free`` holds the motions still free, one a
-    row of (w, vx, vy) for each link in turn, the held link too; it has no rows where everything is settled. What a link
-    does in them below its speed in ``still_below`` counts as nothing; that list is empty where nothing is free.
+    row of (w, vx, vy) for each link in turn, the held link too; it has no rows where everything is settled. Speeds
+    in them up to ``still_below`` count as none; in a large linkage (None) what rests does so exactly, and each of these
+    motions is judged by itself.
     """
 
     bodies: list[Body]
@@ -66,7 +67,7 @@ class Motion:
     settled: list[bool]
     fastest: float
     taken: tuple[int, ...]
-    still_below: list[float]
+    still_below: float | None
 
     def velocity(self, link: int, place: Point) -> Point:
         """Velocity of the point of a link that lies at a place, length units a second; only where it is settled."""
@@ -99,8 +100,10 @@ class Motion:
         return velocity
 
     def _is_still(self, free: NDArray[np.float64] | NDArray[np.complex128], *links: int) -> bool:
-        least = max([self.still_below[link] for link in links])
-        return bool(np.linalg.norm(free) <= least)
+        if self.still_below is not None:
+            return bool(np.linalg.norm(free) <= self.still_below)
+        fastest = abs(self.free[:, [3 * link + part for link in links for part in range(3)]]).max(axis=1)
+        return bool((abs(free) <= DETERMINED_RELATIVE * fastest).all())
 
 
 def apply_drives(
@@ -121,8 +124,8 @@ def apply_drives(
         verdict, choice = _judge(drive.rate, row.scale, _effect(row, motions), choice, least)
         verdicts.append(verdict)
     taken = tuple([number for number, verdict in enumerate(verdicts) if verdict.outcome == "taken"])
-    free = _left_free(linkage, topology, bodies, motions, choice, taken)
-    motion = _motion_of(topology, bodies, motions, choice, taken, free)
+    chosen = _chosen_motion(linkage, topology, bodies, motions, choice, taken)
+    motion = _motion_of(topology, bodies, chosen, taken)
     return motion, tuple(verdicts)
 
 
@@ -218,22 +221,54 @@ def _fastest(motions: Matrix) -> float:
 
 
 def _motion_of(
-    topology: Topology, bodies: list[Body], motions: Matrix, choice: _Choice, taken: tuple[int, ...], free: Matrix
+    topology: Topology, bodies: list[Body], chosen: tuple[list[float], Matrix], taken: tuple[int, ...]
 ) -> Motion:
-    speeds = _speeds(motions, choice.parts)
+    speeds, free = chosen
     fastest = max([abs(speed) for speed in speeds], default=0.0)
-    held = 3 * topology.frame
-    speeds[held:held] = [0.0, 0.0, 0.0]
     turns = [speeds[3 * link] / body.size + 0.0 for link, body in enumerate(bodies)]
     centres = [complex(across, up) for across, up in zip(speeds[1::3], speeds[2::3], strict=True)]
-    settled, still_below = [True] * len(bodies), list[float]()
-    if len(free):
+    settled, still_below = [True] * len(bodies), None
+    if len(free) and topology.links > DENSE_LINKS:
+        settled = (abs(free).max(axis=0).reshape(-1, 3).max(axis=1) == 0.0).tolist()
+    elif len(free):
         speed_of_link = np.sqrt(np.square(free).sum(axis=0).reshape(-1, 3).max(axis=1))
-        least = DETERMINED_RELATIVE * fastest_nearby(topology, speed_of_link)
-        if topology.links > DENSE_LINKS:
-            np.maximum(least, RANK_NOISE * speed_of_link.max(), out=least)
-        settled, still_below = (speed_of_link <= least).tolist(), least.tolist()
+        still_below = DETERMINED_RELATIVE * float(speed_of_link.max())
+        settled = (speed_of_link <= still_below).tolist()
     return Motion(bodies, turns, centres, free, settled, fastest, taken, still_below)
+
+
+def _chosen_motion(
+    linkage: Linkage,
+    topology: Topology,
+    bodies: list[Body],
+    motions: Matrix,
+    choice: _Choice,
+    taken: tuple[int, ...],
+) -> tuple[list[float], Matrix]:
+    """The speeds under the drives taken, and the motions that these leave; both with the held link's zeros.
+
+    Where a large linkage has several freedoms they are worked out anew with the drives as conditions: combined from
+    motions of all of it, what is slow or at rest would keep the rounding error of what is fast.
+    """
+    if len(motions) > 1 and topology.links > DENSE_LINKS:
+        rows = [(rate_row(linkage.drives[number], linkage, bodies), linkage.drives[number].rate) for number in taken]
+        anew = motion_under(linkage, topology, bodies, tuple([_condition(row, rate, topology) for row, rate in rows]))
+        if anew is not None:
+            speeds, free = anew
+            return speeds.tolist(), free
+    held = 3 * topology.frame
+    single = _speeds(motions, choice.parts)
+    single[held:held] = [0.0, 0.0, 0.0]
+    return single, _still_free(motions, choice.settled, held)
+
+
+def _condition(row: RateRow, rate: float, topology: Topology) -> Condition:
+    """A drive by the links and their unknowns, as it runs."""
+    cells = []
+    for column, weight in row.cells:
+        moving, which = divmod(column, 3)
+        cells.append((moving + (moving >= topology.frame), which, weight))
+    return Condition(tuple(cells), row.scale * rate)
 
 
 def _speeds(motions: Matrix, parts: list[float]) -> list[float]:
@@ -245,38 +280,14 @@ def _speeds(motions: Matrix, parts: list[float]) -> list[float]:
     return speeds
 
 
-def _left_free(
-    linkage: Linkage,
-    topology: Topology,
-    bodies: list[Body],
-    motions: Matrix,
-    choice: _Choice,
-    taken: tuple[int, ...],
-) -> Matrix:
-    """The allowed motions that the drives leave, with columns of zeros for the held link.
-
-    In a large linkage they are worked out anew with the drives at rest: combined from motions of all of it, what is at
-    rest beside them would keep rounding error.
-    """
-    if len(choice.settled) == len(motions):
+def _still_free(motions: Matrix, settled: list[list[float]], held: int) -> Matrix:
+    """The allowed motions that the drives leave, with columns of zeros for the held link."""
+    if len(settled) == len(motions):
         return _NOTHING_FREE
-    if taken and topology.links > DENSE_LINKS:
-        rows = [rate_row(linkage.drives[number], linkage, bodies) for number in taken]
-        motions = freedom_by_fronts(linkage, topology, bodies, tuple([_at_rest(row, topology) for row in rows])).motions
-    elif taken:
-        complement = np.linalg.svd(np.array(choice.settled), full_matrices=True)[2][len(taken) :]
+    if settled:
+        complement = np.linalg.svd(np.array(settled), full_matrices=True)[2][len(settled) :]
         motions = complement @ motions
-    held = 3 * topology.frame
     return np.concatenate([motions[:, :held], np.zeros((len(motions), 3)), motions[:, held:]], axis=1)
-
-
-def _at_rest(row: RateRow, topology: Topology) -> Condition:
-    """A drive that stands still, by the links and their unknowns."""
-    cells = []
-    for column, weight in row.cells:
-        moving, which = divmod(column, 3)
-        cells.append((moving + (moving >= topology.frame), which, weight))
-    return Condition(tuple(cells))
 
 
 _NOTHING_FREE: Matrix = np.zeros((0, 0))

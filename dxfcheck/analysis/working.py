@@ -18,7 +18,6 @@ from dxfcheck.analysis.solution_order import SolutionStep, solution_order
 from dxfcheck.analysis.solved_linkage import SolvedLinkage, acts_as, solved_linkage
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import WORKING_UNKNOWNS
 
 __all__ = ["PointVelocity", "StepWorking", "Working", "work_out"]
 
@@ -45,8 +44,8 @@ class StepWorking:
     """One step: how it closes, and what follows for pins and poles.
 
     ``shared`` are links that turn as another one does (link, other), as they slide on it. ``points`` are the pins that
-    were not known before. A step in more unknowns than WORKING_UNKNOWNS is not ``written_out``: it has neither points
-    nor poles. ``gap`` is the greatest closing error, length units a second.
+    were not known before. A step whose equations are not written out has neither points nor poles. ``gap`` is the
+    greatest closing error, length units a second.
     """
 
     step: SolutionStep
@@ -54,7 +53,6 @@ class StepWorking:
     shared: tuple[tuple[int, int], ...]
     points: tuple[PointVelocity, ...]
     poles: tuple[PoleWorking, ...]
-    written_out: bool
     gap: float
 
 
@@ -86,16 +84,14 @@ def work_out(linkage: Linkage, analysis: Analysis) -> Working | None:
 
 def _step(hanging: Hanging, step: SolutionStep, told: set[int], established: set[int]) -> StepWorking:
     closing = close(hanging)
-    written_out = len(closing.unknowns) <= WORKING_UNKNOWNS
-    points = tuple(_points(hanging.solved, step, told)) if written_out else ()
-    poles = tuple(pole_workings(hanging.solved, step.links, established)) if written_out else ()
+    points = tuple(_points(hanging.solved, step, told)) if closing.written_out else ()
+    poles = tuple(pole_workings(hanging.solved, step.links, established)) if closing.written_out else ()
     return StepWorking(
         step=step,
         closing=closing,
         shared=tuple(_shared(hanging, step)),
         points=points,
         poles=poles,
-        written_out=written_out,
         gap=max([closing.gap, *[point.gap for point in points]]),
     )
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 import sys
 from collections.abc import Iterator, Sequence
 from datetime import date
@@ -13,6 +14,7 @@ from dxfcheck.cli.accept_choice import Entry, chosen_findings, entries_for
 from dxfcheck.cli.arguments import Request
 from dxfcheck.cli.explain import unknown_rule
 from dxfcheck.cli.messages import one_line, say
+from dxfcheck.cli.output import drop_output
 from dxfcheck.cli.paths import find_targets
 from dxfcheck.cli.status import CLEAN, FAULT, UNUSABLE
 from dxfcheck.cli.workers import inspect_one
@@ -78,7 +80,7 @@ def _refuse(request: AcceptRequest, day: date) -> None:
         raise OptionInvalid(msg)
     if request.rule is not None and find_rule(request.rule) is None:
         raise OptionInvalid(unknown_rule(request.rule))
-    if Path(request.path).is_dir():
+    if os.path.isdir(request.path):  # noqa: PTH112 - Path.is_dir raises below a folder that is locked
         msg = f"{request.path}: is a folder; accept the findings of one drawing at a time"
         raise OptionInvalid(msg)
 
@@ -95,9 +97,10 @@ def _write(file: _Place, drawing: str, entries: Sequence[Entry]) -> tuple[int, .
     """Add the entries to the settings file; the line of each."""
     text = file.path.read_bytes().decode("utf-8") if file.exists else NEW_FILE
     table = PROJECT_TABLE if file.path.name == PROJECT_FILE else OWN_TABLE
-    relative = relative_path(Path(drawing), file.path.resolve().parent)
+    folder = file.path.resolve().parent
+    relative = relative_path(Path(drawing), folder)
     try:
-        addition = add_acceptances(text, relative, [entry.acceptance for entry in entries], table)
+        addition = add_acceptances(text, relative, [entry.acceptance for entry in entries], table, folder=folder)
     except OptionInvalid as error:
         msg = f"{shown_path(file.path.absolute())}: {error}"
         raise OptionInvalid(msg) from None
@@ -126,5 +129,13 @@ def _nothing(findings: Sequence[Finding], request: AcceptRequest) -> str:
 
 
 def _print(lines: Iterator[str] | Sequence[str]) -> None:
-    for line in lines:
-        sys.stdout.write(f"{one_line(line)}\n")
+    try:
+        for line in lines:
+            sys.stdout.write(f"{one_line(line)}\n")
+        sys.stdout.flush()
+    except BrokenPipeError:
+        drop_output()
+    except OSError as error:
+        drop_output()
+        msg = f"what was done cannot be written to standard output: {error.strerror or error}"
+        raise OptionInvalid(msg) from error

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import os
 import sys
+from collections.abc import Sequence
 from dataclasses import replace
 from pathlib import Path
 
@@ -46,7 +48,8 @@ def run_compare(compare: CompareRequest, request: Request) -> int:
 def _two_files(compare: CompareRequest, request: Request) -> int:
     if request.json is not None and request.json != STANDARD_OUTPUT:
         refuse_target(Path(request.json))
-    outcomes = [_inspected(_target(path), path, request) for path in (compare.old, compare.new)]
+    paths = (compare.old, compare.new)
+    outcomes = _inspected([_target(path) for path in paths], paths, request)
     for outcome in outcomes:
         if outcome.report.status == "unreadable":
             say(outcome.fault or _why_unread(outcome.report))
@@ -74,10 +77,12 @@ def _for_git(compare: CompareRequest, request: Request) -> int:
     if not (compare.old or compare.new):
         terminal.line(f"{subject}: not merged; compare the versions by hand")
         return CLEAN
+    sides = zip(compare.paths, (compare.old, compare.new), compare.versions, strict=True)
+    there = [(path, file, version) for path, file, version in sides if file]
+    outcomes = _inspected([Target(path) for path, _, _ in there], [file for _, file, _ in there], request)
     reports = [
-        replace(_inspected(Target(path), file, request).report, path=_versioned(path, version))
-        for path, file, version in zip(compare.paths, (compare.old, compare.new), compare.versions, strict=True)
-        if file
+        replace(outcome.report, path=_versioned(path, version))
+        for outcome, (path, _, version) in zip(outcomes, there, strict=True)
     ]
     unread = [report for report in reports if report.status == "unreadable"]
     if unread:
@@ -99,15 +104,21 @@ def _for_git(compare: CompareRequest, request: Request) -> int:
 
 def _target(path: str) -> Target:
     """The drawing at a path; a folder is no drawing."""
-    if Path(path).is_dir():
+    if os.path.isdir(path):  # noqa: PTH112 - Path.is_dir raises below a folder that is locked
         return Target(path, "is a folder; compare takes two drawings")
     return find_targets([path])[0]
 
 
-def _inspected(target: Target, file: str, request: Request) -> Outcome:
-    """A drawing with the settings that hold for its target, read from a file that may lie elsewhere."""
-    configured = with_settings([target], request.settings, request.settings_file)[0]
-    return inspect_one(request.settings, configured._replace(path=file), with_evidence=False)
+def _inspected(targets: Sequence[Target], files: Sequence[str], request: Request) -> list[Outcome]:
+    """Each drawing with the settings that hold for its target, read from a file that may lie elsewhere.
+
+    A settings file is read, and its warnings are given, once for both.
+    """
+    configured = with_settings(targets, request.settings, request.settings_file)
+    return [
+        inspect_one(request.settings, target._replace(path=file), with_evidence=False)
+        for target, file in zip(configured, files, strict=True)
+    ]
 
 
 def _why_unread(report: DrawingReport) -> str:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 import sys
 from pathlib import Path
 
@@ -15,7 +16,7 @@ from dxfcheck.configuration.listing import listed_settings
 from dxfcheck.configuration.lookup import find_settings_file, hidden_settings_files, shown_path
 from dxfcheck.configuration.path_patterns import matches_path, relative_path
 from dxfcheck.configuration.problems import quoted
-from dxfcheck.configuration.settings_file import SettingsFile, read_settings_file
+from dxfcheck.configuration.settings_file import DrawingTable, SettingsFile, read_settings_file
 from dxfcheck.configuration.settings_keys import DRAWINGS
 from dxfcheck.errors import OptionInvalid
 from dxfcheck.reports.files import refuse_target, write_whole
@@ -33,7 +34,7 @@ def run_settings(request: Request) -> int:
     SettingsInvalid carries everything that is wrong with the settings file.
     """
     path = request.paths[0]
-    if "\0" in path or not Path(path).exists():
+    if "\0" in path or not os.path.exists(path):  # noqa: PTH110 - Path.exists raises below a folder that is locked
         msg = f"{path}: there is no such file or folder; check the path"
         raise OptionInvalid(msg)
     try:
@@ -68,13 +69,15 @@ def _report(request: Request) -> SettingsReport:
     file = read_settings_file(found) if found is not None else None
     effective = settings_for(path, file, request.settings)
     used, unused = _tables(path, file)
+    idle = _idle_tables(path, file) if file is not None and path.is_dir() else ()
     return SettingsReport(
         path=str(path),
         folder=path.is_dir(),
         file=file.shown if file is not None else None,
         hidden=tuple(shown_path(each) for each in hidden_settings_files(path)) if named is None else (),
         used=used,
-        unused=unused,
+        unused=tuple(table for table in unused if table not in idle),
+        idle=idle,
         settings=listed_settings(effective),
     )
 
@@ -85,8 +88,24 @@ def _tables(path: Path, file: SettingsFile | None) -> tuple[tuple[str, ...], tup
     unused: list[str] = []
     for table in file.tables if file is not None else ():
         applies = file is not None and matches_path(relative_path(path, file.folder), table.pattern)
-        (used if applies else unused).append(f"{DRAWINGS} {quoted(table.pattern)} (line {table.line})")
+        (used if applies else unused).append(_table_name(table))
     return tuple(used), tuple(unused)
+
+
+def _idle_tables(path: Path, file: SettingsFile) -> tuple[str, ...]:
+    """The tables that fit no drawing below the file's folder, or below the path where that lies elsewhere."""
+    if not file.tables:
+        return ()
+    folder = file.folder if path.resolve().is_relative_to(file.folder) else path
+    targets = [target for target in find_targets([str(folder)]) if target.problem is None]
+    paths = [relative_path(Path(target.path), file.folder) for target in targets]
+    return tuple(
+        _table_name(table) for table in file.tables if not any(matches_path(each, table.pattern) for each in paths)
+    )
+
+
+def _table_name(table: DrawingTable) -> str:
+    return f"{DRAWINGS} {quoted(table.pattern)} (line {table.line})"
 
 
 def _print_starter(request: Request) -> int:

@@ -59,7 +59,7 @@ def match_mechanisms(
     matching = _Matching(_by_mechanism(marks), _by_mechanism(others))
     by_votes = sorted(shared, key=lambda pair: (-len(shared[pair]), pair))
     for first, second in by_votes:
-        if 2 * len(shared[first, second]) >= matching.least(first, second):
+        if 2 * len(shared[first, second]) > matching.least(first, second):
             matching.pair(first, second, laid.motion, shared[first, second])
     _pair_laid_elsewhere(matching, old, new, reach)
     for first, second in by_votes:

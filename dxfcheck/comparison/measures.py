@@ -30,7 +30,8 @@ def moves(
     for pair in joints:
         joint = new.joints[pair.new]
         if joint.pin is None and joint.kind != "slide":  # where along its guide a slide is said to be has no meaning
-            yield PinMove(joint_name(new, joint), motion(old.joints[pair.old].at * scale), joint.at)
+            name = joint_name(new, joint)
+            yield PinMove(name, motion(old.joints[pair.old].at * scale), joint.at, is_pin=False)
 
 
 def length_changes(

@@ -54,12 +54,13 @@ class FigureChange(NamedTuple):
 class PinMove(NamedTuple):
     """A pin, or a joint without one, that lies elsewhere once the motion of the sheet is taken out.
 
-    ``old`` is where it would lie on the new sheet had it not moved.
+    ``old`` is where it would lie on the new sheet had it not moved. ``is_pin`` is False for a joint without a pin.
     """
 
     subject: str
     old: Point
     new: Point
+    is_pin: bool = True
 
     @property
     def by(self) -> Point:

@@ -6,11 +6,12 @@ import datetime as dt
 import math
 import os
 from collections.abc import Callable, Iterator, Mapping
+from functools import cache
 from pathlib import Path
 from typing import Any, NamedTuple
 
 from dxfcheck.configuration.key_lines import KeyPath
-from dxfcheck.configuration.path_patterns import trouble_with_pattern
+from dxfcheck.configuration.path_patterns import is_pattern, trouble_with_pattern
 from dxfcheck.configuration.problems import Problems, described, near_name, quoted
 from dxfcheck.configuration.settings_keys import ACCEPT, ACCEPT_KEYS, KEYS
 from dxfcheck.configuration.stated_values import rule_trouble
@@ -35,17 +36,20 @@ def read_accept_tables(value: object, problems: Problems, folder: Path = Path())
     if not isinstance(value, list) or not all(isinstance(each, dict) for each in value):
         problems.add((ACCEPT,), f"it must be an array of tables, not {described(value)}; write [[accept]] for each")
         return
+    real_path = cache(os.path.realpath)
     for number, table in enumerate(value):
         path: KeyPath = (ACCEPT, number)
         before = len(problems.found)
         stated = {word: _CHECKS[word](table[word], (*path, word), problems) for word in table if word in _CHECKS}
+        if "drawing" in table:
+            stated["drawing"] = _drawing(table["drawing"], (*path, "drawing"), problems, folder)
         _unknown(table, path, problems)
         _missing(table, path, problems)
         if len(problems.found) == before:
-            yield _accept_table(stated, folder, path, problems)
+            yield _accept_table(stated, real_path(folder / stated["drawing"]), path, problems)
 
 
-def _accept_table(stated: Mapping[str, Any], folder: Path, path: KeyPath, problems: Problems) -> AcceptTable:
+def _accept_table(stated: Mapping[str, Any], real: str, path: KeyPath, problems: Problems) -> AcceptTable:
     acceptance = Acceptance(
         rule=stated["rule"],
         reason=stated["reason"],
@@ -54,8 +58,7 @@ def _accept_table(stated: Mapping[str, Any], folder: Path, path: KeyPath, proble
         until=stated.get("until"),
         where=problems.where(path),
     )
-    drawing = stated["drawing"]
-    return AcceptTable(drawing, os.path.realpath(folder / drawing), acceptance, problems.line(path))
+    return AcceptTable(stated["drawing"], real, acceptance, problems.line(path))
 
 
 def _unknown(table: Mapping[str, object], path: KeyPath, problems: Problems) -> None:
@@ -102,15 +105,25 @@ def _rule(value: object, path: KeyPath, problems: Problems) -> str | None:
     return name
 
 
-def _drawing(value: object, path: KeyPath, problems: Problems) -> str | None:
+def _drawing(value: object, path: KeyPath, problems: Problems, folder: Path) -> str | None:
     if not isinstance(value, str) or not value.strip():
         return _text("drawing")(value, path, problems)
     trouble = trouble_with_pattern(value)
+    if (trouble is not None or is_pattern(value)) and _is_there(folder, value):
+        return value
     if trouble is not None:
         problems.add(path, "; ".join(trouble).replace("pattern", "path"))
     elif "*" in value or "?" in value:
         problems.add(path, f"{quoted(value)} is a pattern; name one drawing, and write an [[accept]] table for each")
     return value
+
+
+def _is_there(folder: Path, name: str) -> bool:
+    """Whether a drawing below the folder is called so: a file's name may hold what patterns are made of."""
+    try:
+        return not name.startswith(("/", "./")) and (folder / name).is_file()
+    except (OSError, ValueError):
+        return False
 
 
 def _at(value: object, path: KeyPath, problems: Problems) -> complex | None:
@@ -134,7 +147,6 @@ def _until(value: object, path: KeyPath, problems: Problems) -> dt.date | None:
 
 _CHECKS: Mapping[str, Callable[[Any, KeyPath, Problems], Any]] = {
     "rule": _rule,
-    "drawing": _drawing,
     "at": _at,
     "handle": _text("handle"),
     "reason": _text("reason"),

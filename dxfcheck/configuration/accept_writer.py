@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import tomllib
 from collections.abc import Sequence
+from pathlib import Path
 from typing import Any, NamedTuple
 
 from dxfcheck.configuration.accept_tables import read_accept_tables
@@ -31,13 +32,18 @@ class Addition(NamedTuple):
 
 
 def add_acceptances(
-    text: str, drawing: str, acceptances: Sequence[Acceptance], table: Sequence[str] = OWN_TABLE
+    text: str,
+    drawing: str,
+    acceptances: Sequence[Acceptance],
+    table: Sequence[str] = OWN_TABLE,
+    *,
+    folder: Path = Path(),
 ) -> Addition:
     """The text of a settings file with an entry for each acceptance at its end.
 
-    ``drawing`` is the path of the drawing from the settings file, with '/'. New lines end as the others do. Places are
-    written to ten digits. OptionInvalid where the text is no TOML, where its entries stand in a form that cannot be
-    added to, or where the drawing's name is no Unicode text.
+    ``drawing`` is the path of the drawing from the settings file's ``folder``, with '/'. New lines end as the others
+    do. Places are written to ten digits. OptionInvalid where the text is no TOML, where its entries stand in a form
+    that cannot be added to, or where the drawing's name is no Unicode text.
     """
     _refuse_bytes(drawing, *(acceptance.reason for acceptance in acceptances))
     before = _parsed(text)
@@ -52,6 +58,7 @@ def add_acceptances(
         lines.append(line)
         line += len(entry) + 1
     block = ending.join(entries)
+    _refuse_unreadable(_inner(tomllib.loads(block), table[:-1])[table[-1]], folder)
     _confirm(before, text + lead + block, block, table)
     return Addition(text + lead + block, tuple(lines))
 
@@ -100,20 +107,24 @@ def _confirm(before: dict[str, Any], text: str, block: str, table: Sequence[str]
     except tomllib.TOMLDecodeError:
         msg = f"the acceptances in it, or the tables round them, stand in brackets or braces; {by_hand}"
         raise OptionInvalid(msg) from None
-    added, holder = tomllib.loads(block), before
-    for name in table[:-1]:
-        added, holder = added[name], holder.setdefault(name, {})
-    _refuse_unreadable(added[table[-1]])
+    added, holder = (_inner(document, table[:-1]) for document in (tomllib.loads(block), before))
     holder[table[-1]] = [*holder.get(table[-1], ()), *added[table[-1]]]
     if after != before:
         msg = f"nothing can be added at its end without changing what stands there; {by_hand}"
         raise OptionInvalid(msg)
 
 
-def _refuse_unreadable(entries: object) -> None:
-    """Raise OptionInvalid for entries that the reader of settings files would refuse, such as a drawing named 'a*'."""
+def _inner(document: dict[str, Any], names: Sequence[str]) -> dict[str, Any]:
+    """The table within tables of these names, made where it is not there."""
+    for name in names:
+        document = document.setdefault(name, {})
+    return document
+
+
+def _refuse_unreadable(entries: object, folder: Path) -> None:
+    """Raise OptionInvalid for entries that the reader of settings files would refuse, such as a path '/a.dxf'."""
     problems = Problems("", {})
-    tuple(read_accept_tables(entries, problems))
+    tuple(read_accept_tables(entries, problems, folder))
     for problem in problems.in_order():
         msg = f"such an entry would not be understood: {problem.partition(': ')[2]}"
         raise OptionInvalid(msg)

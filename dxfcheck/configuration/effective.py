@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import os
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from datetime import UTC, date, datetime
 from operator import itemgetter
@@ -13,7 +13,7 @@ from typing import Any, NamedTuple, cast
 from dxfcheck.configuration.accept_tables import AcceptTable
 from dxfcheck.configuration.path_patterns import is_pattern, matches_path, relative_path
 from dxfcheck.configuration.settings_file import DrawingTable, SettingsFile
-from dxfcheck.configuration.settings_keys import DRAWINGS, KEYS
+from dxfcheck.configuration.settings_keys import ANY_NAME, DRAWINGS, KEYS
 from dxfcheck.configuration.stated_values import Statement
 from dxfcheck.settings import Acceptance, LayerRoles, Requirement, RuleWeight, Settings
 
@@ -80,8 +80,16 @@ def _merged(drawing: Path, file: SettingsFile) -> dict[tuple[str, str], Stated]:
     path = relative_path(drawing, file.folder) if file.tables else ""
     for table in file.tables:
         if matches_path(path, table.pattern):
+            lifted = {each.key for each in table.statements if _lifts_all(each)}
+            merged = {key: each for key, each in merged.items() if key[0] not in lifted}
             merged.update({(each.key, each.name): Stated(each, table) for each in table.statements})
     return dict(sorted(merged.items(), key=lambda each: _ORDER[each[0][0]]))
+
+
+def _lifts_all(statement: Statement) -> bool:
+    """Whether it lifts the limits of all parts: those that were stated for single ones as well."""
+    value = statement.value
+    return isinstance(value, Requirement) and value.lifts and statement.name == ANY_NAME
 
 
 def _stand_behind(options: Settings, stated: Mapping[str, Any]) -> Settings:
@@ -121,11 +129,8 @@ def _weights(stated: tuple[Stated, ...]) -> Iterator[tuple[str, RuleWeight]]:
             yield each.statement.name, cast("RuleWeight", each.statement.value)
 
 
-def _accepted_on(drawing: Path, file: SettingsFile) -> Iterator[AcceptTable]:
-    if not file.accepted:
-        return
-    real = os.path.realpath(drawing)
-    yield from (table for table in file.accepted if table.path == real)
+def _accepted_on(drawing: Path, file: SettingsFile) -> Sequence[AcceptTable]:
+    return file.accepted_on.get(os.path.realpath(drawing), ()) if file.accepted_on else ()
 
 
 def _dated(acceptance: Acceptance, day: date) -> Acceptance:
@@ -137,4 +142,5 @@ def lost_drawings(file: SettingsFile) -> tuple[tuple[str, int], ...]:
     """Drawings that the file names, not by a pattern, and that are not there, each with the line that names it."""
     named = [(table.drawing, table.line) for table in file.accepted]
     named += [(table.pattern, table.line) for table in file.tables if not is_pattern(table.pattern)]
-    return tuple((path, line) for path, line in sorted(named, key=itemgetter(1)) if not (file.folder / path).exists())
+    lost = {path for path in dict(named) if not (file.folder / path).exists()}
+    return tuple((path, line) for path, line in sorted(named, key=itemgetter(1)) if path in lost)

@@ -43,7 +43,8 @@ def shown_path(path: Path) -> str:
 
 def _folder_of(drawing: Path) -> str:
     real = os.path.realpath(drawing)
-    return real if Path(real).is_dir() else str(Path(real).parent)
+    # Path.is_dir raises below a folder that may not be entered.
+    return real if os.path.isdir(real) else str(Path(real).parent)  # noqa: PTH112
 
 
 def _nearest(folder: str, known: Folders) -> Path | None:
@@ -61,9 +62,10 @@ def _candidates(folder: str) -> tuple[Path, Path]:
 def _holds_settings(file: Path) -> bool:
     """Whether the file is there and, for one that is shared with other programs, has a table for this one."""
     try:
-        if not file.is_file():
-            return False
-        return file.name == SETTINGS_FILE or _has_table(file.read_bytes())
+        if file.name == SETTINGS_FILE:
+            # A link to nothing, or a folder of that name, must be told of when it is read, not passed over.
+            return os.path.lexists(file) and not file.is_fifo()
+        return file.is_file() and _has_table(file.read_bytes())
     except OSError:
         return file.name == SETTINGS_FILE  # it is there but cannot be read: that must be said, not passed over
 

@@ -5,14 +5,15 @@ from __future__ import annotations
 import os
 import re
 import tomllib
-from collections.abc import Iterator, Mapping
-from dataclasses import dataclass
+from collections import defaultdict
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass, field
 from pathlib import Path
 from typing import Any, NamedTuple, NoReturn
 
 from dxfcheck.configuration.accept_tables import AcceptTable, read_accept_tables
 from dxfcheck.configuration.key_lines import KeyPath, lines_of_keys
-from dxfcheck.configuration.lookup import PROJECT_FILE, shown_path
+from dxfcheck.configuration.lookup import PROJECT_FILE, SETTINGS_FILE, shown_path
 from dxfcheck.configuration.path_patterns import trouble_with_pattern
 from dxfcheck.configuration.problems import Problems, described, known_words, misplaced
 from dxfcheck.configuration.settings_keys import ACCEPT, ANY_NAME, DRAWINGS, KEYS
@@ -38,7 +39,8 @@ class DrawingTable(NamedTuple):
 class SettingsFile:
     """A settings file without mistakes. ``folder`` is the one its patterns start from, ``shown`` its name in messages.
 
-    ``tables`` are those of single drawings, in order; ``accepted`` the findings accepted, of whatever drawing.
+    ``tables`` are those of single drawings, in order; ``accepted`` the findings accepted, of whatever drawing, and
+    ``accepted_on`` those of each drawing by its real path.
     """
 
     shown: str
@@ -46,6 +48,7 @@ class SettingsFile:
     statements: tuple[Statement, ...] = ()
     tables: tuple[DrawingTable, ...] = ()
     accepted: tuple[AcceptTable, ...] = ()
+    accepted_on: Mapping[str, Sequence[AcceptTable]] = field(default_factory=dict)
 
 
 def read_settings_file(path: Path) -> SettingsFile:
@@ -66,14 +69,28 @@ def read_settings_file(path: Path) -> SettingsFile:
     accepted = tuple(read_accept_tables(document.get(ACCEPT, []), problems, folder))
     if problems.found:
         raise SettingsInvalid(shown, problems.in_order())
-    return SettingsFile(shown=shown, folder=folder, statements=statements, tables=tables, accepted=accepted)
+    accepted_on: defaultdict[str, list[AcceptTable]] = defaultdict(list)
+    for table in accepted:
+        accepted_on[table.path].append(table)
+    return SettingsFile(
+        shown=shown,
+        folder=folder,
+        statements=statements,
+        tables=tables,
+        accepted=accepted,
+        accepted_on=dict(accepted_on),
+    )
 
 
 def _text_of(path: Path, shown: str) -> str:
     try:
         content = path.read_bytes()
     except FileNotFoundError:
+        if path.is_symlink():
+            _refuse(shown, f"{shown}: the settings file is a link to nothing; check where it leads")
         _refuse(shown, f"{shown}: there is no such settings file; check the path")
+    except IsADirectoryError:
+        _refuse(shown, f"{shown}: is a folder, not a settings file; name a file, or rename the folder")
     except (OSError, ValueError) as error:
         reason = getattr(error, "strerror", None) or error
         _refuse(shown, f"{shown}: the settings file cannot be read: {reason}; check its permissions")
@@ -137,6 +154,8 @@ def _unknown(path: KeyPath, words: set[str], value: object, problems: Problems) 
         return f"accepted findings name their drawing themselves; write [{problems.heading(ACCEPT)}] with drawing = ..."
     if len(inside) == 2 and inside[0] == DRAWINGS and isinstance(value, dict) and word.lower() == "dxf":
         return f"a pattern with a dot stands in quotes; write {problems.heading(DRAWINGS, f'{inside[1]}.{word}')}"
+    if not inside and word in {"tool", "dxfcheck"} and isinstance(value, dict):
+        return f"in a {SETTINGS_FILE} tables stand at the top; write [reading] for [tool.dxfcheck.reading]"
     return misplaced(path, words if inside else words | {DRAWINGS, ACCEPT}, problems)
 
 

@@ -89,19 +89,21 @@ SETTINGS = (
         '["DIM*"]',
         ", ".join(CONSTRUCTION_LAYERS),
     ),
-    Key("expect.mobility", "whole number", "the mobility each mechanism ought to have", "1", "none"),
+    Key("expect.mobility", "whole number", 'the mobility each mechanism ought to have, or "off"', "1", "none"),
     Key(
         "expect.speeds.*",
         "speed",
-        "the speed a pin, link, block or telescope ought to have",
+        'the speed a pin, link, block or telescope ought to have, or "off"',
         '"0.35 m/s ± 2 %"',
         "none",
     ),
-    Key("expect.ratios.*", "ratio", "the ratio of two links' speeds of turning", '"0.5 ± 2 %"', "none"),
-    Key("limits.pin-speed", "limit", "the greatest speed of pins", '"2 m/s"', "none"),
-    Key("limits.slide-speed", "limit", "the greatest speed along slides and telescopes", '"500 mm/s"', "none"),
-    Key("limits.rubbing-speed", "limit", "the greatest rubbing speed in pins", '"0.5 m/s"', "none"),
-    Key("limits.link-speed", "limit", "the greatest speed of turning of links", '"300 rpm"', "none"),
+    Key("expect.ratios.*", "ratio", 'the ratio of two links\' speeds of turning, or "off"', '"0.5 ± 2 %"', "none"),
+    Key("limits.pin-speed", "limit", 'the greatest speed of pins, or "off"', '"2 m/s"', "none"),
+    Key(
+        "limits.slide-speed", "limit", 'the greatest speed along slides and telescopes, or "off"', '"500 mm/s"', "none"
+    ),
+    Key("limits.rubbing-speed", "limit", 'the greatest rubbing speed in pins, or "off"', '"0.5 m/s"', "none"),
+    Key("limits.link-speed", "limit", 'the greatest speed of turning of links, or "off"', '"300 rpm"', "none"),
     Key(
         "limits.transmission-angle",
         "angle",

@@ -13,7 +13,7 @@ from dxfcheck.configuration.settings_keys import ANY_NAME, Key, Kind
 from dxfcheck.drawing.units import LENGTH_UNITS, parse_unit
 from dxfcheck.errors import OptionInvalid
 from dxfcheck.reading.drives.drive_text import parse_drive
-from dxfcheck.reading.requirements.requirement_text import read_expected_speed, read_limit, read_ratio
+from dxfcheck.reading.requirements.requirement_text import OFF, read_expected_speed, read_limit, read_ratio
 from dxfcheck.rules.finding import SEVERITIES
 from dxfcheck.rules.registry import all_rules
 from dxfcheck.settings import Quantity
@@ -44,7 +44,7 @@ SHAPES: dict[Kind, str] = {
 class Statement(NamedTuple):
     """One setting as a file states it: its key, the name it is for ('' where it needs none), its value and line.
 
-    ``text`` is the value as it would be written in such a file.
+    ``text`` is the value as it would be written in such a file. An expectation that is lifted has None as its value.
     """
 
     key: str
@@ -108,7 +108,9 @@ def _length(key: Key, value: object, path: KeyPath, problems: Problems) -> Itera
 
 
 def _whole_number(key: Key, value: object, path: KeyPath, problems: Problems) -> Iterator[Statement]:
-    if isinstance(value, bool) or not isinstance(value, int):
+    if value == OFF:
+        yield _statement(key, None, path, problems)._replace(text=quoted(OFF))
+    elif isinstance(value, bool) or not isinstance(value, int):
         _wrong(key, value, path, problems)
     else:
         yield _statement(key, value, path, problems)
@@ -147,11 +149,21 @@ def _drives(key: Key, value: object, path: KeyPath, problems: Problems) -> Itera
 
 
 def _speed(key: Key, value: object, path: KeyPath, problems: Problems) -> Iterator[Statement]:
-    yield from _requirement(key, value, path, problems, read_expected_speed)
+    yield from _expectation(key, value, path, problems, read_expected_speed)
 
 
 def _ratio(key: Key, value: object, path: KeyPath, problems: Problems) -> Iterator[Statement]:
-    yield from _requirement(key, value, path, problems, read_ratio)
+    yield from _expectation(key, value, path, problems, read_ratio)
+
+
+def _expectation(
+    key: Key, value: object, path: KeyPath, problems: Problems, read: Callable[..., object]
+) -> Iterator[Statement]:
+    """What is expected of the name in the key; None as its value where nothing is to be expected of it."""
+    if value == OFF:
+        yield Statement(key.name, str(path[-1]), None, quoted(OFF), problems.line(path))
+    else:
+        yield from _requirement(key, value, path, problems, read)
 
 
 def _limit(key: Key, value: object, path: KeyPath, problems: Problems) -> Iterator[Statement]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import io
 import logging
 import re
 import stat
@@ -17,6 +18,7 @@ from ezdxf.tools.codepage import toencoding
 
 from dxfcheck.drawing.cleaning import clean
 from dxfcheck.drawing.primitives import Notice
+from dxfcheck.drawing.sections import without_idle_sections
 from dxfcheck.drawing.shapes import LIBRARY_FAULTS
 from dxfcheck.errors import DrawingUnreadable
 
@@ -34,6 +36,8 @@ _OTHER_KINDS: tuple[tuple[bytes, str], ...] = (
 _SAVE_AS_DXF = "save the drawing as DXF"
 _EXPORT_AGAIN = "export it again from the program that made it"
 _HEAD_LENGTH = 4096
+_WORTH_CUTTING = 2_000_000
+"""Bytes; in a larger file the sections that can be left out are a small part."""
 _VERSION = re.compile(rb"\$ACADVER\s+1\s+(AC1\d{3})\s")
 _CODE_PAGE = re.compile(rb"\$DWGCODEPAGE\s+3\s+([A-Za-z0-9_]+)\s")
 _FIRST_IN_UTF8 = b"AC1021"
@@ -71,7 +75,9 @@ def _read(path: Path, head: bytes) -> Drawing:
     if encoding is None:
         return readfile(path)
     with path.open(encoding=encoding, errors="surrogateescape") as stream:
-        return read(stream)
+        if path.stat().st_size > _WORTH_CUTTING:
+            return read(stream)
+        return read(io.StringIO(without_idle_sections(stream.read())))
 
 
 def stated_encoding(head: bytes) -> str | None:

@@ -45,9 +45,11 @@ def _counts(comparison: Comparison) -> Iterator[str]:
         yield from _counted(what, [p.change for each in changes for p in each.parts if p.what == what])
     if any(change.turned_round for change in changes):
         yield "runs the other way"
-    moved = sum(len(change.moved) for change in changes)
-    if moved:
-        yield f"{count_of(moved, 'pin')} moved"
+    moved = [move for change in changes for move in change.moved]
+    for noun, is_pin in (("pin", True), ("joint", False)):
+        number = sum(move.is_pin == is_pin for move in moved)
+        if number:
+            yield f"{count_of(number, noun)} moved"
     if moved and all(change.other_pose for change in changes if change.moved):
         yield "drawn at another pose"
     for number, noun in (

@@ -23,7 +23,8 @@ class SettingsReport:
     """The settings of one drawing, or of a folder where ``folder`` is True.
 
     ``file`` is the settings file that holds, None without one; ``hidden`` are those that it hides. ``used`` are the
-    tables of single drawings that apply ('drawings "received/*.dxf" (line 30)'), ``unused`` those that do not.
+    tables of single drawings that apply ('drawings "received/*.dxf" (line 30)'), ``unused`` those that do not; of a
+    folder's, ``idle`` are those that no drawing below the folder of the settings file has the path for.
     """
 
     path: str
@@ -33,6 +34,7 @@ class SettingsReport:
     used: tuple[str, ...]
     unused: tuple[str, ...]
     settings: tuple[ListedSetting, ...]
+    idle: tuple[str, ...] = ()
 
 
 def settings_lines(report: SettingsReport, width: int) -> list[Line]:
@@ -58,6 +60,7 @@ def settings_as_json(report: SettingsReport) -> str:
         "file": report.file,
         "hidden": report.hidden,
         "tables": report.used,
+        "tables_that_fit_none": report.idle,
     }
     lines = [f"  {json.dumps(key)}: {json.dumps(value)}," for key, value in head.items()]
     return "\n".join(["{", *lines, '  "settings": [', ",\n".join(f"    {line}" for line in settings), "  ]", "}", ""])
@@ -72,6 +75,8 @@ def _facts(report: SettingsReport) -> list[tuple[str, str]]:
     if report.unused:
         why = "they count for single drawings" if report.folder else "they are of other drawings"
         facts.append(("left aside", f"{', '.join(report.unused)}: {why}"))
+    if report.idle:
+        facts.append(("fit none", f"{', '.join(report.idle)}: no drawing has such a path; mend or remove"))
     if report.hidden:
         facts.append(("hidden", f"{', '.join(report.hidden)}: not used, as {report.file} is nearer"))
     return facts

@@ -21,6 +21,8 @@ __all__ = ["working_lines"]
 
 INDENT = " " * 5
 FURTHER = " " * 9
+NAMED = 8
+"""The links of a step are named where there are at most so many."""
 LEGEND = (
     "By relative velocities, with the figures of the solution: r_C/B leads from B to C, v_C/B is the velocity of C "
     "against B; lengths in {unit}, angles from +x, counter-clockwise; omega x r = omega (-r_y, r_x), ccw positive."
@@ -56,7 +58,8 @@ def _why_none(report: MechanismReport) -> str:
 
 
 def _title(names: Names, step: StepWorking) -> str:
-    links = listed([names.link(link) for link in step.step.links])
+    several = step.step.links
+    links = f"{len(several)} links" if len(several) > NAMED else listed([names.link(link) for link in several])
     if step.closing.form == "given":
         return f"{links}: driven" if step.step.drives else links
     if step.closing.joint is None:
@@ -97,15 +100,16 @@ def _folded(sentences: Iterable[str], width: int) -> Iterator[Line]:
 
 
 def _carried_sentences(names: Names, step: StepWorking) -> Iterator[str]:
-    """The velocities of pins of driven links that no known pin of the same link leads to: a driven block's."""
+    """The velocities of pins of driven links that no known pin of the same link leads to: of blocks, of rollers."""
     hanging = hang(names.solved, step.step)
     for link in step.step.links:
         pins = names.linkage.links[link].pins
         if pins and not any(point.link == link or point.pin in pins for point in step.points):
             pin = names.linkage.pins[pins[0]]
-            speed = names.speed(names.solved.velocity(link, pin.at))
-            if link in dict(step.shared):
-                yield f"v_{pin.name} = {names.chain(hanging.chain(link, pin.at))} = {speed}"
+            chain = hanging.chain(link, pin.at)
+            if not pin.fixed and any(term.kind != "known" for term in names.moving(chain)):
+                speed = names.speed(names.solved.velocity(link, pin.at))
+                yield f"v_{pin.name} = {names.chain(chain)} = {speed}"
 
 
 def _drive_sentence(names: Names, step: StepWorking, drive: Drive) -> str:

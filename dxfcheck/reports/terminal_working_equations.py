@@ -24,7 +24,7 @@ def equation_lines(names: Names, step: StepWorking, width: int, indent: str) -> 
     """What the links agree on, the equations with their numbers, the solution and what it leaves."""
     for sentence in _before(names, step):
         yield from map(Line, fold(sentence, width, indent, indent + FURTHER))
-    if not step.written_out:
+    if not step.closing.written_out:
         return
     closing = step.closing
     symbols = _symbols(names, closing)
@@ -42,10 +42,13 @@ def equation_lines(names: Names, step: StepWorking, width: int, indent: str) -> 
 def _before(names: Names, step: StepWorking) -> Iterator[str]:
     """How many equations there are, and where each comes from."""
     closing, solved = step.closing, names.solved
-    counted = f"{count_of(len(closing.equations), 'equation')} in {count_of(len(closing.unknowns), 'unknown')}"
-    if not step.written_out:
-        yield f"{counted}: too many to solve by hand; put in, the solution leaves at most {_left(names, closing)}"
+    if not closing.written_out:
+        yield (
+            f"{len(closing.unknowns)} unknowns hang together: too many to solve by hand; put into the equations, the "
+            f"solution leaves at most {_left(names, closing)}"
+        )
         return
+    counted = f"{count_of(len(closing.equations), 'equation')} in {count_of(len(closing.unknowns), 'unknown')}"
     arms: dict[str, str] = {}
     known: dict[str, str] = {}
     for chains, where in _sums(names, hang(solved, step.step)):

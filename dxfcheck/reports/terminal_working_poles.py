@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 
 from dxfcheck.analysis.kennedy import PoleLine, PoleWorking
+from dxfcheck.analysis.solved_linkage import acts_as
 from dxfcheck.reports.terminal_layout import figure
 from dxfcheck.reports.terminal_working_terms import Names
 from dxfcheck.tolerances import SHOWN_AS_ZERO
@@ -51,9 +52,12 @@ def _line(names: Names, line: PoleLine) -> str:
 
 
 def _pole_name(names: Names, link: int) -> str:
-    """The fixed pin that a link turns about, or 'the pole of' it."""
-    fixed = [pin for pin in names.linkage.links[link].pins if names.linkage.pins[pin].fixed]
-    return names.linkage.pins[fixed[0]].name if fixed else f"the pole of {names.link(link)}"
+    """The fixed pin, or the contact with the frame, that a link turns about; else 'the pole of' it."""
+    for number in names.solved.joints_of[link]:
+        joint = names.linkage.joints[number]
+        if acts_as(joint) == "pin" and names.linkage.frame in (joint.first, joint.second):
+            return names.place(joint.at)
+    return f"the pole of {names.link(link)}"
 
 
 def _check(names: Names, work: PoleWorking) -> str:

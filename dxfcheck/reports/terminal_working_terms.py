@@ -118,7 +118,7 @@ class Names:
         what = f"{self.link(link)} slides on {base}"
         if joint.kind == "pin in slot" and joint.pin in self.linkage.links[link].pins:
             what = f"pin {self.place(joint.at)} of {self.link(link)} slides in the slot of {base}"
-        return f"{self.velocity_name(term)}: {what}, towards {self.towards(term.factor)} deg or back"
+        return f"{self.velocity_name(term)}: {what}, towards {self.towards(joint.direction or 0j)} deg or back"
 
     def sliding_positive(self, number: int, link: int) -> str:
         """Which way the speed along a slide, as that of ``link`` against the joint's other link, counts positive."""

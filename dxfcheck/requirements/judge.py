@@ -31,8 +31,8 @@ def judge_requirements(
 ) -> Judged:
     """The verdict on each requirement and each part that it is about; ``noted`` are those of notes on the sheet.
 
-    A plain name stands before a pattern, settings before a note on the same part. Cost linear in the parts for each
-    requirement.
+    A plain name stands before a pattern, settings before a note on the same part; what is lifted is not judged. Cost
+    linear in the parts for each requirement.
     """
     stated = [*_expected_mobility(settings), *settings.requirements, *noted]
     if not stated:
@@ -49,6 +49,8 @@ def judge_requirements(
         found = [(index, part) for index in own for part in _about(stated[index], parts, number)]
         matched.update(index for index, _ in found)
         for requirement, part, superseded in _ranked([(stated[index], part) for index, part in found]):
+            if requirement.lifts:
+                continue
             scale = parts.greatest(requirement.quantity, number)
             verdict = _verdict(requirement, part, (linkage, analysis), unit, scale)
             verdicts.append(_given_way(verdict) if superseded else verdict)
@@ -199,7 +201,8 @@ def _bounds(requirement: Requirement, unit: LengthUnit | None) -> Bounds:
 def _unmatched(stated: Sequence[Requirement], matched: set[int], mechanisms: Mechanisms) -> Iterator[Unmatched]:
     """What the settings state of parts that are not there; '*' is about whatever there is."""
     for index, each in enumerate(stated):
-        if index in matched or each.source == "note" or each.quantity == "mobility" or each.subject == "*":
+        named = each.quantity != "mobility" and each.subject != "*" and not each.lifts
+        if index in matched or each.source == "note" or not named:
             continue
         yield Unmatched(each, _why_unmatched(each, mechanisms), is_pattern(each.subject))
 

@@ -47,7 +47,7 @@ def dimension_override(subject: RuleSubject) -> Iterator[Finding]:
     also=("note",),
     looks_for="A dimension with a point on no end, centre, line or rim, nor where lines would meet if drawn on: a "
     "warning where an end or centre lies near, a note where none does. Points near linework that was not read count "
-    "as right.",
+    "as right. At most 50 such dimensions of a sheet are looked for; the last one says how many are left.",
     matters="The linework was moved and the dimension left behind: it shows the size before the change.",
     remedy="Snap the point back to the end or centre it belongs to, or delete the dimension.",
 )

@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 
+from dxfcheck.geometry import Point
+from dxfcheck.linkage import Pin
 from dxfcheck.reading.reading import Observation
 from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.observed import at_pin, figured, finding, moved, of_linkages, snap_place
@@ -233,8 +235,11 @@ def duplicate_label(subject: RuleSubject) -> Iterator[Finding]:
 )
 def unlabelled_pins(subject: RuleSubject) -> Iterator[Finding]:
     """Pins named by place; one finding a drawing."""
-    pins = [(linkage.name, pin) for linkage, _ in subject.mechanisms for pin in linkage.pins]
-    unnamed = [(mechanism, pin) for mechanism, pin in pins if not pin.labelled]
+    pins: dict[tuple[Point, tuple[str, ...]], tuple[str, Pin]] = {}
+    for linkage, _ in subject.mechanisms:
+        for pin in linkage.pins:  # one on the frame may be of several mechanisms
+            pins.setdefault((pin.at, pin.handles), (linkage.name, pin))
+    unnamed = [(mechanism, pin) for mechanism, pin in pins.values() if not pin.labelled]
     if not unnamed:
         return
     first = [pin for _, pin in unnamed[:PLACES_NAMED]]

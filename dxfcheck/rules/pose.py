@@ -9,6 +9,7 @@ from collections.abc import Iterator
 from dxfcheck.analysis.results import Analysis, DeadCentre, DriveVerdict
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.linkage import Drive, Linkage
+from dxfcheck.rules.fault_wording import drive_options, link_names, rigid_together
 from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.observed import finding, observed
 from dxfcheck.rules.registry import rule
@@ -183,7 +184,17 @@ def drive_at_limit(subject: RuleSubject) -> Iterator[Finding]:
         what = "sliding drive" if drive.kind == "slide" else "drive"
         stated = f"{'assumed' if drive.source == 'assumed' else 'stated'} {what}"
         message = f"the {stated} of {name} cannot act at this pose: the joints hold {name} still{_on(linkage, drive)}"
-        yield _about(linkage, drive, "drive-at-limit", message, "draw another pose, or drive another link")
+        remedy = "draw another pose, or drive another link"
+        if analysis.settling_drives:
+            able = link_names(linkage, [each.link for each in analysis.settling_drives])
+            message += f"; {', '.join(able)} could drive it from here"
+            option = drive_options(linkage, analysis.settling_drives, subject.sketch.unit)
+            remedy = f"draw another pose, or drive {' and '.join(able)} instead{f': {option}' if option else ''}"
+        elif taken := [each.link for each in _taken(linkage, analysis)]:
+            remedy = (
+                f"draw another pose, or leave this drive out: {' and '.join(link_names(linkage, taken))} can drive it"
+            )
+        yield _about(linkage, drive, "drive-at-limit", message, remedy)
 
 
 @rule(
@@ -203,6 +214,8 @@ def dead_centre(subject: RuleSubject) -> Iterator[Finding]:
         if analysis.mobility.at_pose == 0:
             continue
         for centre in analysis.dead_centres:
+            if rigid_together(analysis, centre.links):
+                continue
             first, second = (linkage.links[link].name for link in centre.links)
             pin = linkage.pins[centre.pin]
             within = f"{pin.name}, within {math.degrees(centre.angle):.2g} deg"
@@ -215,12 +228,27 @@ def dead_centre(subject: RuleSubject) -> Iterator[Finding]:
                 rule="dead-centre",
                 severity="warning",
                 message=message,
-                remedy="draw another pose if this one is not meant",
+                remedy=f"draw another pose if this one is not meant{_able(linkage, analysis)}",
                 at=pin.at,
                 handles=pin.handles,
                 layer=pin.layer,
                 mechanism=linkage.name,
             )
+
+
+def _able(linkage: Linkage, analysis: Analysis) -> str:
+    """Which link drives the linkage from this pose, or could."""
+    able = [each.link for each in (_taken(linkage, analysis) if analysis.solved else analysis.settling_drives)]
+    if not able:
+        return ""
+    names = " and ".join(link_names(linkage, able))
+    return f"; {names} {'drives' if analysis.solved else 'could drive'} it from here"
+
+
+def _taken(linkage: Linkage, analysis: Analysis) -> list[Drive]:
+    """The drives that act."""
+    pairs = zip(linkage.drives, analysis.drives, strict=True)
+    return [drive for drive, verdict in pairs if verdict.outcome == "taken"]
 
 
 def _cannot_drive(linkage: Linkage, centre: DeadCentre) -> str:

@@ -10,6 +10,7 @@ from dxfcheck.analysis.results import Analysis, SpeedBounds, Transmission
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Linkage
+from dxfcheck.rules.fault_wording import rigid_together
 from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
@@ -54,6 +55,8 @@ def near_dead_centre(subject: RuleSubject) -> Iterator[Finding]:
         if analysis.mobility.at_pose == 0:
             continue
         for centre in analysis.near_dead_centres:
+            if rigid_together(analysis, centre.links):
+                continue
             first, second = (linkage.links[link].name for link in centre.links)
             pin, angle = linkage.pins[centre.pin], f"{math.degrees(centre.angle):.2g} deg"
             if centre.square:
@@ -89,7 +92,7 @@ def low_transmission_angle(subject: RuleSubject) -> Iterator[Finding]:
             continue
         for each in analysis.transmissions:
             degrees = math.degrees(each.angle)
-            if NEAR_DEAD_CENTRE_DEGREES < degrees < least:
+            if NEAR_DEAD_CENTRE_DEGREES < degrees < least and not rigid_together(analysis, (each.pusher, each.pushed)):
                 message = f"{_push(linkage, each)} (least {least:g} deg)"
                 remedy = "change the lengths, or draw another pose if this one is not meant"
                 yield _at_pin(linkage, each.pin, "low-transmission-angle", message, remedy)

@@ -8,12 +8,13 @@ from dataclasses import replace
 from dxfcheck.analysis.results import Analysis
 from dxfcheck.drawing.fates import PAPER_SPACE
 from dxfcheck.linkage import Linkage
+from dxfcheck.rules.fault_wording import dependent_words, link_names, one_of
 from dxfcheck.rules.finding import Finding, Severity
 from dxfcheck.rules.limit_wording import stated_where
 from dxfcheck.rules.registry import rule
-from dxfcheck.rules.settings_and_sources import CONSTRUCTION, DRIVES, FRAME, MOBILITY, SYMBOLS, TOLERANCE
+from dxfcheck.rules.settings_and_sources import CONSTRUCTION, FRAME, MOBILITY, SYMBOLS, TOLERANCE
 from dxfcheck.rules.subject import RuleSubject
-from dxfcheck.rules.wording import listed, plural
+from dxfcheck.rules.wording import plural
 from dxfcheck.tolerances import RANK_DOUBTFUL
 
 __all__: list[str] = []
@@ -162,9 +163,9 @@ def no_motion(subject: RuleSubject) -> Iterator[Finding]:
         mobility = analysis.mobility
         if linkage.grounded and mobility.at_pose == 0 and mobility.count == 0:
             message = f"{linkage.name} cannot move: the count is 0, with no freedom at the drawn pose{_doubt(analysis)}"
-            yield _about(
-                linkage, "no-motion", "error", message, "take out a link or free a joint, unless it is meant so"
-            )
+            to_go = link_names(linkage, [link for part in analysis.locked_parts for link in part.links_to_go])
+            remedy = f"take out {one_of(to_go) if to_go else 'a link'} or free a joint, unless it is meant so"
+            yield _about(linkage, "no-motion", "error", message, remedy)
 
 
 @rule(
@@ -183,73 +184,15 @@ def over_constrained(subject: RuleSubject) -> Iterator[Finding]:
     for linkage, analysis in subject.mechanisms:
         mobility = analysis.mobility
         if linkage.grounded and mobility.at_pose == 0 and mobility.count < 0:
+            said, going = dependent_words(linkage, analysis.dependent_joints)
             message = (
                 f"{linkage.name} is over-constrained: the count is {mobility.count}, "
-                f"{plural(-mobility.count, 'constraint')} more than hold it still"
+                f"{plural(-mobility.count, 'constraint')} more than hold it still{f'; {said}' if said else ''}"
             )
-            yield _about(
-                linkage, "over-constrained", "error", message, "take out links or joints that repeat a constraint"
-            )
-
-
-@rule(
-    "special-geometry",
-    "warning",
-    "It moves only because of its lengths",
-    family="structure",
-    looks_for="More freedom at the drawn pose than the count gives: parallel cranks, coincident joints, a stretched "
-    "chain.",
-    matters="The extra freedom holds while lengths are exact, or only for an instant: wear or a tolerance locks it.",
-    remedy="Check that the equal lengths are meant; else take out the link that repeats a constraint.",
-    settings=TOLERANCE,
-    source=MOBILITY,
-)
-def special_geometry(subject: RuleSubject) -> Iterator[Finding]:
-    """Freedom at the pose beyond the count."""
-    for linkage, analysis in subject.mechanisms:
-        mobility = analysis.mobility
-        if linkage.grounded and mobility.at_pose > max(mobility.count, 0):
-            message = (
-                f"{linkage.name} has {plural(mobility.at_pose, 'freedom')} at the drawn pose where the count gives "
-                f"{mobility.count}: it moves by its special lengths, or only for an instant"
-            )
-            yield _about(
-                linkage,
-                "special-geometry",
-                "warning",
-                message,
-                "check that these lengths are meant and held to tolerance",
-            )
-
-
-@rule(
-    "undriven-freedom",
-    "warning",
-    "Links that no drive settles",
-    family="structure",
-    looks_for="A mechanism with more freedoms at the pose than drives that count.",
-    matters="The speeds of those links are not known; they are shown as '?'.",
-    remedy="State another drive with a note on the sheet or with --drive.",
-    settings=DRIVES,
-    source=MOBILITY,
-)
-def undriven_freedom(subject: RuleSubject) -> Iterator[Finding]:
-    """Freedoms left by the drives."""
-    for linkage, analysis in subject.mechanisms:
-        left = _undriven(linkage, analysis)
-        if left > 0:
-            free = [
-                link.name for link, motion in zip(linkage.links, analysis.links, strict=True) if not motion.determined
-            ]
-            message = f"{plural(left, 'freedom')} of {linkage.name} not driven: {listed(free)} may move in any way"
-            remedy = f"state {plural(left, 'further drive')}, by a note or with --drive"
-            yield _about(linkage, "undriven-freedom", "warning", message, remedy)
-
-
-def _undriven(linkage: Linkage, analysis: Analysis) -> int:
-    taken = sum(drive.outcome == "taken" for drive in analysis.drives)
-    at_limit = any(drive.outcome == "at limit" for drive in analysis.drives)
-    return analysis.mobility.at_pose - taken if linkage.grounded and not at_limit else 0
+            remedy = f"take out {going or 'links or joints that repeat a constraint'}"
+            if going:
+                remedy += f"; {1 - mobility.count} such let it move"
+            yield _about(linkage, "over-constrained", "error", message, remedy)
 
 
 @rule(

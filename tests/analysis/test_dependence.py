@@ -31,7 +31,8 @@ def freedom(model: Linkage) -> int:
 def redundant(model: Linkage) -> int:
     """Constraints less rank."""
     matrix = constraint_matrix(model, topology_of(model), bodies_of(model))
-    return len(matrix) - (matrix.shape[1] - freedom(model))
+    columns = matrix.shape[1]
+    return len(matrix) - int(columns) + freedom(model)
 
 
 def without_link(model: Linkage, link: int) -> Linkage:

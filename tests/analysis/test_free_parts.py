@@ -35,7 +35,7 @@ def test_no_single_drive_settles_two_freedoms() -> None:
 def test_two_cranks_on_one_frame_are_two_parts() -> None:
     points = {"A": 0j, "B": 20 + 5j, "C": 100 + 0j, "D": 120 + 5j}
     model = linkage(points, {"A": "ground a", "C": "ground c"}, tracing={"B": "a", "D": "c"})
-    assert [part.links for part in analyse(model).free_parts] == [(1,), (2,)]
+    assert analyse(model).free_parts == (FreePart((1,), 1, (1,), ()), FreePart((2,), 1, (2,), ()))
 
 
 def test_slide_on_the_frame_may_be_driven() -> None:
@@ -55,6 +55,13 @@ def test_what_stands_above_a_cell_without_its_pin() -> None:
     (part,) = analyse(scissor_lattice(200, unpinned=(60,))).free_parts
     assert part.links == tuple(range(121, 201))
     assert part.freedoms == 2
+
+
+def test_freedoms_of_many_cells_without_their_pins_add_up() -> None:
+    result = analyse(scissor_lattice(400, unpinned=range(5, 200, 10)))
+    (part,) = result.free_parts
+    assert part.freedoms == result.mobility.at_pose - 1
+    assert part.links == tuple(range(11, 401))
 
 
 @pytest.mark.parametrize("seed", range(200, 260))

@@ -56,6 +56,7 @@ def main() -> None:
     """Print each ratio beside the least it should be."""
     count, pairs = [int(text) for text in sys.argv[1:]] + [DRAWINGS, PAIRS][len(sys.argv) - 1 :]
     os.environ["PYTHONPATH"] = str(ROOT)
+    os.environ.pop("PYTHONDONTWRITEBYTECODE", None)  # as users run it: compiled once
     with tempfile.TemporaryDirectory() as folder:
         fill(Path(folder), count)
         print(f"{'ratio':>6}  {'limit':>5}")

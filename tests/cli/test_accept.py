@@ -1,5 +1,7 @@
 from __future__ import annotations
 
+import errno
+import io
 import re
 import shutil
 import tomllib
@@ -40,9 +42,9 @@ def test_what_was_accepted_fails_the_drawing_no_more(capsys: pytest.CaptureFixtu
     assert err == ""
     assert "gap.dxf: accepted error near-miss at (199.6" in out
     assert "; written to dxfcheck.toml:3\n" in out
-    assert main(["check", "gap.dxf", "--fail-on", "note"]) == 0
+    assert main(["check", "gap.dxf", "--fail-on", "warning"]) == 0
     out = capsys.readouterr().out
-    assert "no findings but 3 accepted" in " ".join(out.split())
+    assert "3 accepted" in " ".join(out.split())
     assert re.search(r"  error    near-miss at \(199.6\d+, 11.99\d+\): spare hole\n", out)
     assert accept("gap.dxf") == 0
     assert capsys.readouterr().out == (
@@ -50,7 +52,9 @@ def test_what_was_accepted_fails_the_drawing_no_more(capsys: pytest.CaptureFixtu
     )
 
 
-@pytest.mark.parametrize("name", ["line 2/Kipper ä.dxf", "a \"b\" [1] 'c'.dxf", "線 {x}=#.DXF", "sub/deep er/t.dxf"])
+@pytest.mark.parametrize(
+    "name", ["line 2/Kipper ä.dxf", "a \"b\" [1] 'c'.dxf", "線 {x}=#.DXF", "sub/deep er/t.dxf", "~tmp*?.dxf"]
+)
 def test_drawings_of_any_name_can_be_accepted(name: str) -> None:
     Path(name).parent.mkdir(parents=True, exist_ok=True)
     Path("gap.dxf").rename(name)
@@ -58,7 +62,7 @@ def test_drawings_of_any_name_can_be_accepted(name: str) -> None:
     assert main(["check", name, "--quiet"]) == 1
     assert accept(name) == 0
     assert {entry["drawing"] for entry in entries()} == {name}
-    assert main(["check", name, "--quiet", "--fail-on", "note"]) == 0
+    assert main(["check", name, "--quiet", "--fail-on", "warning"]) == 0
 
 
 def test_a_new_settings_file_stands_beside_the_drawing() -> None:
@@ -174,3 +178,23 @@ def test_a_fault_of_ours_is_told_as_one(monkeypatch: pytest.MonkeyPatch, capsys:
     assert accept("tipper.dxf") == 3
     assert "a fault of dxfcheck itself" in capsys.readouterr().err
     assert not Path("dxfcheck.toml").exists()
+
+
+def test_a_path_that_no_folder_can_hold_is_not_there(capsys: pytest.CaptureFixture[str]) -> None:
+    assert accept(f"{'x' * 300}.dxf") == 2
+    assert "there is no such file or folder; check the path" in capsys.readouterr().err
+
+
+class Full(io.StringIO):
+    """A stream on a full disk."""
+
+    def write(self, _text: str) -> int:
+        raise OSError(errno.ENOSPC, "No space left on device")
+
+
+def test_where_nothing_can_be_printed_that_is_told(
+    monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    monkeypatch.setattr("sys.stdout", Full())
+    assert accept("gap.dxf") == 2
+    assert "what was done cannot be written to standard output: No space left" in capsys.readouterr().err

@@ -185,3 +185,9 @@ def test_a_renamed_drawing_goes_by_its_new_name(capsys: pytest.CaptureFixture[st
     out = capsys.readouterr().out
     assert out.startswith("b.dxf: changed as a mechanism")
     assert "OLD old.dxf (abc1234)" in out
+
+
+def test_warnings_of_a_settings_file_come_once_for_both_drawings(capsys: pytest.CaptureFixture[str]) -> None:
+    Path("dxfcheck.toml").write_text("[drawings.'gone.dxf'.reading]\n", encoding="utf-8")
+    assert main(["compare", "old.dxf", "longer.dxf"]) == 1
+    assert capsys.readouterr().err.count("gone.dxf") == 1

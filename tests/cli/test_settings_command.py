@@ -172,3 +172,22 @@ def test_a_starter_needs_a_drawing_that_can_be_read(capsys: pytest.CaptureFixtur
     assert "broken.dxf: " in err
     assert main(["settings", ".", "--starter"]) == 2
     assert "[reading]" in capsys.readouterr().out
+
+
+@pytest.mark.usefixtures("office")
+def test_a_table_that_fits_no_drawing_is_told_of_for_the_folder(capsys: pytest.CaptureFixture[str]) -> None:
+    with Path("dxfcheck.toml").open("a", encoding="utf-8") as file:
+        file.write("[drawings.'Received/*.dxf'.reading]\n")
+    main(["settings"])
+    out = " ".join(capsys.readouterr().out.split())
+    assert 'fit none drawings "Received/*.dxf" (line 8): no drawing has such a path; mend or remove' in out
+    assert 'left aside drawings "received/*.dxf" (line 6): they count for single drawings' in out
+    main(["settings", "tray-tipper.dxf"])
+    assert "fit none" not in capsys.readouterr().out
+
+
+@pytest.mark.parametrize("command", [["settings"], ["compare", "tray-tipper.dxf"]])
+@pytest.mark.usefixtures("office")
+def test_a_path_that_no_folder_can_hold_is_not_there(command: list[str], capsys: pytest.CaptureFixture[str]) -> None:
+    assert main([*command, f"{'x' * 300}.dxf"]) == 2
+    assert "there is no such file or folder; check the path" in capsys.readouterr().err

@@ -314,3 +314,25 @@ def test_a_pin_that_moved_is_told_from_the_sheet_that_did(
     links_there = {part.name for part in plan.parts if pin in part.pins} | {"frame"}
     assert {length.subject for length in change.lengths} <= links_there
     assert not change.parts
+
+
+def test_two_mechanisms_that_changed_places_are_the_same_elsewhere(tmp_path: Path) -> None:
+    moves = {"B": -0.1 * TIPPER.points["B"], "C": -5 - 5j}
+    smaller = relabelled(moved_pins(TIPPER, moves), dict(zip("ABCD", "EFGH", strict=True)))
+    aside = 600 + 0j
+    old, new = [TIPPER, shifted(smaller, aside)], [shifted(TIPPER, aside), smaller]
+    comparison = compared(tmp_path, old, new)
+    assert not comparison.changed
+    assert sorted(round(change.placed.shift.real) for change in comparison.mechanisms if change.placed) == [-600, 600]
+
+
+def test_a_rolling_contact_that_moved_is_no_pin(tmp_path: Path) -> None:
+    picker = mechanisms_gears.PICKER
+    first, second = picker.wheels
+    wheels = (
+        dataclasses.replace(first, radii=(first.radii[0] + 10,)),
+        dataclasses.replace(second, radii=(second.radii[0] - 10,)),
+    )
+    comparison = compared(tmp_path, picker, dataclasses.replace(picker, wheels=wheels))
+    assert [move.is_pin for move in only(comparison).moved] == [False]
+    assert "1 joint moved" in verdict_words(comparison)

@@ -78,3 +78,11 @@ def test_a_value_that_cannot_be_used_is_told(tmp_path: Path, line: str, says: st
     text = "\n".join(line if each.startswith(word) else each for each in GOOD.splitlines())
     (problem,) = problems_of(tmp_path, text)
     assert says in problem
+
+
+@pytest.mark.parametrize("name", ["a*.dxf", "what?.dxf", "~a.dxf"])
+def test_a_drawing_may_be_called_like_a_pattern(tmp_path: Path, name: str) -> None:
+    text = "\n".join(f"drawing = '{name}'" if each.startswith("drawing") else each for each in GOOD.splitlines())
+    problems_of(tmp_path, text)
+    (tmp_path / name).touch()
+    assert [each.drawing for each in settings_file(tmp_path, text).accepted] == [name]

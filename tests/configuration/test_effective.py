@@ -126,3 +126,40 @@ def test_accepted_findings_of_drawings_that_are_not_there_are_lost(tmp_path: Pat
 
 def test_today_is_a_day() -> None:
     assert today() >= date(2024, 1, 1)
+
+
+LIFTED = """
+[expect]
+mobility = 1
+speeds.C = "1 m/s"
+speeds."C-D" = "2 rad/s"
+ratios."C-D / A-B" = "0.5"
+[limits]
+pin-speed = { "*" = "2 m/s", C = "3 m/s" }
+slide-speed = "1 m/s"
+[drawings."old.dxf"]
+expect.mobility = "off"
+expect.speeds.C = "off"
+expect.ratios."C-D / A-B" = "off"
+limits.pin-speed = "off"
+"""
+
+
+def test_what_is_off_for_some_drawings_is_not_stated_for_them(tmp_path: Path) -> None:
+    file = settings_file(tmp_path, LIFTED)
+    old = settings_for(tmp_path / "old.dxf", file, Settings()).settings
+    other = settings_for(tmp_path / "other.dxf", file, Settings()).settings
+    assert (old.expected_mobility, other.expected_mobility) == (None, 1)
+    assert {each.stated for each in old.requirements if not each.lifts} == {"2 rad/s", "1 m/s"}
+    assert {each.subject for each in old.requirements if each.quantity != "pin-speed"} == {"C-D", "*"}
+    assert len(other.requirements) == 6
+
+
+def test_a_limit_that_is_off_for_one_part_leaves_the_others(tmp_path: Path) -> None:
+    file = settings_file(tmp_path, LIFTED.replace('pin-speed = "off"', 'pin-speed.C = "off"'))
+    pins = settings_for(tmp_path / "old.dxf", file, Settings()).settings.requirements[-3:]
+    assert {(each.subject, each.lifts) for each in pins if each.quantity == "pin-speed"} == {("*", False), ("C", True)}
+
+
+def test_a_drawing_that_is_lost_is_told_at_each_line(tmp_path: Path) -> None:
+    assert lost_drawings(settings_file(tmp_path, 2 * ACCEPTED)) == (("line 2/a.dxf", 2), ("line 2/a.dxf", 8))

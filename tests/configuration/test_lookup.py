@@ -63,9 +63,13 @@ def test_a_folder_is_looked_at_once_in_a_run(office: Path) -> None:
     assert find_settings_file(office / "line 2" / "b.dxf", known) == office / "dxfcheck.toml"
 
 
-def test_a_folder_of_that_name_is_no_settings_file(office: Path) -> None:
-    (office / "dxfcheck.toml").mkdir()
-    assert find_settings_file(office / "press.dxf") is None
+def test_a_folder_of_that_name_or_a_link_to_nothing_is_not_passed_over(office: Path) -> None:
+    file = office / "dxfcheck.toml"
+    file.mkdir()
+    assert find_settings_file(office / "press.dxf") == file
+    file.rmdir()
+    file.symlink_to("office-settings.toml")
+    assert find_settings_file(office / "press.dxf") == file
 
 
 def test_paths_are_shown_as_a_person_here_would_name_them(office: Path, monkeypatch: pytest.MonkeyPatch) -> None:

@@ -193,7 +193,7 @@ def test_a_byte_order_mark_does_no_harm(tmp_path: Path) -> None:
 def test_a_file_that_is_not_there_or_is_a_folder(tmp_path: Path) -> None:
     with pytest.raises(SettingsInvalid, match="there is no such settings file; check the path"):
         read_settings_file(tmp_path / "gone.toml")
-    with pytest.raises(SettingsInvalid, match="cannot be read"):
+    with pytest.raises(SettingsInvalid, match="is a folder, not a settings file"):
         read_settings_file(tmp_path)
 
 
@@ -219,3 +219,14 @@ def test_an_empty_file_states_nothing(tmp_path: Path) -> None:
     file = settings_file(tmp_path, "# nothing\n[reading]\n[drawings.'a.dxf']\n")
     assert file.statements == ()
     assert [table.statements for table in file.tables] == [()]
+
+
+def test_a_link_to_nothing_is_told_as_such(tmp_path: Path) -> None:
+    (tmp_path / "dxfcheck.toml").symlink_to("office-settings.toml")
+    with pytest.raises(SettingsInvalid, match="a link to nothing; check where it leads"):
+        read_settings_file(tmp_path / "dxfcheck.toml")
+
+
+def test_tables_of_a_project_file_are_told_where_they_belong(tmp_path: Path) -> None:
+    (problem,) = problems_of(tmp_path, "[tool.dxfcheck.reading]\nunits = 'mm'\n")
+    assert problem.endswith("tables stand at the top; write [reading] for [tool.dxfcheck.reading]")

@@ -29,8 +29,8 @@ def pin_velocities(model: Linkage) -> np.ndarray:
             row([(2 * number + 1, 1.0)])
     for joint in model.joints:
         if joint.kind == "slide":
-            (pin,) = model.links[joint.second].pins
-            row([(2 * pin + 1, 1.0)])
+            (foot,) = model.links[joint.second].pins
+            row([(2 * foot + 1, 1.0)])
     for number, link in enumerate(model.links[1:], start=1):
         if len(link.pins) < 2:
             continue

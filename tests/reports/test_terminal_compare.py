@@ -79,3 +79,12 @@ def test_a_subject_stands_before_the_verdict(tmp_path: Path) -> None:
     assert stream.getvalue().startswith("tipper.dxf: no change as a mechanism\n")
     assert "sheet: moved by (5, 0)" in stream.getvalue()
     assert "a qualified person signs" in " ".join(stream.getvalue().split())
+
+
+def test_rolling_contacts_that_moved_are_counted_as_joints(tmp_path: Path) -> None:
+    comparison = compared(tmp_path, TIPPER, LONGER)
+    (change,) = comparison.mechanisms
+    rolling = change.moved[0]._replace(is_pin=False)
+    both = dataclasses.replace(change, moved=(*change.moved, rolling, rolling))
+    text = verdict_words(dataclasses.replace(comparison, mechanisms=(both,)))
+    assert text.startswith("changed as a mechanism: 1 pin moved, 2 joints moved, 2 lengths")

@@ -191,3 +191,18 @@ def test_sketches_without_a_linkage_are_held_to_nothing_but_named_parts() -> Non
     settings = Settings(requirements=(read_limit("pin-speed", "C", "1 m/s"), read_limit("pin-speed", "*", "1 m/s")))
     found = judge_requirements((), settings, (), sketch().unit)
     assert [(each.requirement.subject, each.why) for each in found.unmatched] == [("C", "the drawing holds no linkage")]
+
+
+def test_what_is_off_for_a_pin_takes_its_limit_and_its_note_back() -> None:
+    everywhere, lifted = read_limit("pin-speed", "*", "1 mm/s"), read_limit("pin-speed", "C", "off")
+    verdicts = judged(everywhere, lifted, notes=("v_C <= 2 mm/s",)).verdicts
+    assert {(each.subject, each.outcome) for each in verdicts} == {("B", "broken"), ("C", "not judged")}
+
+
+def test_what_is_off_for_all_leaves_the_note() -> None:
+    verdict = one(read_limit("pin-speed", "*", "off"), notes=("v_C <= 2 mm/s",))
+    assert (verdict.subject, verdict.outcome, verdict.requirement.source) == ("C", "broken", "note")
+
+
+def test_what_is_off_for_a_part_that_is_not_there_is_nothing_to_tell() -> None:
+    assert judged(read_limit("pin-speed", "Z", "off")) == Judged()

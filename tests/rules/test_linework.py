@@ -2,6 +2,7 @@ from __future__ import annotations
 
 import cmath
 import math
+from itertools import pairwise
 
 import pytest
 
@@ -139,6 +140,13 @@ def test_pins_without_a_label_are_listed_with_their_names_and_places() -> None:
     assert (found.at, found.mechanism) == (D, "M1")
 
 
+def test_a_pin_of_several_mechanisms_is_one_pin() -> None:
+    mirrored = [-A.conjugate(), -B.conjugate(), -C.conjugate(), -D.conjugate()]
+    rings = [ring(at) for at in mirrored if at != A]
+    found = only("unlabelled-pins", *pins(), *rods(), *rings, *(rod(*pair) for pair in pairwise(mirrored)))
+    assert found.message.startswith("7 of 7 pins have no label")
+
+
 def test_an_end_past_a_weld_is_to_be_trimmed() -> None:
     along = (C - B) / abs(C - B)
     start = MIDDLE - 40j * along
@@ -207,9 +215,7 @@ def short_rods() -> list[Drawn]:
         pytest.param([*(ring(at) for at in (A, B, C, D)), text("n = 60 rpm", A + 9j)], Settings(), id="a drive note"),
     ],
 )
-def test_where_a_linkage_is_meant_every_rod_that_misses_is_told_of(
-    things: list[Drawn], settings: Settings
-) -> None:
+def test_where_a_linkage_is_meant_every_rod_that_misses_is_told_of(things: list[Drawn], settings: Settings) -> None:
     found = findings("near-miss", *things, *short_rods(), settings=settings)
     assert len(found) == 6
     assert all("stops 3 mm short of the rim" in each.message for each in found)

@@ -159,7 +159,7 @@ def _why_none(statement: DriveStatement, places: Sequence[Place], lookup: Lookup
         return f"no slide joins {link} and {statement.against}"
     if lookup.slides.of_link.get(place):
         return f"it does not tell which way {link} slides: name a block, or the two pins that it moves apart"
-    return f"{link} does not slide: a sliding speed cannot drive it"
+    return f"{link} does not slide, so it has no sliding speed"
 
 
 def _why_unnamed(statement: DriveStatement, name: str, lookup: Lookup) -> str:

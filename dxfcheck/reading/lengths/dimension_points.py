@@ -22,7 +22,7 @@ from dxfcheck.tolerances import (
     UNREAD_REACH_OF_DIAGONAL,
 )
 
-__all__ = ["OffPoint", "points_off_geometry"]
+__all__ = ["MOST_OFF", "OffPoint", "points_off_geometry"]
 
 _NO_LINEWORK = frozenset(
     {"ATTDEF", "DIMENSION", "LEADER", "MLEADER", "MTEXT", "MULTILEADER", "POINT", "TEXT", "VIEWPORT", "ARC_DIMENSION"}
@@ -39,7 +39,7 @@ class OffPoint(NamedTuple):
     """A point of a dimension on nothing: its distance from the nearest linework, and the nearest end or centre.
 
     ``near`` is True where that is so near that the point must once have sat there, ``held`` where another point of the
-    dimension sits where it should.
+    dimension sits where it should. ``unasked`` is how many dimensions behind it were not looked at, as so many are off.
     """
 
     dimension: Dimension
@@ -49,6 +49,7 @@ class OffPoint(NamedTuple):
     spot_distance: float
     near: bool
     held: bool
+    unasked: int = 0
 
 
 class _Asked(NamedTuple):
@@ -64,7 +65,7 @@ def points_off_geometry(sketch: Sketch, dimensions: Sequence[Dimension], toleran
     A point is silently right on an end, a centre, a line or rim as drawn; where two lines meet when they are drawn on;
     midway between two ends; for an angle on a leg drawn on; for a length or ordinate level with an end or centre, so
     that what is measured is right. Nothing is said near linework that was not read, nor of a point far from everything
-    where there is any such linework: how far that runs is not known.
+    where there is any such linework: how far that runs is not known. After MOST_OFF of them no more are looked for.
     """
     asked = [each for dimension in dimensions for each in _asked(sketch, dimension, tolerance)]
     sites = sites_of(sketch)
@@ -77,14 +78,18 @@ def points_off_geometry(sketch: Sketch, dimensions: Sequence[Dimension], toleran
     )
     settled = set(lines[0].tolist())
     off: defaultdict[int, list[_Asked]] = defaultdict(list)
+    left: Sequence[_Asked] = ()
     for number, each in enumerate(asked):
         if number not in settled and not _excused(each, sites, tolerance):
             off[id(each.dimension)].append(each)
             if len(off) >= MOST_OFF:
+                left = asked[number + 1 :]
                 break
     unread = _unread_places(sketch)
     found = (_off_point(each, sites, unread, sketch.diagonal) for each in off.values())
-    return [each for each in found if each is not None]
+    told = [each for each in found if each is not None]
+    unasked = len({id(each.dimension) for each in left} - off.keys())
+    return [*told[:-1], told[-1]._replace(unasked=unasked)] if told else []
 
 
 def _off_point(off: Sequence[_Asked], sites: Sites, unread: Sequence[Point | None], diagonal: float) -> OffPoint | None:

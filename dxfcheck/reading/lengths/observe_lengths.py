@@ -157,6 +157,7 @@ def _off_points(
             continue
         spot, point = (place(at, each.spot_distance) for at in (each.spot, each.point))
         nearest = f"the nearest end or centre is {size(each.spot_distance, sketch.unit)} off at {spot}"
+        unasked = f"; with so many off, {each.unasked} more dimensions were not looked at" if each.unasked else ""
         yield Observation(
             kind="dimension-off-geometry",
             at=each.point,
@@ -164,7 +165,7 @@ def _off_points(
             layer=each.dimension.source.layer,
             amount=each.distance,
             subject=each.dimension.kind,
-            detail=f"point {point} of the {each.dimension.kind} dimension sits on nothing: {nearest}",
+            detail=f"point {point} of the {each.dimension.kind} dimension sits on nothing: {nearest}{unasked}",
             severity=None if each.near else "note",
         )
 

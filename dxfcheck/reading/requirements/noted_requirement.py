@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator
+from functools import cache
 from typing import NamedTuple
 
 from dxfcheck.reading.drives.speed_units import LETTER, LINK, NUMBER, plain_text, single_spaced, spoken_name
@@ -43,16 +44,27 @@ def _pattern(head: str, value: str = VALUE) -> re.Pattern[str]:
     return re.compile(rf"{head}{_RELATION}{value}", re.IGNORECASE)
 
 
-_FORMS: tuple[tuple[str, re.Pattern[str]], ...] = (
-    ("ratio", _pattern(rf"{LETTER}{_SUBSCRIPT}{_OTHER}")),
-    ("ratio", _pattern(_INDEXED)),
-    ("words", _pattern(rf"{_KIND}{_OF}{_AGAINST}")),
-    ("letter", _pattern(rf"{LETTER}{_SUBSCRIPT}{_AGAINST}")),
-    ("bare", _pattern(r"(?<![\w.,=])")),
-)
-"""Ways of writing a requirement, the most telling first: each is looked for in what those before it left."""
+@cache
+def _forms() -> tuple[tuple[str, re.Pattern[str]], ...]:
+    """Ways of writing a requirement, the most telling first: each is looked for in what those before it left.
 
-_MEANT = _pattern(rf"{LETTER}{_SUBSCRIPT}{_AGAINST}", r"(?P<rest>\S.*)")
+    Compiled on first use: it takes as long as checking a small drawing, and few sheets have a text that needs it.
+    """
+    return (
+        ("ratio", _pattern(rf"{LETTER}{_SUBSCRIPT}{_OTHER}")),
+        ("ratio", _pattern(_INDEXED)),
+        ("words", _pattern(rf"{_KIND}{_OF}{_AGAINST}")),
+        ("letter", _pattern(rf"{LETTER}{_SUBSCRIPT}{_AGAINST}")),
+        ("bare", _pattern(r"(?<![\w.,=])")),
+    )
+
+
+@cache
+def _meant_form() -> re.Pattern[str]:
+    """What is meant as a limit but has no figure that can be understood."""
+    return _pattern(rf"{LETTER}{_SUBSCRIPT}{_AGAINST}", r"(?P<rest>\S.*)")
+
+
 _LONE_RATIO = re.compile(rf"\s*(?-i:i)\s*=\s*{NUMBER}(?:\s*:\s*{NUMBER})?\s*")
 _RUN_TOGETHER = re.compile(r"(?<!\w)([vnωΩ])(max|min)(?!\w)")
 _SUFFIX = re.compile(r"(.+?)(max|min)", re.IGNORECASE)
@@ -117,7 +129,7 @@ def _in_line(line: str, number: int) -> Iterator[NotedRequirement]:
         yield _mobility(mobility, line, number)
         return
     left, found = line, False
-    for form, pattern in _FORMS:
+    for form, pattern in _forms():
         for match in pattern.finditer(left):
             if not _is_bounded(match, form):
                 continue
@@ -207,7 +219,7 @@ def _doubt(
 
 def _meant(line: str, number: int) -> Iterator[NotedRequirement]:
     """A requirement that is meant but whose figure is none; 'w' may be a width."""
-    match = _MEANT.search(line)
+    match = _meant_form().search(line)
     if match is not None and match["letter"] not in "wW" and (_bounds(match) or "±" in match["rest"]):
         letter = match["letter"].lower()
         yield NotedRequirement(

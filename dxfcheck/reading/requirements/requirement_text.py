@@ -18,7 +18,10 @@ from dxfcheck.reading.requirements.stated_value import (
 )
 from dxfcheck.settings import Quantity, Requirement
 
-__all__ = ["NotedRequirement", "find_requirements", "read_expected_speed", "read_limit", "read_ratio"]
+__all__ = ["OFF", "NotedRequirement", "find_requirements", "read_expected_speed", "read_limit", "read_ratio"]
+
+OFF = "off"
+"""Stands in settings in place of a figure where none is to hold."""
 
 _TEXT = re.compile(rf"\s*(?P<bound>{BOUND})?\s*{VALUE}\s*", re.IGNORECASE)
 _AGAINST = re.compile(r"(?:^|\s+)against(?:\s+|$)", re.IGNORECASE)
@@ -41,8 +44,8 @@ _EXPECTED = "write for instance '0.35 m/s ± 2 %', '4.2 rad/s cw ± 1 %' or '4 r
 def read_limit(quantity: Quantity, subject: str, text: str, *, where: str = "") -> Requirement:
     """The limit on a speed of a pin, link or block, or of all whose names a pattern fits: '2 m/s', '300 rpm'.
 
-    A figure alone is the greatest size; '>= 0.1 m/s' and '0.1 to 0.3 m/s' state a least one. A subject may be
-    'A-B against B-C'. OptionInvalid says in one line what is wrong and what would be right.
+    A figure alone is the greatest size; '>= 0.1 m/s' and '0.1 to 0.3 m/s' state a least one; OFF lifts the limit. A
+    subject may be 'A-B against B-C'. OptionInvalid says in one line what is wrong and what would be right.
     """
     if quantity == "speed-ratio":
         return read_ratio(subject, text, where=where)
@@ -55,6 +58,8 @@ def read_limit(quantity: Quantity, subject: str, text: str, *, where: str = "") 
         name = name.removeprefix("pin ")
     if against and quantity in {"pin-speed", "rubbing-speed"}:
         _refuse(subject, f"a limit on the {quantity} names a pin only")
+    if text == OFF:
+        return Requirement(quantity=quantity, subject=name, against=against, stated=OFF, where=where)
     example = f"write {_LIKE[kind]}"
     value = _value(text, kind, example)
     if value.toleranced:

@@ -6,7 +6,7 @@ import math
 import pytest
 
 from dxfcheck.drawing.primitives import Dimension, Entity, Fate, Notice
-from dxfcheck.reading.lengths.dimension_points import OffPoint, points_off_geometry
+from dxfcheck.reading.lengths.dimension_points import MOST_OFF, OffPoint, points_off_geometry
 from tests.reading.lengths.dimensioned import dimensioned
 from tests.sketches import TOLERANCE, Drawn, arc, fill, line, path, ring, sketch
 
@@ -142,3 +142,12 @@ def test_a_sheet_of_dimensions_alone_has_nothing_to_hold_them_against() -> None:
     drawn = sketch(dimensioned("", 0j, 5 + 5j))
     dimensions = [each for each in drawn.primitives if isinstance(each, Dimension)]
     assert points_off_geometry(drawn, dimensions, TOLERANCE) == []
+
+
+@pytest.mark.parametrize(("count", "unasked"), [(MOST_OFF, 0), (MOST_OFF + 3, 3)])
+def test_how_many_were_not_looked_at_is_told_with_the_last(count: int, unasked: int) -> None:
+    astray = [dimensioned("", 0j, 100 + 62j + number) for number in range(count)]
+    drawn = sketch(*PLATE, *astray)
+    dimensions = [each for each in drawn.primitives if isinstance(each, Dimension)]
+    found = points_off_geometry(drawn, dimensions, TOLERANCE)
+    assert [each.unasked for each in found] == [0] * (MOST_OFF - 1) + [unasked]

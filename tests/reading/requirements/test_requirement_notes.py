@@ -85,7 +85,7 @@ def test_a_lone_f_is_a_mobility_only_beside_a_link() -> None:
         ("v_X <= 2 m/s", "no pin, slide or link is called 'X'"),
         ("n_XY <= 2 rpm", "no link is called 'XY'"),
         ("rubbing speed at X <= 1 m/s", "no pin is called 'X'"),
-        ("v_CD <= 2 m/s", "C-D of M1 does not slide"),
+        ("v_CD <= 2 m/s", "C-D of M1 does not slide, so it has no sliding speed"),
         ("v_C <= 2", "no speed with a unit"),
         ("mobility = one", "no whole number"),
         ("i = 2.5", "names no links"),
