@@ -21,7 +21,7 @@ from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.registry import run_rules
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.settings import Settings
-from dxfcheck.tolerances import BOUNDS_SHOWN_OF
+from dxfcheck.tolerances.findings import BOUNDS_SHOWN_OF
 
 __all__ = ["DrawingReport", "MechanismReport", "inspect_drawing"]
 

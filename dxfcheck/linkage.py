@@ -107,8 +107,8 @@ class Linkage:
     """One mechanism. ``frame`` is the index of the fixed link (0 in a grounded mechanism).
 
     In an assembly that no joint ties to the frame (``grounded`` False) the longest link is held for the count, and
-    no speeds are given. ``resolution`` is what each coordinate may be off by as drawn, in the drawing's unit: half a step
-    of typed decimals, gaps between what was meant to meet, a stated tolerance; 0.0 for exact places.
+    no speeds are given. ``resolution`` is what each coordinate may be off by as drawn, in the drawing's unit: half a
+    step of typed decimals, gaps between what was meant to meet, a stated tolerance; 0.0 for exact places.
     """
 
     name: str

@@ -10,13 +10,8 @@ from datetime import date
 from typing import Literal, NamedTuple
 
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import (
-    CONSTRUCTION_LAYERS,
-    DOUBTFUL_SPEED_RELATIVE,
-    FRAME_NAMES,
-    LOW_TRANSMISSION_DEGREES,
-    PITCH_LAYERS,
-)
+from dxfcheck.tolerances.findings import DOUBTFUL_SPEED_RELATIVE, LOW_TRANSMISSION_DEGREES
+from dxfcheck.tolerances.linework import CONSTRUCTION_LAYERS, FRAME_NAMES, PITCH_LAYERS
 
 __all__ = ["Acceptance", "Figure", "LayerRoles", "Quantity", "Requirement", "RuleWeight", "Settings"]
 

@@ -2,9 +2,17 @@
 
 from __future__ import annotations
 
+import cmath
+import dataclasses
+import math
+from pathlib import Path
+
+import pytest
+
 from dxfcheck.inspection import inspect_drawing
 from dxfcheck.rules.finding import Finding
 from dxfcheck.settings import Settings
+from fixtures.drafting import Habit, mechanisms_faults, write_plan
 from tests.test_fixtures import FIXTURES, counts, inspect, only
 
 
@@ -73,3 +81,16 @@ def test_gripper_at_its_limit_names_the_link_that_could_drive_it() -> None:
     outcomes = sorted(drive.outcome for drive in other.mechanisms[0].analysis.drives)
     assert outcomes == ["at limit", "taken"]
     assert all(link.determined for link in other.mechanisms[0].analysis.links)
+
+
+@pytest.mark.parametrize(("degrees", "doubtful"), [(0.3, True), (3.0, False)])
+def test_gripper_near_its_limit_has_doubtful_speeds(degrees: float, tmp_path: Path, *, doubtful: bool) -> None:
+    """Typed to two decimals, the rod EF a little off the point in which the lines of AB and CD meet; FG is driven."""
+    plan = mechanisms_faults.GRIPPER_AT_LIMIT
+    corner, end = plan.points["E"], plan.points["F"]
+    points = {**plan.points, "F": corner + (end - corner) * cmath.rect(1, math.radians(degrees))}
+    typed = {pin: complex(round(at.real, 2), round(at.imag, 2)) for pin, at in points.items()}
+    write_plan(tmp_path / "near.dxf", dataclasses.replace(plan, points=typed), Habit(radius=4))
+    report = inspect_drawing(str(tmp_path / "near.dxf"), Settings())
+    assert report.mechanisms[0].analysis.solved
+    assert {finding.rule for finding in report.findings} == ({"doubtful-speed"} if doubtful else set())

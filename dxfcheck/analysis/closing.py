@@ -15,7 +15,8 @@ from dxfcheck.analysis.closure import Chain, Hanging, Term
 from dxfcheck.analysis.solved_linkage import SolvedLinkage, acts_as
 from dxfcheck.geometry import Point, cross, dot
 from dxfcheck.linkage import Joint
-from dxfcheck.tolerances import FLAT_TRIANGLE, SHOWN_AS_ZERO, WORKING_UNKNOWNS
+from dxfcheck.tolerances.analysis import FLAT_TRIANGLE, WORKING_UNKNOWNS
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["Closing", "Equation", "StepForm", "Triangle", "Unknown", "close"]
 

@@ -24,16 +24,15 @@ from numpy.typing import NDArray
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Joint, JointKind, Linkage
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.analysis import (
     LINK_SIZE_FLOOR,
     RANK_GREATEST,
     RANK_NOISE,
     RANK_OF_STEP,
     RANK_RELATIVE,
     RANK_STEP,
-    TYPED_NOISE,
-    TYPED_STEPS,
 )
+from dxfcheck.tolerances.linework import TYPED_NOISE, TYPED_STEPS
 
 __all__ = [
     "CELLS",

@@ -25,7 +25,7 @@ from dxfcheck.analysis.results import DeadCentre
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology, topology_of
 from dxfcheck.geometry import Point, angle_between_lines
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import DEAD_CENTRE_RADIANS
+from dxfcheck.tolerances.analysis import DEAD_CENTRE_RADIANS
 
 __all__ = ["dead_centres"]
 

@@ -21,7 +21,7 @@ from dxfcheck.analysis.loops import places_of
 from dxfcheck.analysis.results import DependentJoints
 from dxfcheck.analysis.topology import Topology
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import DENSE_LINKS, RANK_GREATEST, RANK_NOISE, STRESS_OF_TOLERANCE
+from dxfcheck.tolerances.analysis import DENSE_LINKS, RANK_GREATEST, RANK_NOISE, STRESS_OF_TOLERANCE
 
 __all__ = ["dependent_joints"]
 

@@ -9,7 +9,7 @@ import numpy as np
 from dxfcheck.analysis.results import FreePart, IdleLink, SettlingDrive
 from dxfcheck.analysis.velocity import Matrix, Motion, rate_row
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.tolerances import DENSE_LINKS, DRIVES_FREELY, SETTLING_DRIVES
+from dxfcheck.tolerances.analysis import DENSE_LINKS, DRIVES_FREELY, SETTLING_DRIVES
 
 __all__ = ["settling_drives"]
 

@@ -42,7 +42,7 @@ from dxfcheck.analysis.constraints import (
 from dxfcheck.analysis.fronts import Front, fronts_of
 from dxfcheck.analysis.topology import Topology
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.analysis import (
     AT_REST_BESIDE,
     MOST_PUT_OFF,
     RANK_DOUBTFUL,

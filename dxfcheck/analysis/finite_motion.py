@@ -21,7 +21,7 @@ from dxfcheck.analysis.displacement import Displaced, can_be_displaced, displace
 from dxfcheck.analysis.results import FiniteMotion
 from dxfcheck.analysis.topology import Topology, topology_of
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.analysis import (
     FINITE_STEP_RADIANS,
     FINITE_STEP_TURNS,
     RANK_NOISE,

@@ -9,7 +9,7 @@ from dxfcheck.analysis.results import FreePart
 from dxfcheck.analysis.velocity import Motion
 from dxfcheck.geometry import cross, dot
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import DRIVES_FREELY, FREE_RELATIVE, NEARBY_JOINTS
+from dxfcheck.tolerances.analysis import DRIVES_FREELY, FREE_RELATIVE, NEARBY_JOINTS
 
 __all__ = ["free_parts"]
 

@@ -10,7 +10,7 @@ from dxfcheck.analysis.constraints import Body, Freedom, bodies_of, constraint_m
 from dxfcheck.analysis.elimination import freedom_by_fronts
 from dxfcheck.analysis.topology import Topology, topology_of
 from dxfcheck.linkage import Joint, Linkage
-from dxfcheck.tolerances import DENSE_LINKS
+from dxfcheck.tolerances.analysis import DENSE_LINKS
 
 __all__ = ["freedom_at_pose", "freedom_of_linkage", "part_of"]
 

@@ -12,7 +12,7 @@ from dxfcheck.analysis.constraints import CELLS, ROWS, Body
 from dxfcheck.analysis.results import IdleLink
 from dxfcheck.analysis.velocity import Motion, rate_row
 from dxfcheck.linkage import Joint, Linkage
-from dxfcheck.tolerances import IDLE_RELATIVE
+from dxfcheck.tolerances.analysis import IDLE_RELATIVE
 
 __all__ = ["idle_links"]
 

@@ -16,7 +16,8 @@ from typing import Literal
 from dxfcheck.analysis.solved_linkage import SolvedLinkage, acts_as
 from dxfcheck.geometry import Point, cross, unit
 from dxfcheck.linkage import Joint
-from dxfcheck.tolerances import POLE_LINES_CROSS, SHOWN_AS_ZERO
+from dxfcheck.tolerances.analysis import POLE_LINES_CROSS
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["PoleLine", "PoleWorking", "pole_workings"]
 

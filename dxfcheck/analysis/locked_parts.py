@@ -11,7 +11,7 @@ from dxfcheck.analysis.rigid_parts import rigid_parts
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.analysis.velocity import Motion
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import FREED_LINKS, STILL_JOINT
+from dxfcheck.tolerances.analysis import FREED_LINKS, STILL_JOINT
 
 __all__ = ["has_still_joint", "locked_parts"]
 

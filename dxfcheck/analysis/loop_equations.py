@@ -25,7 +25,7 @@ from dxfcheck.analysis.loops_in_order import Passage, rates_in_order
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Joint, Linkage
-from dxfcheck.tolerances import DENSE_LINKS
+from dxfcheck.tolerances.analysis import DENSE_LINKS
 
 __all__ = ["LoopSolution", "solve_loops"]
 

@@ -12,7 +12,7 @@ from typing import NamedTuple
 
 from dxfcheck.analysis.short_loops import short_cycles
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology
-from dxfcheck.tolerances import DENSE_LINKS
+from dxfcheck.tolerances.analysis import DENSE_LINKS
 
 __all__ = ["Loop", "Place", "independent_loops", "link_loops", "places_of"]
 

@@ -18,7 +18,7 @@ from numpy.typing import NDArray
 
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Joint, Linkage
-from dxfcheck.tolerances import LOOP_FIRM, LOOP_NOISE
+from dxfcheck.tolerances.analysis import LOOP_FIRM, LOOP_NOISE
 
 __all__ = ["JointRates", "Passage", "rates_in_order"]
 

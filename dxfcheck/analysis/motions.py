@@ -6,7 +6,7 @@ from dxfcheck.analysis.results import JointMotion, LinkMotion, PinMotion
 from dxfcheck.analysis.velocity import Motion
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Joint, Linkage, Pin
-from dxfcheck.tolerances import REST_RELATIVE, TRANSLATION_RELATIVE
+from dxfcheck.tolerances.analysis import REST_RELATIVE, TRANSLATION_RELATIVE
 
 __all__ = ["joint_motions", "link_motions", "pin_motions", "unknown_motions"]
 

@@ -14,7 +14,7 @@ from dxfcheck.analysis.topology import Topology
 from dxfcheck.analysis.transmission import transmissions
 from dxfcheck.analysis.velocity import Motion
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import DEAD_CENTRE_RADIANS, NEAR_DEAD_CENTRE_DEGREES, TRUST_OF_SIZE
+from dxfcheck.tolerances.analysis import DEAD_CENTRE_RADIANS, NEAR_DEAD_CENTRE_DEGREES, TRUST_OF_SIZE
 
 __all__ = ["Pose", "bounds_of", "finite_of", "pose_of"]
 

@@ -20,7 +20,7 @@ from dxfcheck.analysis.topology import Topology, topology_of
 from dxfcheck.analysis.vicinity import fastest_nearby
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import STILL_JOINT
+from dxfcheck.tolerances.analysis import STILL_JOINT
 
 __all__ = ["rigid_parts"]
 

@@ -12,6 +12,7 @@ the constraint matrix.
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
+from contextlib import suppress
 
 import numpy as np
 from numpy.typing import NDArray
@@ -22,7 +23,7 @@ from dxfcheck.analysis.topology import Topology
 from dxfcheck.analysis.velocity import Motion, rate_row
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Joint, Linkage, Pin
-from dxfcheck.tolerances import RANK_RELATIVE, TRUST_LINKS
+from dxfcheck.tolerances.analysis import RANK_RELATIVE, TRUST_LINKS
 
 __all__ = ["speed_bounds"]
 
@@ -43,12 +44,16 @@ def speed_bounds(linkage: Linkage, topology: Topology, motion: Motion, resolutio
     row = 0
     for joint, place in zip(linkage.joints, topology.joints, strict=True):
         row += _push(joint, place.acts_as, places, motion, pushed[row:])
-    if matrix.shape[0] == matrix.shape[1]:
-        solution = np.linalg.solve(matrix, -pushed)
-    else:  # some constraints are redundant: lengths that are special stay so
-        solution = np.linalg.lstsq(matrix, -pushed, rcond=RANK_RELATIVE)[0]
-    moved: Matrix = np.insert(np.asarray(solution, dtype=np.float64), [3 * linkage.frame] * 3, 0.0, axis=0)
+    moved = np.insert(_solved(matrix, -pushed), [3 * linkage.frame] * 3, 0.0, axis=0)
     return _bounds(linkage, places, motion, moved, resolution)
+
+
+def _solved(matrix: Matrix, pushed: Matrix) -> Matrix:
+    """Least squares where constraints are redundant (lengths that are special stay so), or the pose is singular."""
+    if matrix.shape[0] == matrix.shape[1]:
+        with suppress(np.linalg.LinAlgError):
+            return np.asarray(np.linalg.solve(matrix, pushed), dtype=np.float64)
+    return np.asarray(np.linalg.lstsq(matrix, pushed, rcond=RANK_RELATIVE)[0], dtype=np.float64)
 
 
 def _driven_rows(linkage: Linkage, motion: Motion) -> Iterator[Matrix]:

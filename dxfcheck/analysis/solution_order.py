@@ -19,7 +19,7 @@ from dxfcheck.analysis.constraints import CELLS, ROWS, Body, Matrix, bodies_of, 
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.analysis.velocity import rate_row
 from dxfcheck.linkage import JointKind, Linkage
-from dxfcheck.tolerances import DENSE_LINKS, RANK_RELATIVE
+from dxfcheck.tolerances.analysis import DENSE_LINKS, RANK_RELATIVE
 
 __all__ = ["SolutionStep", "StepKind", "solution_order"]
 

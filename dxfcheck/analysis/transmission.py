@@ -16,7 +16,7 @@ from functools import lru_cache
 from dxfcheck.analysis.results import Advantage, DeadCentre, JointMotion, LinkMotion, Transmission
 from dxfcheck.analysis.topology import TOPOLOGIES_KEPT, Topology, topology_of
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.tolerances import REST_RELATIVE
+from dxfcheck.tolerances.analysis import REST_RELATIVE
 
 __all__ = ["advantages", "transmissions"]
 

@@ -21,7 +21,7 @@ from dxfcheck.analysis.topology import Topology
 from dxfcheck.analysis.vicinity import links_near
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Drive, Linkage
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.analysis import (
     AT_LIMIT_OF_BEND,
     AT_LIMIT_RELATIVE,
     DENSE_LINKS,

@@ -12,7 +12,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from dxfcheck.analysis.topology import Topology
-from dxfcheck.tolerances import DENSE_LINKS, NEARBY_JOINTS
+from dxfcheck.tolerances.analysis import DENSE_LINKS, NEARBY_JOINTS
 
 __all__ = ["fastest_nearby", "links_near"]
 

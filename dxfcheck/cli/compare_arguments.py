@@ -7,7 +7,7 @@ import math
 from typing import NamedTuple
 
 from dxfcheck.errors import OptionInvalid
-from dxfcheck.tolerances import COMPARED_ALLOWANCE_PERCENT
+from dxfcheck.tolerances.findings import COMPARED_ALLOWANCE_PERCENT
 
 __all__ = ["COMPARE_STATUSES", "CompareRequest", "add_compare", "compare_request"]
 

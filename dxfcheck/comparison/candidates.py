@@ -10,7 +10,7 @@ from itertools import combinations, islice, pairwise
 from dxfcheck.comparison.landmarks import Landmark
 from dxfcheck.comparison.motion import UNMOVED, SheetMotion
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import COMPARED_CANDIDATES, COMPARED_SAMPLE
+from dxfcheck.tolerances.comparison import COMPARED_CANDIDATES, COMPARED_SAMPLE
 
 __all__ = ["candidates"]
 

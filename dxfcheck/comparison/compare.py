@@ -22,7 +22,8 @@ from dxfcheck.geometry import Point
 from dxfcheck.inspection import DrawingReport, MechanismReport
 from dxfcheck.linkage import Linkage
 from dxfcheck.rules.finding import Finding
-from dxfcheck.tolerances import COMPARED_ALLOWANCE_PERCENT, COMPARED_FINDING_OF_SIZE
+from dxfcheck.tolerances.comparison import COMPARED_FINDING_OF_SIZE
+from dxfcheck.tolerances.findings import COMPARED_ALLOWANCE_PERCENT
 
 __all__ = ["compare_reports"]
 

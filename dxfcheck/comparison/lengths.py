@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.inspection import DrawingReport
-from dxfcheck.tolerances import COMPARED_DIGITS, COMPARED_FLOAT, COMPARED_OF_SIZE
+from dxfcheck.tolerances.comparison import COMPARED_DIGITS, COMPARED_FLOAT, COMPARED_OF_SIZE
 
 __all__ = ["Lengths", "common_lengths"]
 

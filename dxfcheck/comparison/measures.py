@@ -13,7 +13,7 @@ from dxfcheck.comparison.pairing import Pairing
 from dxfcheck.comparison.result import FigureChange, PinMove
 from dxfcheck.geometry import angle_between_lines
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import COMPARED_TURN_RADIANS
+from dxfcheck.tolerances.comparison import COMPARED_TURN_RADIANS
 
 __all__ = ["length_changes", "moves", "radius_changes", "turned_directions"]
 

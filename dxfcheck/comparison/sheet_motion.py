@@ -13,7 +13,7 @@ from typing import NamedTuple
 from dxfcheck.comparison.candidates import candidates
 from dxfcheck.comparison.landmarks import Landmark, PlaceIndex
 from dxfcheck.comparison.motion import UNMOVED, SheetMotion
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.comparison import (
     COMPARED_ENOUGH,
     COMPARED_MORE,
     COMPARED_SAMPLE,

@@ -11,7 +11,8 @@ from dxfcheck.comparison.pairing import Pairing
 from dxfcheck.comparison.result import SpeedChange, SpeedQuantity
 from dxfcheck.inspection import MechanismReport
 from dxfcheck.linkage import Drive
-from dxfcheck.tolerances import COMPARED_NOISE, SHOWN_AS_ZERO
+from dxfcheck.tolerances.comparison import COMPARED_NOISE
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["Paired", "Speeds", "compare_speeds"]
 

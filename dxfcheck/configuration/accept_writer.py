@@ -11,7 +11,7 @@ from dxfcheck.configuration.accept_tables import read_accept_tables
 from dxfcheck.configuration.problems import Problems, quoted
 from dxfcheck.errors import OptionInvalid
 from dxfcheck.settings import Acceptance
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["OWN_TABLE", "PROJECT_TABLE", "Addition", "add_acceptances"]
 

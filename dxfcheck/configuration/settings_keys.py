@@ -4,14 +4,8 @@ from __future__ import annotations
 
 from typing import Literal, NamedTuple
 
-from dxfcheck.tolerances import (
-    COINCIDENCE_OF_DIAGONAL,
-    CONSTRUCTION_LAYERS,
-    DOUBTFUL_SPEED_RELATIVE,
-    FRAME_NAMES,
-    LOW_TRANSMISSION_DEGREES,
-    PITCH_LAYERS,
-)
+from dxfcheck.tolerances.findings import DOUBTFUL_SPEED_RELATIVE, LOW_TRANSMISSION_DEGREES
+from dxfcheck.tolerances.linework import COINCIDENCE_OF_DIAGONAL, CONSTRUCTION_LAYERS, FRAME_NAMES, PITCH_LAYERS
 
 __all__ = ["ACCEPT", "ACCEPT_KEYS", "ANY_NAME", "DRAWINGS", "KEYS", "SETTINGS", "AcceptKey", "Key", "Kind"]
 

@@ -16,7 +16,7 @@ from dxfcheck.drawing.placement import Placement, reference_placement
 from dxfcheck.drawing.primitives import BlockUse
 from dxfcheck.drawing.shapes import Given, require_numbers
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import EVEN_SCALE_RELATIVE
+from dxfcheck.tolerances.drawing import EVEN_SCALE_RELATIVE
 
 __all__ = ["Block", "Blocks", "Level", "array_offsets", "array_size", "placement_of", "scales_evenly"]
 

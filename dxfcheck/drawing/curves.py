@@ -15,7 +15,7 @@ from dxfcheck.drawing.placement import SHEET, Placement
 from dxfcheck.drawing.primitives import Arc, Fate, Path, Ring, Segment, Source
 from dxfcheck.drawing.shapes import NotRead
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.drawing import (
     ELLIPSE_IS_RING_RELATIVE,
     FLATTENING_OF_RADIUS,
     FULL_TURN_SLACK,

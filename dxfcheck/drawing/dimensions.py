@@ -17,7 +17,7 @@ from dxfcheck.drawing.placement import Placement
 from dxfcheck.drawing.primitives import Dimension, DimensionStyle, Fate, Source
 from dxfcheck.drawing.shapes import LIBRARY_FAULTS, Given, NotRead, Shapes, require_numbers
 from dxfcheck.drawing.text import decode_paragraphs, unstack
-from dxfcheck.tolerances import TILT_RADIANS
+from dxfcheck.tolerances.drawing import TILT_RADIANS
 
 __all__ = ["read_dimension"]
 

@@ -29,7 +29,7 @@ from dxfcheck.drawing.shapes import (
     require_numbers,
 )
 from dxfcheck.drawing.text import read_attribute, read_mtext, read_text
-from dxfcheck.tolerances import BLOCK_DEPTH_LIMIT, BLOCK_ENTITY_LIMIT, NESTED_DEEP
+from dxfcheck.tolerances.drawing import BLOCK_DEPTH_LIMIT, BLOCK_ENTITY_LIMIT, NESTED_DEEP
 
 __all__ = ["Extraction", "Heights", "extract"]
 

@@ -10,7 +10,7 @@ from ezdxf.entities.layer import Layer
 from dxfcheck.drawing.cleaning import clean
 from dxfcheck.drawing.fates import LAYER_FROZEN, LAYER_OFF
 from dxfcheck.drawing.primitives import Fate
-from dxfcheck.tolerances import NEVER_PLOTTED
+from dxfcheck.tolerances.drawing import NEVER_PLOTTED
 
 __all__ = ["CONTINUOUS", "LayerState", "LayerStates"]
 

@@ -14,7 +14,7 @@ from dxfcheck.drawing.placement import Placement
 from dxfcheck.drawing.primitives import Fate, Fill, Source
 from dxfcheck.drawing.shapes import Given, NotRead, Shapes, require_numbers
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import FLATTENING_OF_RADIUS
+from dxfcheck.tolerances.drawing import FLATTENING_OF_RADIUS
 
 __all__ = ["read_hatch", "read_solid"]
 

@@ -15,7 +15,7 @@ import math
 from typing import NamedTuple
 
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import EVEN_SCALE_RELATIVE
+from dxfcheck.tolerances.drawing import EVEN_SCALE_RELATIVE
 
 __all__ = ["FLIPPED", "SHEET", "Placement", "reference_placement"]
 

@@ -13,7 +13,7 @@ from dxfcheck.drawing.extract import Extraction, Heights
 from dxfcheck.drawing.fates import OFF_PLANE
 from dxfcheck.drawing.primitives import Arc, Entity, Fill, Notice, Path, Primitive, Ring, Segment
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import FAR_OF_DIAGONAL, SHAPE_OF_DIAGONAL
+from dxfcheck.tolerances.drawing import FAR_OF_DIAGONAL, SHAPE_OF_DIAGONAL
 
 __all__ = ["Extent", "distance_notice", "extent_of", "flatten"]
 

@@ -13,7 +13,7 @@ from ezdxf.lldxf.const import DXFError
 from dxfcheck.drawing.fates import OFF_PLANE
 from dxfcheck.drawing.placement import Placement
 from dxfcheck.drawing.primitives import Fate, Primitive, Source
-from dxfcheck.tolerances import COORDINATE_LIMIT, TILT_RADIANS
+from dxfcheck.tolerances.drawing import COORDINATE_LIMIT, TILT_RADIANS
 
 __all__ = [
     "LIBRARY_FAULTS",

@@ -21,7 +21,7 @@ from dxfcheck.drawing.placement import Placement
 from dxfcheck.drawing.primitives import Fate, Source, Text
 from dxfcheck.drawing.shapes import Given, NotRead, Shapes, faces_away, require_numbers
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import TEXT_LINE_OF_HEIGHT, TEXT_WIDTH_OF_HEIGHT
+from dxfcheck.tolerances.drawing import TEXT_LINE_OF_HEIGHT, TEXT_WIDTH_OF_HEIGHT
 
 __all__ = ["decode_line", "decode_paragraphs", "read_attribute", "read_mtext", "read_text", "unstack"]
 

@@ -8,7 +8,7 @@ from collections.abc import Iterator, Sequence
 from dxfcheck.comparison.motion import SheetMotion
 from dxfcheck.comparison.result import Comparison
 from dxfcheck.reports.terminal_layout import count_of, figure, place
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["motion_words", "verdict_words"]
 

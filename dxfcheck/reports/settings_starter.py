@@ -22,7 +22,7 @@ from dxfcheck.reading.drives.drive_text import find_statements, parse_drive
 from dxfcheck.reports.terminal_layout import count_of, fold
 from dxfcheck.rules.finding import SEVERITIES, Finding
 from dxfcheck.settings import LayerRoles
-from dxfcheck.tolerances import SAME_RATE_RELATIVE
+from dxfcheck.tolerances.findings import SAME_RATE_RELATIVE
 
 __all__ = ["starter_text"]
 

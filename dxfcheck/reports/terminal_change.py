@@ -20,7 +20,7 @@ from dxfcheck.reports.terminal_layout import (
     place,
     table,
 )
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["change_lines"]
 

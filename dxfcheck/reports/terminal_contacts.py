@@ -14,7 +14,7 @@ from dxfcheck.analysis.results import Analysis, JointMotion
 from dxfcheck.geometry import Point, cross, dot
 from dxfcheck.linkage import Joint, JointKind, Linkage
 from dxfcheck.reports.terminal_layout import UNKNOWN, count_of, figure, place
-from dxfcheck.tolerances import ON_AXIS_OF_REACH, SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import ON_AXIS_OF_REACH, SHOWN_AS_ZERO
 
 __all__ = ["contact_sentences", "joint_counts", "sliding_words", "towards"]
 

@@ -14,7 +14,7 @@ from dxfcheck.analysis.results import Analysis, LinkMotion
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Joint, JointKind, Linkage
 from dxfcheck.reports.terminal_layout import NOT_APPLICABLE, UNKNOWN, Column, figure_column
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["joint_columns", "link_columns", "pin_columns", "turns_a_minute"]
 

@@ -8,7 +8,7 @@ from collections.abc import Iterator
 from dxfcheck.analysis.results import Advantage, Analysis, FiniteMotion, SpeedBounds
 from dxfcheck.linkage import Linkage
 from dxfcheck.reports.terminal_layout import figure, listed
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["finite_words", "push_sentences", "trust_words"]
 

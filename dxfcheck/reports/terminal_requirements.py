@@ -8,7 +8,7 @@ from collections.abc import Iterator, Sequence
 from dxfcheck.reports.terminal_layout import figure, listed
 from dxfcheck.reports.terminal_motion import turns_a_minute
 from dxfcheck.requirements.verdict import Outcome, Verdict
-from dxfcheck.tolerances import PLACES_NAMED
+from dxfcheck.tolerances.sheet import PLACES_NAMED
 
 __all__ = ["requirement_facts", "requirements_line"]
 

@@ -15,7 +15,7 @@ from dxfcheck.reports.terminal_layout import NOT_APPLICABLE, Column, Line, figur
 from dxfcheck.reports.terminal_working_equations import equation_lines
 from dxfcheck.reports.terminal_working_poles import pole_sentences
 from dxfcheck.reports.terminal_working_terms import Names, names_of, rotation
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["working_lines"]
 

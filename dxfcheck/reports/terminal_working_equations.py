@@ -11,7 +11,7 @@ from dxfcheck.analysis.working import StepWorking
 from dxfcheck.geometry import Point
 from dxfcheck.reports.terminal_layout import Column, Line, count_of, figure, fold, table
 from dxfcheck.reports.terminal_working_terms import Names, rotation
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["equation_lines"]
 

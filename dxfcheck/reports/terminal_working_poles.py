@@ -8,7 +8,7 @@ from dxfcheck.analysis.kennedy import PoleLine, PoleWorking
 from dxfcheck.analysis.solved_linkage import acts_as
 from dxfcheck.reports.terminal_layout import figure
 from dxfcheck.reports.terminal_working_terms import Names
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["pole_sentences"]
 

@@ -15,7 +15,7 @@ from dxfcheck.analysis.solved_linkage import SolvedLinkage
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Joint, Linkage
 from dxfcheck.reports.terminal_layout import figure
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["Names", "names_of", "rotation"]
 

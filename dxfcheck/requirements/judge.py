@@ -12,7 +12,7 @@ from dxfcheck.linkage import Linkage
 from dxfcheck.requirements.subjects import Parts, Subject, is_pattern
 from dxfcheck.requirements.verdict import Bounds, Judged, Outcome, Unmatched, Verdict
 from dxfcheck.settings import Figure, Requirement, Settings
-from dxfcheck.tolerances import LIMIT_RELATIVE, SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import LIMIT_RELATIVE, SHOWN_AS_ZERO
 
 __all__ = ["judge_requirements"]
 

@@ -14,7 +14,7 @@ from dxfcheck.reading.drives.drive_names import Place
 from dxfcheck.reading.drives.drive_targets import Lookup, make_lookup
 from dxfcheck.reading.texts.labels import natural_key
 from dxfcheck.settings import Quantity, Requirement
-from dxfcheck.tolerances import SHOWN_AS_ZERO
+from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
 __all__ = ["Parts", "Subject", "is_pattern"]
 

@@ -13,7 +13,7 @@ from dxfcheck.rules.registry import in_order, rule
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import length, place
 from dxfcheck.settings import Acceptance
-from dxfcheck.tolerances import ACCEPTED_WITHIN_OF_DIAGONAL
+from dxfcheck.tolerances.findings import ACCEPTED_WITHIN_OF_DIAGONAL
 
 __all__ = ["STALE", "accept_findings", "acceptance_reach", "stale_findings", "with_acceptances"]
 

@@ -16,7 +16,8 @@ from dxfcheck.rules.registry import rule
 from dxfcheck.rules.settings_and_sources import CONSTRUCTION
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import place, plural
-from dxfcheck.tolerances import NEVER_PLOTTED, RIM_OF_RADIUS
+from dxfcheck.tolerances.drawing import NEVER_PLOTTED
+from dxfcheck.tolerances.linework import RIM_OF_RADIUS
 
 __all__: list[str] = []
 

@@ -11,7 +11,7 @@ from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.limit_wording import beyond, figure_of, runs, stated_where
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import listed
-from dxfcheck.tolerances import PLACES_NAMED
+from dxfcheck.tolerances.sheet import PLACES_NAMED
 
 __all__ = ["limit_findings"]
 

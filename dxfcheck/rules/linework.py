@@ -13,7 +13,8 @@ from dxfcheck.rules.registry import rule
 from dxfcheck.rules.settings_and_sources import SYMBOLS, TOLERANCE
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import length, listed, place, plural
-from dxfcheck.tolerances import DOUBLES_TOLD, PLACES_NAMED
+from dxfcheck.tolerances.findings import DOUBLES_TOLD
+from dxfcheck.tolerances.sheet import PLACES_NAMED
 
 __all__: list[str] = []
 

@@ -8,7 +8,8 @@ from dxfcheck.drawing.primitives import Entity, Notice
 from dxfcheck.geometry import Point
 from dxfcheck.rules.finding import Finding, Severity
 from dxfcheck.rules.subject import RuleSubject
-from dxfcheck.tolerances import AMONG_LINKS_OF_DIAGONAL, PLACES_NAMED
+from dxfcheck.tolerances.findings import AMONG_LINKS_OF_DIAGONAL
+from dxfcheck.tolerances.sheet import PLACES_NAMED
 
 __all__ = ["about_entities", "about_notices", "among_links", "boxes", "linkage_handles", "noticed"]
 

@@ -12,7 +12,7 @@ from dxfcheck.reading.reading import Observation
 from dxfcheck.rules.finding import Finding, Severity
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import length
-from dxfcheck.tolerances import SNAP_OF_COINCIDENCE
+from dxfcheck.tolerances.findings import SNAP_OF_COINCIDENCE
 
 __all__ = ["at_pin", "figured", "finding", "moved", "observed", "of_linkages", "snap_place"]
 

@@ -15,7 +15,7 @@ from dxfcheck.rules.observed import finding, observed
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.settings_and_sources import DRIVES, UNITS
 from dxfcheck.rules.subject import RuleSubject
-from dxfcheck.tolerances import DEAD_CENTRE_RADIANS
+from dxfcheck.tolerances.analysis import DEAD_CENTRE_RADIANS
 
 __all__: list[str] = []
 

@@ -15,12 +15,8 @@ from dxfcheck.rules.finding import Finding
 from dxfcheck.rules.registry import rule
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import length
-from dxfcheck.tolerances import (
-    DOUBTFUL_SPEED_RELATIVE,
-    LOW_TRANSMISSION_DEGREES,
-    NEAR_DEAD_CENTRE_DEGREES,
-    SPEED_OF_FASTEST,
-)
+from dxfcheck.tolerances.analysis import NEAR_DEAD_CENTRE_DEGREES
+from dxfcheck.tolerances.findings import DOUBTFUL_SPEED_RELATIVE, LOW_TRANSMISSION_DEGREES, SPEED_OF_FASTEST
 
 __all__: list[str] = []
 

@@ -15,7 +15,7 @@ from dxfcheck.rules.registry import rule
 from dxfcheck.rules.settings_and_sources import CONSTRUCTION, FRAME, MOBILITY, SYMBOLS, TOLERANCE
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import plural
-from dxfcheck.tolerances import RANK_DOUBTFUL
+from dxfcheck.tolerances.analysis import RANK_DOUBTFUL
 
 __all__: list[str] = []
 

@@ -20,7 +20,7 @@ from dxfcheck.rules.registry import rule
 from dxfcheck.rules.settings_and_sources import DRIVES, FRAME, MOBILITY, TOLERANCE
 from dxfcheck.rules.subject import RuleSubject
 from dxfcheck.rules.wording import listed, plural
-from dxfcheck.tolerances import RIGID_TRIANGLE
+from dxfcheck.tolerances.findings import RIGID_TRIANGLE
 
 __all__: list[str] = []
 

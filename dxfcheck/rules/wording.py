@@ -7,7 +7,7 @@ from collections.abc import Sequence
 
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import PLACE_DIGITS, PLACE_LEAST_DECIMALS, PLACE_MOST_DECIMALS, PLACES_NAMED
+from dxfcheck.tolerances.sheet import PLACE_DIGITS, PLACE_LEAST_DECIMALS, PLACE_MOST_DECIMALS, PLACES_NAMED
 
 __all__ = ["length", "listed", "place", "plural"]
 

@@ -17,7 +17,7 @@ from dxfcheck.analysis.constraints import (
 from dxfcheck.analysis.elimination import freedom_by_fronts, split_rows, split_with_care
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import RANK_DOUBTFUL
+from dxfcheck.tolerances.analysis import RANK_DOUBTFUL
 from tests.analysis.lattices import four_bar_chain, large_linkage, scissor_lattice
 from tests.analysis.random_models import random_model, stacked_floors
 

@@ -99,13 +99,3 @@ def test_pin_that_joins_the_part_to_an_outside_link_first() -> None:
     model = linkage({**SQUARE, "P": -50 - 50j}, pins)
     assert model.links[1].name == "crank"
     assert [names(model, part) for part in parts_of(model).others] == [{"ab", "ac", "ad", "bc", "bd", "cd"}]
-
-
-def test_every_pin_of_the_part_begins_with_an_outside_link() -> None:
-    outer = {f"{pin}0": f"ground crank{pin}" for pin in SQUARE}
-    bars = {"A": "ab ac ad", "B": "ab bc bd", "C": "bc ac cd", "D": "ad bd cd"}
-    pins = {**outer, **{pin: f"crank{pin} {links}" for pin, links in bars.items()}}
-    feet = {f"{pin}0": at + 37 * 1j**number * (1 + 0.2j) for number, (pin, at) in enumerate(SQUARE.items())}
-    model = linkage({**SQUARE, **feet}, dict(list(pins.items())))
-    locked = freedom_of_linkage(model).motions
-    assert len(locked) == 0 or [names(model, part) for part in parts_of(model).others]

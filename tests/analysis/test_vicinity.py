@@ -6,7 +6,7 @@ import numpy as np
 
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.analysis.vicinity import fastest_nearby, links_near
-from dxfcheck.tolerances import DENSE_LINKS, NEARBY_JOINTS
+from dxfcheck.tolerances.analysis import DENSE_LINKS, NEARBY_JOINTS
 from tests.analysis.lattices import scissor_lattice
 
 

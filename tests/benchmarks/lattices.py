@@ -31,7 +31,7 @@ from dxfcheck.analysis.constraints import CELLS, ROWS, bodies_of, constraint_mat
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.collector import collector_paused
 from dxfcheck.linkage import Linkage
-from dxfcheck.tolerances import RANK_RELATIVE
+from dxfcheck.tolerances.analysis import RANK_RELATIVE
 from tests.analysis.lattices import ARM, LEAN, error_of, scissor_lattice
 from tests.benchmarks.ratios import TIPPER, draw_four_bars, plain_four_bar
 from tests.model import linkage

@@ -9,7 +9,7 @@ import pytest
 from ezdxf.document import Drawing
 
 from dxfcheck.drawing.primitives import Fate, Path, Ring, Segment, Sketch
-from dxfcheck.tolerances import BLOCK_DEPTH_LIMIT
+from dxfcheck.tolerances.drawing import BLOCK_DEPTH_LIMIT
 
 Sketcher = Callable[..., Sketch]
 

@@ -5,7 +5,7 @@ import pytest
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.reading.requirements.requirement_text import read_expected_speed, read_limit, read_ratio
 from dxfcheck.settings import Requirement, Settings
-from dxfcheck.tolerances import PLACES_NAMED
+from dxfcheck.tolerances.sheet import PLACES_NAMED
 from tests.rules.subjects import findings, only
 from tests.sketches import B, C, Drawn, path, ring, rod, text, tipper
 

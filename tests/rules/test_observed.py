@@ -52,7 +52,9 @@ def test_every_kind_that_a_rule_looks_for_is_observed() -> None:
         node.args[1].value
         for path in sorted((PACKAGE / "rules").rglob("*.py"))
         for node in ast.walk(ast.parse(path.read_text(encoding="utf-8")))
-        if isinstance(node, ast.Call) and isinstance(node.func, ast.Name) and node.func.id in {"observed", "of_linkages"}
+        if isinstance(node, ast.Call)
+        and isinstance(node.func, ast.Name)
+        and node.func.id in {"observed", "of_linkages"}
         if isinstance(node.args[1], ast.Constant)
     }
     assert "block-without-guide" in looked_for

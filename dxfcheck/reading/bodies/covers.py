@@ -16,7 +16,7 @@ from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.pins import Disc
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.shapes.outlines import pins_inside
-from dxfcheck.tolerances import CORNER_OF_LINE
+from dxfcheck.tolerances.linework import CORNER_OF_LINE
 
 __all__ = ["corner_pins", "corner_welds", "cover_bodies"]
 

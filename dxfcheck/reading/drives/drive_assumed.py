@@ -8,7 +8,7 @@ from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.reading.drives.drive_names import Place
 from dxfcheck.reading.drives.drive_slides import slide_target
 from dxfcheck.reading.texts.labels import natural_key
-from dxfcheck.tolerances import ASSUMED_TIE
+from dxfcheck.tolerances.sheet import ASSUMED_TIE
 
 __all__ = ["Reasoned", "assume_drive"]
 

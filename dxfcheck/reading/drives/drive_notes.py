@@ -11,7 +11,7 @@ from dxfcheck.drawing.primitives import Text
 from dxfcheck.geometry import Point
 from dxfcheck.reading.drives.drive_names import Place, Target
 from dxfcheck.reading.texts.text_places import texts_near
-from dxfcheck.tolerances import NAMED_NOTE_REACH_IN_HEIGHTS, NOTE_CLEARLY_NEARER
+from dxfcheck.tolerances.sheet import NAMED_NOTE_REACH_IN_HEIGHTS, NOTE_CLEARLY_NEARER
 
 __all__ = ["Near", "Shapes", "clearly_nearest", "near_links", "nearest_of"]
 

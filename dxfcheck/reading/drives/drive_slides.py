@@ -12,7 +12,7 @@ from itertools import product
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Joint, Linkage
 from dxfcheck.reading.drives.drive_names import Homes, Names, Place, Target, pairs_of, pins_of
-from dxfcheck.tolerances import TELESCOPE_ACROSS
+from dxfcheck.tolerances.sheet import TELESCOPE_ACROSS
 
 __all__ = ["Slides", "index_slides", "slide_target"]
 

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 import re
 from typing import NamedTuple
 
@@ -22,6 +21,7 @@ from dxfcheck.reading.drives.speed_units import (
     spoken_name,
     unit_of,
 )
+from dxfcheck.tolerances.drawing import COORDINATE_LIMIT
 
 __all__ = ["DriveStatement", "find_statements", "parse_drive"]
 
@@ -147,8 +147,8 @@ def _doubt(letter: str, kind: str, written: str, sense: str, rate: float) -> str
         return f"a sliding speed has no sense '{sense}'"
     if letter and (letter == "v") != (kind == "slide"):
         return f"'{letter}' does not go with that unit"
-    if not math.isfinite(rate):
-        return "the speed is not a finite number"
+    if not abs(rate) <= COORDINATE_LIMIT:
+        return "the speed is beyond any that can be meant"
     if may_be_thousands(written):
         return f"{written!r} can be read as a decimal or in thousands"
     return None

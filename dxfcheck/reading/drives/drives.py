@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from collections import defaultdict
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, replace
@@ -17,7 +16,8 @@ from dxfcheck.reading.drives.drive_targets import Lookup, aim_of, make_lookup
 from dxfcheck.reading.drives.drive_text import DriveStatement, find_statements, parse_drive
 from dxfcheck.reading.reading import Evidence, Observation
 from dxfcheck.settings import Settings
-from dxfcheck.tolerances import NOTE_REACH_IN_HEIGHTS
+from dxfcheck.tolerances.drawing import COORDINATE_LIMIT
+from dxfcheck.tolerances.sheet import NOTE_REACH_IN_HEIGHTS
 
 __all__ = ["Driven", "Shapes", "drive_linkages"]
 
@@ -151,7 +151,7 @@ def _rate(said: _Said, unit: LengthUnit, mechanism: str) -> tuple[float | None, 
         assumed = f"the drawing has no length unit: it is taken as {statement.written:.6g} of its units a second"
         return statement.written, [said.observed("drive-unit-assumed", assumed, mechanism)]
     rate = statement.written * (statement.metres / unit.metres)
-    if not math.isfinite(rate):
+    if not abs(rate) <= COORDINATE_LIMIT:
         return None, [said.observed("unknown-drive", f"the speed is beyond all figures in {unit.name}/s")]
     return rate, []
 

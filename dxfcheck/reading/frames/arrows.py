@@ -15,7 +15,7 @@ from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.sheet import Sheet
-from dxfcheck.tolerances import ARROW_BARB_DEGREES, ARROW_BARB_OF_SHAFT, ARROW_HEAD_DEGREES
+from dxfcheck.tolerances.shapes import ARROW_BARB_DEGREES, ARROW_BARB_OF_SHAFT, ARROW_HEAD_DEGREES
 
 __all__ = ["find_arrows"]
 

@@ -16,7 +16,7 @@ from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.pins import PinSites
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.tolerance import Tolerance
-from dxfcheck.tolerances import CROSS_ANGLE_DEGREES, CROSS_OVERHANG_IN_RADII, SHORT_OF_COINCIDENCE
+from dxfcheck.tolerances.shapes import CROSS_ANGLE_DEGREES, CROSS_OVERHANG_IN_RADII, SHORT_OF_COINCIDENCE
 
 __all__ = ["find_marks"]
 

@@ -17,7 +17,8 @@ from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touch
-from dxfcheck.tolerances import STROKE_ANGLES_DEGREES, STROKE_OF_BASE, STROKE_PARALLEL_DEGREES, STROKE_SHORT_OF_BASE
+from dxfcheck.tolerances.linework import STROKE_PARALLEL_DEGREES
+from dxfcheck.tolerances.shapes import STROKE_ANGLES_DEGREES, STROKE_OF_BASE, STROKE_SHORT_OF_BASE
 
 __all__ = ["accept_bases", "loose_strokes", "strokes_on_bases"]
 

@@ -13,7 +13,7 @@ from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.shapes.contact import Oddity
-from dxfcheck.tolerances import WELD_ARC_DEGREES, WELD_ARC_OF_LINE, WELD_ARC_OFF_CENTRE
+from dxfcheck.tolerances.shapes import WELD_ARC_DEGREES, WELD_ARC_OF_LINE, WELD_ARC_OFF_CENTRE
 
 __all__ = ["weld_marks", "welds_on_rings"]
 

@@ -17,7 +17,7 @@ from dxfcheck.reading.gears.wheel_owners import find_owners
 from dxfcheck.reading.gears.wheels import Mesh, choose_meshes, find_meshes, place_wheels, rim_touches
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.shapes.contact import Contact, Oddity
-from dxfcheck.tolerances import TANGENT_OF_RADIUS
+from dxfcheck.tolerances.shapes import TANGENT_OF_RADIUS
 
 __all__ = ["Gearing", "find_gearing", "strands_at_wheels"]
 

@@ -13,7 +13,7 @@ from dxfcheck.reading.gears.tracks import Track
 from dxfcheck.reading.gears.wheels import Mesh, Wheel
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.shapes.contact import Contact, Oddity, directed
-from dxfcheck.tolerances import ROLLING_OF_RADIUS, TANGENT_OF_RADIUS
+from dxfcheck.tolerances.shapes import ROLLING_OF_RADIUS, TANGENT_OF_RADIUS
 
 __all__ = ["Rolling", "too_far"]
 

@@ -13,7 +13,7 @@ from dxfcheck.reading.gears.wheels import Wheel
 from dxfcheck.reading.lines.racks import find_tangents
 from dxfcheck.reading.lines.roles import frame_reason
 from dxfcheck.reading.lines.sheet import Sheet
-from dxfcheck.tolerances import RACK_PARALLEL_DEGREES
+from dxfcheck.tolerances.shapes import RACK_PARALLEL_DEGREES
 
 __all__ = ["Track", "find_tracks", "held_by_frame"]
 

@@ -22,7 +22,8 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.shapes.contact import Oddity
-from dxfcheck.tolerances import NEAR_TANGENT_OF_RADIUS, RIM_OF_RADIUS, ROLLING_OF_RADIUS, TANGENT_OF_RADIUS
+from dxfcheck.tolerances.linework import RIM_OF_RADIUS
+from dxfcheck.tolerances.shapes import NEAR_TANGENT_OF_RADIUS, ROLLING_OF_RADIUS, TANGENT_OF_RADIUS
 
 __all__ = ["Mesh", "Wheel", "choose_meshes", "find_meshes", "place_wheels", "rim_touches"]
 

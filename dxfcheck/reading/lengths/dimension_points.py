@@ -14,7 +14,7 @@ from dxfcheck.geometry import Point
 from dxfcheck.reading.lengths.sites import Sites, sites_of
 from dxfcheck.reading.lines.nearness import ComplexArray, FloatArray, near_pairs
 from dxfcheck.reading.lines.tolerance import Tolerance
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.sheet import (
     DIMENSION_LEVEL,
     DIMENSION_MISS_OF_SIZE,
     DIMENSION_ON_OF_SIZE,

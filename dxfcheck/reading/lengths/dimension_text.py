@@ -22,7 +22,7 @@ from dxfcheck.reading.lengths.figures import (
     read_figure,
     read_numbers,
 )
-from dxfcheck.tolerances import LIMITS_ALIKE, MOST_REPEATS
+from dxfcheck.tolerances.sheet import LIMITS_ALIKE, MOST_REPEATS
 
 __all__ = ["is_not_to_scale", "stated_figures"]
 

@@ -7,7 +7,7 @@ import unicodedata
 from collections.abc import Iterator
 from typing import Literal, NamedTuple
 
-from dxfcheck.tolerances import FRACTION_STEP
+from dxfcheck.tolerances.sheet import FRACTION_STEP
 
 __all__ = ["FRACTION", "NUMBER", "UNIT", "Figure", "Meaning", "plain_text", "read_figure", "read_numbers", "unit_named"]
 

@@ -15,7 +15,7 @@ from dxfcheck.reading.lengths.figures import FRACTION, NUMBER, UNIT, Figure, pla
 from dxfcheck.reading.lengths.mix_ups import Mismatch
 from dxfcheck.reading.lengths.overrides import agrees, unit_factor
 from dxfcheck.reading.lines.tolerance import Tolerance
-from dxfcheck.tolerances import NOTE_CLEARLY_NEARER
+from dxfcheck.tolerances.sheet import NOTE_CLEARLY_NEARER
 
 __all__ = ["LengthNote", "judge_length_notes"]
 

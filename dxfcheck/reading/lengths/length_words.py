@@ -7,7 +7,7 @@ import math
 from dxfcheck.drawing.primitives import LengthUnit
 from dxfcheck.geometry import Point
 from dxfcheck.reading.lengths.mix_ups import Mismatch, factor_named
-from dxfcheck.tolerances import PLACE_LEAST_DECIMALS
+from dxfcheck.tolerances.sheet import PLACE_LEAST_DECIMALS
 
 __all__ = ["difference", "place", "scale_named", "size"]
 

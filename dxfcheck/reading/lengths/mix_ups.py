@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from typing import NamedTuple
 
 from dxfcheck.geometry import Point
-from dxfcheck.tolerances import MIX_UP_DIGITS
+from dxfcheck.tolerances.sheet import MIX_UP_DIGITS
 
 __all__ = ["INCH_IN_MILLIMETRES", "Mismatch", "factor_between", "factor_named", "shared_factor"]
 

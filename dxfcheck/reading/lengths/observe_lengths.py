@@ -17,7 +17,7 @@ from dxfcheck.reading.lengths.unit_signs import UNIT_WORDS, UnitSign, signs_of_s
 from dxfcheck.reading.lines.sorting import Sorted
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.reading import Observation
-from dxfcheck.tolerances import PLACES_NAMED
+from dxfcheck.tolerances.sheet import PLACES_NAMED
 
 __all__ = ["observe_lengths"]
 

@@ -10,7 +10,7 @@ from dxfcheck.drawing.units import LENGTH_UNITS
 from dxfcheck.reading.lengths.dimension_text import is_not_to_scale, stated_figures
 from dxfcheck.reading.lengths.figures import Figure
 from dxfcheck.reading.lengths.mix_ups import Mismatch
-from dxfcheck.tolerances import STATED_NOISE
+from dxfcheck.tolerances.sheet import STATED_NOISE
 
 __all__ = ["Override", "agrees", "judge_overrides", "unit_factor"]
 

@@ -10,7 +10,7 @@ import numpy as np
 from dxfcheck.drawing.primitives import Arc, Fill, Path, Ring, Segment, Sketch
 from dxfcheck.geometry import Point
 from dxfcheck.reading.lines.nearness import ComplexArray, FloatArray, pair_distances
-from dxfcheck.tolerances import RIM_OF_RADIUS
+from dxfcheck.tolerances.linework import RIM_OF_RADIUS
 
 __all__ = ["Sites", "sites_of"]
 

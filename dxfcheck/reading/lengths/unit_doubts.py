@@ -12,7 +12,7 @@ from dxfcheck.linkage import Linkage
 from dxfcheck.reading.lengths.mix_ups import INCH_IN_MILLIMETRES
 from dxfcheck.reading.lengths.unit_signs import UnitSign
 from dxfcheck.reading.reading import Observation
-from dxfcheck.tolerances import LINK_GREATEST_METRES, LINK_LEAST_METRES, LINK_USUAL_METRES, UNIT_LIKENESS
+from dxfcheck.tolerances.sheet import LINK_GREATEST_METRES, LINK_LEAST_METRES, LINK_USUAL_METRES, UNIT_LIKENESS
 
 __all__ = ["doubt_units"]
 

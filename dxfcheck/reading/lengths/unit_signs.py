@@ -11,7 +11,7 @@ from dxfcheck.drawing.units import LENGTH_UNITS
 from dxfcheck.geometry import Point
 from dxfcheck.reading.lengths.figures import unit_named
 from dxfcheck.reading.lengths.mix_ups import INCH_IN_MILLIMETRES
-from dxfcheck.tolerances import UNIT_LIKENESS
+from dxfcheck.tolerances.sheet import UNIT_LIKENESS
 
 __all__ = ["UNIT_WORDS", "UnitSign", "named_like", "signs_of_styles", "signs_of_texts", "unit_shown"]
 

@@ -16,7 +16,7 @@ from dxfcheck.reading.lines.linework import Linework, Strand
 from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
-from dxfcheck.tolerances import RIM_GAP_IN_DIAMETERS, TANGENT_ANGLE_DEGREES
+from dxfcheck.tolerances.linework import RIM_GAP_IN_DIAMETERS, TANGENT_ANGLE_DEGREES
 
 __all__ = ["How", "Landing", "Landings", "Miss", "find_landings"]
 

@@ -18,7 +18,7 @@ import numpy as np
 from dxfcheck.drawing.primitives import Arc, Path, Segment
 from dxfcheck.geometry import Point, distance_to_segment
 from dxfcheck.reading.lines.nearness import ComplexArray, IntArray
-from dxfcheck.tolerances import CHORD_ANGLE_DEGREES
+from dxfcheck.tolerances.linework import CHORD_ANGLE_DEGREES
 
 __all__ = [
     "Linework",

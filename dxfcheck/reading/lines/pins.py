@@ -18,7 +18,12 @@ from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
 from dxfcheck.reading.lines.unions import Unions
 from dxfcheck.settings import LayerRoles
-from dxfcheck.tolerances import DISC_OFFSET_OF_RADIUS, ROUND_LOOP_LIKENESS, ROUND_LOOP_PIECES, STACKED_OF_RADIUS
+from dxfcheck.tolerances.linework import (
+    DISC_OFFSET_OF_RADIUS,
+    ROUND_LOOP_LIKENESS,
+    ROUND_LOOP_PIECES,
+    STACKED_OF_RADIUS,
+)
 
 __all__ = ["Disc", "PinSite", "PinSites", "find_pins", "rings_of_arcs", "rings_of_lines"]
 

@@ -16,7 +16,7 @@ import numpy as np
 from dxfcheck.drawing.primitives import Ring, Segment
 from dxfcheck.geometry import Point
 from dxfcheck.reading.lines.nearness import ComplexArray, near_pairs
-from dxfcheck.tolerances import RIM_OF_RADIUS
+from dxfcheck.tolerances.linework import RIM_OF_RADIUS
 
 __all__ = ["Tangent", "find_tangents", "pitch_lines"]
 

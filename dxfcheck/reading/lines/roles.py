@@ -8,11 +8,7 @@ from functools import cache
 
 from dxfcheck.drawing.primitives import Source
 from dxfcheck.settings import LayerRoles
-from dxfcheck.tolerances import (
-    CHAIN_LINETYPES,
-    CONSTRUCTION_LINETYPES,
-    NO_LABEL_LAYERS,
-)
+from dxfcheck.tolerances.linework import CHAIN_LINETYPES, CONSTRUCTION_LINETYPES, NO_LABEL_LAYERS
 
 __all__ = ["BUILT_IN_ROLES", "construction_reason", "frame_reason", "is_label_layer", "is_pitch"]
 

@@ -8,12 +8,12 @@ from typing import NamedTuple
 
 from dxfcheck.drawing.primitives import Ring
 from dxfcheck.settings import Settings
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.drawing import SHAPE_OF_DIAGONAL
+from dxfcheck.tolerances.linework import (
     ARC_REACH_IN_SHAPES,
     COINCIDENCE_OF_DIAGONAL,
     GAP_OF_SIZE,
     RIM_OF_RADIUS,
-    SHAPE_OF_DIAGONAL,
     SHAPE_OF_SIZE,
     STRAY_DIAGONALS,
     WELD_GAP_OF_DIAGONAL,

@@ -21,7 +21,7 @@ from dxfcheck.drawing.primitives import Arc
 from dxfcheck.reading.lines.linework import Linework, distance_to_piece
 from dxfcheck.reading.lines.nearness import ComplexArray, FloatArray, IntArray, near_pairs, pair_distances
 from dxfcheck.reading.lines.tolerance import Tolerance
-from dxfcheck.tolerances import CHORD_ANGLE_DEGREES
+from dxfcheck.tolerances.linework import CHORD_ANGLE_DEGREES
 
 __all__ = ["Touch", "Touches", "find_touches"]
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 
 from dxfcheck.reading.lines.nearness import ComplexArray, FloatArray
-from dxfcheck.tolerances import TYPED_NOISE, TYPED_STEPS
+from dxfcheck.tolerances.linework import TYPED_NOISE, TYPED_STEPS
 
 __all__ = ["typed_step"]
 

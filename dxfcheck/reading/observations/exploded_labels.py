@@ -14,7 +14,7 @@ from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.mechanisms.model import Model
 from dxfcheck.reading.parts.parts import Parts
 from dxfcheck.reading.reading import Observation
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.sheet import (
     EXPLODED_LABELS,
     EXPLODED_LETTER_IN_DIAMETERS,
     EXPLODED_STROKES,

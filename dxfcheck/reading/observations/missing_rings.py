@@ -14,13 +14,8 @@ from dxfcheck.reading.observations.seen import Seen, about_strand
 from dxfcheck.reading.reading import Observation
 from dxfcheck.reading.texts.labels import PinNames
 from dxfcheck.reading.texts.text_places import texts_near
-from dxfcheck.tolerances import (
-    LABEL_LENGTH,
-    LABEL_REACH_IN_DIAMETERS,
-    LABEL_REACH_IN_HEIGHTS,
-    LABELLED_PINS,
-    RIGHT_ANGLE_DEGREES,
-)
+from dxfcheck.tolerances.linework import RIGHT_ANGLE_DEGREES
+from dxfcheck.tolerances.sheet import LABEL_LENGTH, LABEL_REACH_IN_DIAMETERS, LABEL_REACH_IN_HEIGHTS, LABELLED_PINS
 
 __all__ = ["observe_missing_rings"]
 

@@ -15,7 +15,7 @@ from dxfcheck.reading.lines.touches import Touch
 from dxfcheck.reading.observations.seen import Seen, about_strand, pin_name
 from dxfcheck.reading.observations.snapping import place_on_line, place_on_pin
 from dxfcheck.reading.reading import Observation
-from dxfcheck.tolerances import GUIDE_TURN_DEGREES, RIM_GAP_IN_DIAMETERS
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES, RIM_GAP_IN_DIAMETERS
 
 __all__ = ["observe_ends"]
 

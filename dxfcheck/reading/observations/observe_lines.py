@@ -10,7 +10,7 @@ from dxfcheck.reading.lines.landing import Landing
 from dxfcheck.reading.observations.seen import Seen, about_strand, pin_name
 from dxfcheck.reading.observations.snapping import foot_on_strand, place_on_pin
 from dxfcheck.reading.reading import Observation
-from dxfcheck.tolerances import LINE_OFF_CENTRE_OF_RADIUS
+from dxfcheck.tolerances.sheet import LINE_OFF_CENTRE_OF_RADIUS
 
 __all__ = ["observe_lines"]
 

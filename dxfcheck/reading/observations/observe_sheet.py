@@ -17,7 +17,7 @@ from dxfcheck.reading.observations.set_aside import clipped_strokes, cut_outs
 from dxfcheck.reading.observations.unread_shapes import shapes_shown
 from dxfcheck.reading.parts.parts import Parts
 from dxfcheck.reading.reading import Observation
-from dxfcheck.tolerances import EMPTY_PIN_LIKENESS, PLACES_NAMED
+from dxfcheck.tolerances.sheet import EMPTY_PIN_LIKENESS, PLACES_NAMED
 
 __all__ = ["observe_sheet"]
 

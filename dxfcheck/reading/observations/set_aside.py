@@ -14,7 +14,8 @@ from dxfcheck.reading.lines.linework import Strand, arc_middle
 from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.parts.parts import Parts
-from dxfcheck.tolerances import CLIPPED_STROKE_REACH, STROKE_PARALLEL_DEGREES
+from dxfcheck.tolerances.linework import STROKE_PARALLEL_DEGREES
+from dxfcheck.tolerances.sheet import CLIPPED_STROKE_REACH
 
 __all__ = ["clipped_strokes", "cut_outs"]
 

@@ -6,7 +6,7 @@ from dxfcheck.drawing.primitives import Arc, Segment
 from dxfcheck.geometry import Point, cross, parameter_on_line, unit
 from dxfcheck.reading.lines.linework import Strand, distance_to_piece
 from dxfcheck.reading.observations.seen import Seen
-from dxfcheck.tolerances import SNAP_REACH_IN_GAPS
+from dxfcheck.tolerances.sheet import SNAP_REACH_IN_GAPS
 
 __all__ = ["foot_on_strand", "place_on_line", "place_on_pin"]
 

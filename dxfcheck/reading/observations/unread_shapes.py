@@ -16,7 +16,8 @@ from dxfcheck.reading.shapes.rectangles import find_rectangles
 from dxfcheck.reading.slides.boxes import boxes_of
 from dxfcheck.reading.slides.guides import choose_guide
 from dxfcheck.reading.slides.rails import rails_of
-from dxfcheck.tolerances import RIM_OF_RADIUS, UNREAD_SHAPES_LIMIT
+from dxfcheck.tolerances.linework import RIM_OF_RADIUS
+from dxfcheck.tolerances.sheet import UNREAD_SHAPES_LIMIT
 
 __all__ = ["shapes_shown"]
 

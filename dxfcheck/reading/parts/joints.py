@@ -24,7 +24,7 @@ from dxfcheck.reading.slides.empty_guides import empty_guides
 from dxfcheck.reading.slides.slide_contacts import slide_contacts
 from dxfcheck.reading.slides.slide_oddities import slide_oddities
 from dxfcheck.reading.slides.slides import Slides
-from dxfcheck.tolerances import GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES
 
 __all__ = ["Joints", "find_joints"]
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from typing import NamedTuple
 
-from dxfcheck.tolerances import LONE_FORCE_MOBILITY
+from dxfcheck.tolerances.sheet import LONE_FORCE_MOBILITY
 
 __all__ = ["MobilityText", "find_mobility"]
 

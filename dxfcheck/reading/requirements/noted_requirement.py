@@ -17,7 +17,7 @@ from dxfcheck.reading.requirements.stated_value import (
     value_of,
 )
 from dxfcheck.settings import Figure, Quantity
-from dxfcheck.tolerances import LABEL_LENGTH
+from dxfcheck.tolerances.sheet import LABEL_LENGTH
 
 __all__ = ["NotedRequirement", "find_requirements", "without_requirements"]
 

@@ -20,7 +20,7 @@ from dxfcheck.reading.requirements.noted_requirement import (
     without_requirements,
 )
 from dxfcheck.settings import Quantity, Requirement
-from dxfcheck.tolerances import NOTE_CLEARLY_NEARER, NOTE_REACH_IN_HEIGHTS
+from dxfcheck.tolerances.sheet import NOTE_CLEARLY_NEARER, NOTE_REACH_IN_HEIGHTS
 
 __all__ = ["Required", "read_requirement_notes"]
 

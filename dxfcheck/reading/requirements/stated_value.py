@@ -17,7 +17,7 @@ from dxfcheck.reading.drives.speed_units import (
     unit_of,
 )
 from dxfcheck.settings import Figure
-from dxfcheck.tolerances import EXPECTED_RELATIVE
+from dxfcheck.tolerances.sheet import EXPECTED_RELATIVE
 
 __all__ = ["BOUND", "VALUE", "StatedValue", "ValueKind", "ValueUnclear", "value_of"]
 

@@ -16,7 +16,7 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.shapes.contours import Contour
 from dxfcheck.reading.shapes.obrounds import Channel
-from dxfcheck.tolerances import BAR_LENGTH_OF_WIDTH
+from dxfcheck.tolerances.linework import BAR_LENGTH_OF_WIDTH
 
 __all__ = ["Axis", "beside_axis", "is_on_axis", "long_axis"]
 

@@ -25,7 +25,7 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
 from dxfcheck.reading.shapes.outlines import inside_outline
-from dxfcheck.tolerances import CHORD_ANGLE_DEGREES, SHAPE_OF_SIZE, SMOOTH_JOINT_DEGREES
+from dxfcheck.tolerances.linework import CHORD_ANGLE_DEGREES, SHAPE_OF_SIZE, SMOOTH_JOINT_DEGREES
 
 __all__ = ["Contour", "find_contours"]
 

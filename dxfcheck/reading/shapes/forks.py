@@ -26,7 +26,7 @@ from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
 from dxfcheck.reading.shapes.obrounds import Obround
 from dxfcheck.reading.shapes.slots import Slot
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.linework import (
     FORK_CLEARANCE_OF_RADIUS,
     FORK_LIKENESS,
     FORK_PAST_RADII,

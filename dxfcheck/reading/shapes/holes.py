@@ -30,7 +30,7 @@ from dxfcheck.reading.shapes.contact import Oddity
 from dxfcheck.reading.shapes.contours import Contour
 from dxfcheck.reading.shapes.obrounds import Channel
 from dxfcheck.reading.shapes.slots import Bar, Slot
-from dxfcheck.tolerances import SMOOTH_JOINT_DEGREES
+from dxfcheck.tolerances.linework import SMOOTH_JOINT_DEGREES
 
 __all__ = ["OutlineLinks", "cut_slots", "find_outline_links", "owner_of_cut"]
 

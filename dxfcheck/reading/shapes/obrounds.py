@@ -15,7 +15,7 @@ from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
-from dxfcheck.tolerances import RIGHT_ANGLE_DEGREES, RIM_OF_RADIUS
+from dxfcheck.tolerances.linework import RIGHT_ANGLE_DEGREES, RIM_OF_RADIUS
 
 __all__ = ["Channel", "CurvedSlot", "Obround", "find_curved_slots", "find_obrounds"]
 

@@ -18,7 +18,7 @@ from dxfcheck.reading.lines.nearness import ComplexArray, near_pairs
 from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.lines.touches import Touches
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.linework import (
     MOST_SLENDER_BLOCK,
     RIGHT_ANGLE_DEGREES,
     RIM_OF_RADIUS,

@@ -26,7 +26,7 @@ from dxfcheck.reading.shapes.contact import Oddity
 from dxfcheck.reading.shapes.contours import Contour
 from dxfcheck.reading.shapes.obrounds import Channel
 from dxfcheck.reading.shapes.rectangles import Rectangle
-from dxfcheck.tolerances import (
+from dxfcheck.tolerances.linework import (
     BLOCK_IN_SLOT_RADII,
     HOLE_OF_BAR,
     RIGHT_ANGLE_DEGREES,

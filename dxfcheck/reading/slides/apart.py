@@ -11,7 +11,7 @@ from dxfcheck.reading.slides.boxes import Anchor, Box
 from dxfcheck.reading.slides.guides import ENDS_INSIDE, Guide
 from dxfcheck.reading.slides.rails import Rail
 from dxfcheck.reading.slides.slide import Slide
-from dxfcheck.tolerances import GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES
 
 __all__ = ["beside_the_guide", "inside", "never_weld"]
 

@@ -19,7 +19,7 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.shapes.rectangles import Rectangle
-from dxfcheck.tolerances import RIM_OF_RADIUS
+from dxfcheck.tolerances.linework import RIM_OF_RADIUS
 
 __all__ = ["Anchor", "Box", "Hatched", "anchors_of", "boxes_of", "hatched_boxes"]
 

@@ -13,7 +13,7 @@ from dxfcheck.reading.lines.nearness import near_pairs, pair_distances
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.shapes.contact import Contact, Oddity
 from dxfcheck.reading.shapes.obrounds import Channel
-from dxfcheck.tolerances import EMPTY_GUIDE_IN_DIAMETERS
+from dxfcheck.tolerances.shapes import EMPTY_GUIDE_IN_DIAMETERS
 
 __all__ = ["empty_guides"]
 

@@ -7,7 +7,7 @@ from typing import NamedTuple
 
 from dxfcheck.reading.slides.boxes import Box
 from dxfcheck.reading.slides.rails import Rail
-from dxfcheck.tolerances import GUIDE_LEVEL_OF_WIDTH
+from dxfcheck.tolerances.shapes import GUIDE_LEVEL_OF_WIDTH
 
 __all__ = ["ENDS_INSIDE", "STROKES", "Guide", "Rivals", "choose_guide"]
 

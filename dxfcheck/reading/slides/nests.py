@@ -11,7 +11,8 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.slides.boxes import Box
 from dxfcheck.reading.slides.guides import choose_guide
 from dxfcheck.reading.slides.rails import Rail
-from dxfcheck.tolerances import BUSH_GAPS_ALIKE, CENTRE_MARK_OF_BLOCK, GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.shapes import BUSH_GAPS_ALIKE, CENTRE_MARK_OF_BLOCK
 
 __all__ = ["with_their_own"]
 

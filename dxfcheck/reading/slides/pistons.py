@@ -12,7 +12,8 @@ from dxfcheck.geometry import angle_between_lines
 from dxfcheck.reading.lines.linework import Strand
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.slides.boxes import Box
-from dxfcheck.tolerances import GUIDE_TURN_DEGREES, PISTON_BORES, PISTON_OF_BORE, RIM_OF_RADIUS
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES, RIM_OF_RADIUS
+from dxfcheck.tolerances.shapes import PISTON_BORES, PISTON_OF_BORE
 
 __all__ = ["pistons_of"]
 

@@ -22,7 +22,8 @@ from dxfcheck.reading.lines.linework import Linework, Strand
 from dxfcheck.reading.lines.nearness import near_pairs
 from dxfcheck.reading.lines.touches import Touches
 from dxfcheck.reading.slides.boxes import Box
-from dxfcheck.tolerances import GUIDE_BESIDE_OF_WIDTH, GUIDE_GAP_OF_BLOCK, GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.shapes import GUIDE_BESIDE_OF_WIDTH, GUIDE_GAP_OF_BLOCK
 
 __all__ = ["Rail", "RailHow", "rails_of"]
 

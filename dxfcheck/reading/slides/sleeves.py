@@ -12,13 +12,8 @@ from dxfcheck.geometry import cross, dot
 from dxfcheck.reading.lines.nearness import near_pairs, pair_distances
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.slides.boxes import Box
-from dxfcheck.tolerances import (
-    GUIDE_TURN_DEGREES,
-    RIM_OF_RADIUS,
-    SLEEVE_LIKENESS,
-    SLEEVE_STROKES,
-    SLEEVE_WIDTH_OF_LENGTH,
-)
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES, RIM_OF_RADIUS
+from dxfcheck.tolerances.shapes import SLEEVE_LIKENESS, SLEEVE_STROKES, SLEEVE_WIDTH_OF_LENGTH
 
 __all__ = ["lines_beside_rods", "sleeves_of", "sleeves_of_bars"]
 

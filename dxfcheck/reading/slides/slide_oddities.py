@@ -14,7 +14,8 @@ from dxfcheck.reading.shapes.contact import Contact, Oddity
 from dxfcheck.reading.slides.boxes import Box
 from dxfcheck.reading.slides.slide import Slide
 from dxfcheck.reading.slides.slides import Slides
-from dxfcheck.tolerances import GUIDE_BESIDE_OF_WIDTH, GUIDE_LOOKED_FOR_IN_BLOCKS, GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.linework import GUIDE_TURN_DEGREES
+from dxfcheck.tolerances.shapes import GUIDE_BESIDE_OF_WIDTH, GUIDE_LOOKED_FOR_IN_BLOCKS
 
 __all__ = ["slide_oddities"]
 

@@ -25,7 +25,7 @@ from dxfcheck.reading.slides.pistons import pistons_of
 from dxfcheck.reading.slides.rails import Rail, rails_of
 from dxfcheck.reading.slides.sleeves import sleeves_of, sleeves_of_bars
 from dxfcheck.reading.slides.slide import Slide
-from dxfcheck.tolerances import GUIDE_LEVEL_OF_WIDTH
+from dxfcheck.tolerances.shapes import GUIDE_LEVEL_OF_WIDTH
 
 __all__ = ["Slide", "Slides", "anchors_of", "find_slides"]
 

@@ -14,7 +14,7 @@ from dxfcheck.reading.lines.pins import PinSite
 from dxfcheck.reading.lines.roles import is_label_layer
 from dxfcheck.reading.lines.tolerance import Tolerance
 from dxfcheck.reading.texts.text_places import texts_near
-from dxfcheck.tolerances import LABEL_LENGTH, LABEL_REACH_IN_DIAMETERS, LABEL_REACH_IN_HEIGHTS
+from dxfcheck.tolerances.sheet import LABEL_LENGTH, LABEL_REACH_IN_DIAMETERS, LABEL_REACH_IN_HEIGHTS
 
 __all__ = ["PinNames", "name_pins", "natural_key"]
 

@@ -6,7 +6,7 @@ import math
 import pytest
 
 from dxfcheck.reading.bodies.body import Body
-from dxfcheck.tolerances import COINCIDENCE_OF_DIAGONAL
+from dxfcheck.tolerances.linework import COINCIDENCE_OF_DIAGONAL
 from tests.sketches import (
     A,
     B,

@@ -6,7 +6,7 @@ import math
 import pytest
 
 from dxfcheck.reading.shapes.contact import Oddity
-from dxfcheck.tolerances import RIM_OF_RADIUS
+from dxfcheck.tolerances.linework import RIM_OF_RADIUS
 from tests.reading.gears.trains import fixed_pin, geared, pin, pitch, told
 from tests.sketches import Drawn, line
 

@@ -10,7 +10,7 @@ from dxfcheck.reading.lines.sorting import sort_primitives
 from dxfcheck.reading.lines.tolerance import tolerance_for
 from dxfcheck.reading.observations.unread_shapes import shapes_shown
 from dxfcheck.settings import Settings
-from dxfcheck.tolerances import UNREAD_SHAPES_LIMIT
+from dxfcheck.tolerances.sheet import UNREAD_SHAPES_LIMIT
 from tests.reading.slides.sliders import loose_rectangle
 from tests.sketches import Drawn, arc, line, obround, observed, rectangle, ring, sketch, tipper
 
