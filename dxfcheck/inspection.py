@@ -60,10 +60,13 @@ class DrawingReport:
     rules_off: tuple[str, ...] = ()
 
 
-def inspect_drawing(path: str, settings: Settings, *, with_evidence: bool = True) -> DrawingReport:
+def inspect_drawing(
+    path: str, settings: Settings, *, with_evidence: bool = True, with_bounds: bool = True
+) -> DrawingReport:
     """Read, analyse and check one drawing; one that cannot be read gives a report of status 'unreadable'.
 
-    ``with_evidence`` False leaves out how each thing was read, which only the reading's own report shows.
+    ``with_evidence`` False leaves out how each thing was read, which only the reading's own report shows;
+    ``with_bounds`` False what speeds may be off by, unless the drawing is so coarse that a finding may come of it.
     OptionInvalid where an option or setting cannot be used. Cost near-linear in the entities of the drawing.
     """
     with collector_paused():
@@ -71,17 +74,17 @@ def inspect_drawing(path: str, settings: Settings, *, with_evidence: bool = True
             sketch = load_sketch(path, settings)
         except DrawingUnreadable as fault:
             return DrawingReport(path=fault.path, status="unreadable", error=f"{fault.reason}; {fault.remedy}")
-        return _inspect(sketch, settings, with_evidence=with_evidence)
+        return _inspect(sketch, settings, with_evidence=with_evidence, with_bounds=with_bounds)
 
 
-def _inspect(sketch: Sketch, settings: Settings, *, with_evidence: bool) -> DrawingReport:
+def _inspect(sketch: Sketch, settings: Settings, *, with_evidence: bool, with_bounds: bool) -> DrawingReport:
     # Loaded on use: they bring in numpy, and a process that only prints what others found must not wait for that.
     from dxfcheck.reading.read import read_linkages  # noqa: PLC0415
     from dxfcheck.requirements.judge import judge_requirements  # noqa: PLC0415
 
     reading = read_linkages(sketch, settings, with_evidence=with_evidence)
-    few = len(reading.linkages) <= BOUNDS_SHOWN_OF
-    mechanisms = tuple((linkage, analyse(linkage, bounds_shown=few)) for linkage in reading.linkages)
+    shown = with_bounds and len(reading.linkages) <= BOUNDS_SHOWN_OF
+    mechanisms = tuple((linkage, analyse(linkage, bounds_shown=shown)) for linkage in reading.linkages)
     judged = judge_requirements(mechanisms, settings, reading.requirements, sketch.unit)
     subject = RuleSubject(sketch=sketch, reading=reading, mechanisms=mechanisms, settings=settings, judged=judged)
     return DrawingReport(

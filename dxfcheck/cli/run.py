@@ -34,7 +34,13 @@ def run_drawings(request: Request) -> int:
     outcomes: list[Outcome] = []
     terminal = None if request.json == STANDARD_OUTPUT else TerminalReport(sys.stdout)
     try:
-        work = inspect_all(targets, request.settings, request.jobs, with_evidence=request.command == "read")
+        work = inspect_all(
+            targets,
+            request.settings,
+            request.jobs,
+            with_evidence=request.command == "read",
+            with_bounds=not request.quiet or request.json is not None,
+        )
         for outcome in _with_progress(work, len(targets), request):
             outcomes.append(outcome)
             _tell_of_trouble(outcome)

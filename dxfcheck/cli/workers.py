@@ -22,19 +22,26 @@ WORTH_A_POOL = 2_000_000
 
 
 def inspect_all(
-    targets: Sequence[Target], settings: Settings, jobs: int | None, *, with_evidence: bool = False
+    targets: Sequence[Target],
+    settings: Settings,
+    jobs: int | None,
+    *,
+    with_evidence: bool = False,
+    with_bounds: bool = True,
 ) -> Iterator[Outcome]:
     """One outcome for each target, in order; OptionInvalid where a setting turns out unusable.
 
-    ``with_evidence`` keeps how each thing was read, which takes a little longer and only `read` shows.
+    ``with_evidence`` keeps how each thing was read, which takes a little longer and only `read` shows, ``with_bounds``
+    what speeds may be off by, which --quiet does not show.
     """
+    inspect = partial(inspect_one, settings, with_evidence=with_evidence, with_bounds=with_bounds)
     workers = min(jobs or _sensible_jobs(targets), len(targets))
     if workers <= 1:
-        return _in_turn(targets, partial(inspect_one, settings, with_evidence=with_evidence))
+        return _in_turn(targets, inspect)
     # Loaded on use: what starts processes takes longer to load than a small drawing to check.
     from dxfcheck.cli.pool import inspect_side_by_side  # noqa: PLC0415
 
-    return inspect_side_by_side(targets, partial(inspect_one, settings, with_evidence=with_evidence), workers)
+    return inspect_side_by_side(targets, inspect, workers)
 
 
 def _in_turn(targets: Sequence[Target], inspect: Callable[[Target], Outcome]) -> Iterator[Outcome]:
@@ -68,7 +75,7 @@ def size_of(target: Target) -> int:
         return 0
 
 
-def inspect_one(settings: Settings, target: Target, *, with_evidence: bool) -> Outcome:
+def inspect_one(settings: Settings, target: Target, *, with_evidence: bool, with_bounds: bool = True) -> Outcome:
     """One drawing; whatever goes wrong with it is its own outcome, so that the others are still checked.
 
     ``settings`` hold where the target has none of its own.
@@ -79,7 +86,9 @@ def inspect_one(settings: Settings, target: Target, *, with_evidence: bool) -> O
     from dxfcheck.inspection import inspect_drawing  # noqa: PLC0415
 
     try:
-        return Outcome(inspect_drawing(target.path, target.settings or settings, with_evidence=with_evidence))
+        chosen = target.settings or settings
+        report = inspect_drawing(target.path, chosen, with_evidence=with_evidence, with_bounds=with_bounds)
+        return Outcome(report)
     except DrawingUnreadable as error:
         return Outcome(_unreadable(target.path, f"{error.reason}; {error.remedy}"))
     except OptionInvalid:
