@@ -30,6 +30,26 @@ def pose_items(linkage: Linkage, analysis: Analysis) -> dict[str, Any]:
             for each in analysis.advantages
         ],
         "finite_motion": _finite(analysis),
+        "locked_parts": [
+            {
+                "links": [names[link] for link in part.links],
+                "with_frame": part.with_frame,
+                "redundant": part.redundant,
+                "links_to_go": [names[link] for link in part.links_to_go],
+            }
+            for part in analysis.locked_parts
+        ],
+        "idle_links": [
+            {"link": names[idle.link], "freedoms": idle.freedoms, "turns": idle.turns} for idle in analysis.idle_links
+        ],
+        "settling_drives": [
+            {
+                "link": names[drive.link],
+                "against": names[drive.against],
+                "kind": "turn" if drive.joint is None else "slide",
+            }
+            for drive in analysis.settling_drives
+        ],
         "resolution": None if analysis.bounds is None else analysis.bounds.resolution,
     }
 

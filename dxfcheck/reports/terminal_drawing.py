@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Iterable, Sequence
 
+from dxfcheck.analysis.results import Analysis
 from dxfcheck.inspection import DrawingReport, MechanismReport
 from dxfcheck.reports.caution import CAUTION
 from dxfcheck.reports.terminal_accepted import accepted_lines
@@ -74,17 +75,25 @@ def _motion(report: DrawingReport) -> str:
         return "holds no linkage"
     if count == 1:
         linkage, analysis = report.mechanisms[0].linkage, report.mechanisms[0].analysis
-        return f"1 mechanism, {_how_it_moves(analysis.mobility.at_pose, grounded=linkage.grounded)}{_driven(report)}"
-    freedoms = Counter(mechanism.analysis.mobility.at_pose for mechanism in report.mechanisms)
+        moves = _how_it_moves(analysis, grounded=linkage.grounded)
+        return f"1 mechanism, {moves}{_driven(report)}"
+    freedoms = Counter((_for_an_instant(each.analysis), each.analysis.mobility.at_pose) for each in report.mechanisms)
     several = [
-        f"{number} cannot move" if freedom == 0 else f"{number} with {count_of(freedom, 'freedom')}"
-        for freedom, number in sorted(freedoms.items())
+        f"{number} cannot move" if freedom == 0 else f"{number} with {count_of(freedom, 'freedom')}{instant}"
+        for (instant, freedom), number in sorted(freedoms.items())
     ]
     return f"{count} mechanisms, {', '.join(several)}{_driven(report)}"
 
 
-def _how_it_moves(freedoms: int, *, grounded: bool) -> str:
+def _for_an_instant(analysis: Analysis) -> str:
+    """What to say of freedoms that a finite step showed to be none."""
+    return " for an instant only" if analysis.finite is not None and analysis.finite.verdict == "locked" else ""
+
+
+def _how_it_moves(analysis: Analysis, *, grounded: bool) -> str:
+    freedoms = analysis.mobility.at_pose
     moves = f"moves with {count_of(freedoms, 'freedom')}" if freedoms else "cannot move"
+    moves += _for_an_instant(analysis)
     return moves if grounded else f"tied to no frame, {moves} within itself"
 
 

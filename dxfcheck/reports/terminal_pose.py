@@ -21,26 +21,34 @@ def finite_words(finite: FiniteMotion, unit: str) -> str:
     step = f"after a turn of {math.degrees(finite.turn):.2g} deg"
     if finite.verdict == "through":
         return f"it moves through: {step} all joints close again, while these lengths stay exact"
-    misfit = f"off by {finite.misfit:.2g} {unit} (limit {finite.limit:.2g})"
+    misfit = f"off by {_rough(finite.misfit)} {unit} (limit {_rough(finite.limit)})"
     if finite.verdict == "locked":
-        left_open = f"{step} a joint stays open by {finite.opening:.2g} {unit}"
+        left_open = f"{step} a joint stays open by {_rough(finite.opening)} {unit}"
         return f"momentary: it locks after the first step; {left_open}, as if a length were {misfit}"
     kept = "1 freedom is" if finite.freedom == 1 else f"{finite.freedom} freedoms are"
     return f"momentary: {step} {kept} left"
 
 
+def _rough(value: float) -> str:
+    """Two digits, without an exponent as far as that reads well."""
+    return figure(float(f"{value:.2g}"))
+
+
 def push_sentences(linkage: Linkage, analysis: Analysis, unit: str) -> Iterator[tuple[str, str]]:
-    """Label and text of the transmission angles and of the drive's speed over the outputs'."""
+    """Label and text of the transmission angles and of the drive's speed over the outputs'; not of what is locked."""
     names = [link.name for link in linkage.links]
-    for number, each in enumerate(analysis.transmissions[:SHOWN]):
+    locked = {link for part in analysis.locked_parts for link in part.links}
+    pushes = [each for each in analysis.transmissions if each.pushed not in locked]
+    for number, each in enumerate(pushes[:SHOWN]):
         degrees = math.degrees(each.angle)
         angle = f"transmission angle {degrees:.4g} deg"
         if each.square:
             angle += f" (pressure angle {90.0 - degrees:.4g} deg)"
         pin = linkage.pins[each.pin].name
         yield "" if number else "push", f"{names[each.pusher]} pushes {names[each.pushed]} at {pin}: {angle}"
-    if analysis.advantages:
-        ratios = [f"{names[each.link]} {_ratio(linkage, each, unit)}" for each in analysis.advantages[:SHOWN]]
+    outputs = [each for each in analysis.advantages if each.link not in locked]
+    if outputs:
+        ratios = [f"{names[each.link]} {_ratio(linkage, each, unit)}" for each in outputs[:SHOWN]]
         yield "advantage", f"drive speed over output speed: {listed(ratios)}"
 
 
@@ -72,5 +80,5 @@ def trust_words(linkage: Linkage, analysis: Analysis, bounds: SpeedBounds, unit:
     part, name = max(parts)
     if part < SHOWN_AS_ZERO:
         return "places are drawn exactly: no digit shown is in doubt"
-    within = f"every coordinate within {bounds.resolution:.2g} {unit}"
+    within = f"every coordinate within {_rough(bounds.resolution)} {unit}"
     return f"{within}: speeds within {100.0 * part:.2g} % ({name} at worst)"
