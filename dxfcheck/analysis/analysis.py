@@ -2,18 +2,18 @@
 
 from __future__ import annotations
 
-from dxfcheck.analysis.constraints import bodies_of
-from dxfcheck.analysis.faults import faults_of, faults_without_frame
-from dxfcheck.analysis.freedom import freedom_at_pose
-from dxfcheck.analysis.loop_equations import LoopSolution, solve_loops
-from dxfcheck.analysis.loops import link_loops
+from dxfcheck.analysis.faults.faults import faults_of, faults_without_frame
+from dxfcheck.analysis.freedom.constraints import bodies_of
+from dxfcheck.analysis.freedom.freedom import freedom_at_pose
+from dxfcheck.analysis.loops.loop_equations import LoopSolution, solve_loops
+from dxfcheck.analysis.loops.loops import link_loops
 from dxfcheck.analysis.mobility import count_mobility
-from dxfcheck.analysis.motions import joint_motions, link_motions, pin_motions, unknown_motions
-from dxfcheck.analysis.pose import bounds_of, finite_of, pose_of
+from dxfcheck.analysis.pose.pose import bounds_of, finite_of, pose_of
+from dxfcheck.analysis.pose.transmission import advantages
 from dxfcheck.analysis.results import Analysis, DriveVerdict
+from dxfcheck.analysis.speeds.motions import joint_motions, link_motions, pin_motions, unknown_motions
+from dxfcheck.analysis.speeds.velocity import Motion, apply_drives
 from dxfcheck.analysis.topology import topology_of
-from dxfcheck.analysis.transmission import advantages
-from dxfcheck.analysis.velocity import Motion, apply_drives
 from dxfcheck.linkage import Linkage
 
 __all__ = ["analyse"]

@@ -5,9 +5,9 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Iterator
 
-from dxfcheck.analysis.closing import Closing, Triangle
-from dxfcheck.analysis.closure import Chain, Term, hang
-from dxfcheck.analysis.working import PointVelocity, StepWorking, Working, work_out
+from dxfcheck.analysis.by_hand.closing import Closing, Triangle
+from dxfcheck.analysis.by_hand.closure import Chain, Term, hang
+from dxfcheck.analysis.by_hand.working import PointVelocity, StepWorking, Working, work_out
 from dxfcheck.geometry import Point
 from dxfcheck.inspection import MechanismReport
 from dxfcheck.linkage import Drive

@@ -4,10 +4,10 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from dxfcheck.analysis.closing import Closing, Equation, Unknown
-from dxfcheck.analysis.closure import Chain, Hanging, hang
-from dxfcheck.analysis.solved_linkage import acts_as
-from dxfcheck.analysis.working import StepWorking
+from dxfcheck.analysis.by_hand.closing import Closing, Equation, Unknown
+from dxfcheck.analysis.by_hand.closure import Chain, Hanging, hang
+from dxfcheck.analysis.by_hand.solved_linkage import acts_as
+from dxfcheck.analysis.by_hand.working import StepWorking
 from dxfcheck.geometry import Point
 from dxfcheck.reports.terminal_layout import Column, Line, count_of, figure, fold, table
 from dxfcheck.reports.terminal_working_terms import Names, rotation

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 
-from dxfcheck.analysis.kennedy import PoleLine, PoleWorking
-from dxfcheck.analysis.solved_linkage import acts_as
+from dxfcheck.analysis.by_hand.kennedy import PoleLine, PoleWorking
+from dxfcheck.analysis.by_hand.solved_linkage import acts_as
 from dxfcheck.reports.terminal_layout import figure
 from dxfcheck.reports.terminal_working_terms import Names
 from dxfcheck.tolerances.findings import SHOWN_AS_ZERO

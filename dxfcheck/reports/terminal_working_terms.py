@@ -10,8 +10,8 @@ import cmath
 import math
 from dataclasses import dataclass
 
-from dxfcheck.analysis.closure import Chain, Term
-from dxfcheck.analysis.solved_linkage import SolvedLinkage
+from dxfcheck.analysis.by_hand.closure import Chain, Term
+from dxfcheck.analysis.by_hand.solved_linkage import SolvedLinkage
 from dxfcheck.geometry import Point, dot
 from dxfcheck.linkage import Joint, Linkage
 from dxfcheck.reports.terminal_layout import figure

@@ -7,7 +7,9 @@ from dataclasses import replace
 
 import pytest
 
-from dxfcheck.analysis import analyse, freedom, loop_equations, loops
+from dxfcheck.analysis import analyse
+from dxfcheck.analysis.freedom import freedom
+from dxfcheck.analysis.loops import loop_equations, loops
 from dxfcheck.analysis.results import Analysis
 from dxfcheck.linkage import Drive, Linkage
 from tests.analysis.lattices import error_of, four_bar_chain, scissor_lattice

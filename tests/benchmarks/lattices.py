@@ -27,7 +27,7 @@ from scipy.sparse.linalg import spsolve
 
 sys.path.insert(0, str(Path(__file__).parents[2]))
 from dxfcheck.analysis import analyse
-from dxfcheck.analysis.constraints import CELLS, ROWS, bodies_of, constraint_matrix, freedom_of, rows_of_joint
+from dxfcheck.analysis.freedom.constraints import CELLS, ROWS, bodies_of, constraint_matrix, freedom_of, rows_of_joint
 from dxfcheck.analysis.topology import topology_of
 from dxfcheck.collector import collector_paused
 from dxfcheck.linkage import Linkage

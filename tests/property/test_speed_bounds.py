@@ -10,11 +10,11 @@ from dataclasses import replace
 import pytest
 
 from dxfcheck.analysis import analyse
-from dxfcheck.analysis.constraints import bodies_of, constraint_matrix, freedom_of
+from dxfcheck.analysis.freedom.constraints import bodies_of, constraint_matrix, freedom_of
+from dxfcheck.analysis.pose.sensitivity import speed_bounds
 from dxfcheck.analysis.results import Analysis, SpeedBounds
-from dxfcheck.analysis.sensitivity import speed_bounds
+from dxfcheck.analysis.speeds.velocity import apply_drives
 from dxfcheck.analysis.topology import topology_of
-from dxfcheck.analysis.velocity import apply_drives
 from dxfcheck.linkage import Drive, Joint, Linkage
 from tests.model import FRAME, Other, linkage
 from tests.property.growing import FIXED, Model

@@ -10,7 +10,7 @@ import math
 
 import pytest
 
-from dxfcheck.analysis.working import StepWorking, Working, work_out
+from dxfcheck.analysis.by_hand.working import StepWorking, Working, work_out
 from tests.closed_forms import RPM, circles_meet, slider_crank
 from tests.model import Other, Solved, linkage
 

@@ -1,0 +1,1 @@
+"""The solution in the order and form of a hand check."""

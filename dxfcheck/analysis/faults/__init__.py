@@ -1,0 +1,1 @@
+"""Who is locked, free, idle or redundant, and what would mend it."""

@@ -1,0 +1,1 @@
+"""Velocity constraints of all links, their rank and what they leave free."""

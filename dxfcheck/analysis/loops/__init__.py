@@ -1,0 +1,1 @@
+"""Independent loops, and the second solution of the speeds by their equations."""

@@ -1,0 +1,1 @@
+"""How good the drawn pose is: dead centres, pushes, finite steps, trust."""

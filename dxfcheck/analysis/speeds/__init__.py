@@ -1,0 +1,1 @@
+"""Drives applied to the free motions, and the speeds that follow."""
