@@ -10,8 +10,9 @@ from dxfcheck.linkage import Drive, Linkage
 from dxfcheck.reports.terminal_contacts import contact_sentences, joint_counts, sliding_words
 from dxfcheck.reports.terminal_layout import Line, count_of, figure, fold, listed, place, table
 from dxfcheck.reports.terminal_motion import joint_columns, link_columns, pin_columns, turns_a_minute
-from dxfcheck.reports.terminal_pose import finite_words, push_sentences, trust_words
+from dxfcheck.reports.terminal_pose import finite_words, push_sentences, trust_words, why_they_differ
 from dxfcheck.reports.terminal_requirements import requirements_line
+from dxfcheck.tolerances.findings import LARGE_DISAGREEMENT
 
 __all__ = ["mechanism_lines"]
 
@@ -131,4 +132,6 @@ def _how_sure(linkage: Linkage, analysis: Analysis) -> str:
         return "not settled by the drives" + (f" for {listed(loose)}" if loose else "; see the findings")
     if analysis.disagreement is None:
         return "settled"
-    return f"solved in two independent ways, which differ by {analysis.disagreement:.1g} of the greatest speed"
+    return f"solved in two independent ways, which differ by {analysis.disagreement:.1g} of the greatest speed" + (
+        f"; {why_they_differ(linkage, analysis)}" if analysis.disagreement > LARGE_DISAGREEMENT else ""
+    )

@@ -8,9 +8,10 @@ from collections.abc import Iterator
 from dxfcheck.analysis.results import Advantage, Analysis, FiniteMotion, SpeedBounds
 from dxfcheck.linkage import Linkage
 from dxfcheck.reports.terminal_layout import figure, listed
+from dxfcheck.tolerances.analysis import RANK_DOUBTFUL
 from dxfcheck.tolerances.findings import SHOWN_AS_ZERO
 
-__all__ = ["finite_words", "push_sentences", "trust_words"]
+__all__ = ["finite_words", "push_sentences", "trust_words", "why_they_differ"]
 
 SHOWN = 6
 """At most so many pushes and advantages are put into words; the JSON report has all."""
@@ -60,6 +61,20 @@ def _ratio(linkage: Linkage, each: Advantage, unit: str) -> str:
     if drive_turns == each.turns:
         return figure(each.ratio)
     return f"{figure(each.ratio)} {f'rad/{unit}' if drive_turns else f'{unit}/rad'}"
+
+
+def why_they_differ(linkage: Linkage, analysis: Analysis) -> str:
+    """What makes the two ways of solving differ more than rounding in the computer does."""
+    if analysis.mobility.redundant:
+        return "so much because a constraint repeats others only within the drawing's rounding: each way weighs it otherwise"
+    near = [*analysis.dead_centres, *analysis.near_dead_centres]
+    if near:
+        pin = linkage.pins[min(near, key=lambda each: each.angle).pin].name
+        return f"so much because the pose stands near a dead centre, at {pin}: the last digits are lost"
+    if analysis.rank_gap is not None and analysis.rank_gap[0] < RANK_DOUBTFUL:
+        smallest = f"smallest singular value {analysis.rank_gap[0]:.1g} of the greatest"
+        return f"so much because constraints nearly repeat one another ({smallest}): the last digits are lost"
+    return "so much for no reason that is known: do not rely on these speeds, and report the drawing"
 
 
 def trust_words(linkage: Linkage, analysis: Analysis, bounds: SpeedBounds, unit: str) -> str:

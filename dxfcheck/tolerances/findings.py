@@ -47,3 +47,7 @@ BOUNDS_SHOWN_OF = 40
 
 RIGID_TRIANGLE = 3
 """Three bars pinned at their ends are a usual way to draw one link, and no locked part is told of."""
+
+LARGE_DISAGREEMENT = 1e-6
+"""Two ways of solving that differ by more than this part of the greatest speed differ by more than rounding in the
+computer: well-conditioned poses stay below 1e-12."""

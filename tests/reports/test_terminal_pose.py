@@ -6,10 +6,12 @@ from dataclasses import replace
 import pytest
 
 from dxfcheck.analysis import analyse
-from dxfcheck.analysis.results import Advantage, FiniteMotion, SpeedBounds
+from dxfcheck.analysis.results import Advantage, DeadCentre, FiniteMotion, SpeedBounds
+from dxfcheck.inspection import MechanismReport
 from dxfcheck.linkage import Drive
 from dxfcheck.reports.json_pose import off_by, pose_items
-from dxfcheck.reports.terminal_pose import finite_words, push_sentences, trust_words
+from dxfcheck.reports.terminal_mechanism import mechanism_lines
+from dxfcheck.reports.terminal_pose import finite_words, push_sentences, trust_words, why_they_differ
 from tests.model import Other, linkage
 
 FOUR_BAR = {"A": "ground crank", "B": "crank coupler", "C": "coupler rocker", "D": "rocker ground"}
@@ -91,3 +93,25 @@ def test_json_has_angles_in_degrees_and_null_for_what_was_not_worked_out() -> No
     assert off_by(None, "links", 3) is None
     assert off_by(bounds(0.5), "links", 3) == pytest.approx(0.5 * abs(analyse(TIPPER).links[3].angular_velocity or 0.0))
     assert off_by(bounds(0.5), "pins", 1) == 0.0
+
+
+def test_a_large_disagreement_is_explained() -> None:
+    found = analyse(TIPPER)
+    redundant = replace(found, mobility=replace(found.mobility, count=0))
+    assert "only within the drawing's rounding" in why_they_differ(TIPPER, redundant)
+    near = DeadCentre(pin=2, links=(2, 3), driven=3, angle=0.001)
+    assert "near a dead centre, at C" in why_they_differ(TIPPER, replace(found, near_dead_centres=(near,)))
+    assert "nearly repeat one another" in why_they_differ(TIPPER, replace(found, rank_gap=(2e-5, 0.0)))
+    assert "do not rely on these speeds" in why_they_differ(TIPPER, found)
+
+
+def test_it_is_explained_only_where_it_is_large() -> None:
+    found = analyse(TIPPER)
+    assert found.disagreement is not None
+
+    def shown(part: float) -> str:
+        report = MechanismReport(linkage=TIPPER, analysis=replace(found, disagreement=part))
+        return " ".join(line.text for line in mechanism_lines(report, "mm", 80))
+
+    assert "so much" not in shown(1e-12)
+    assert "so much" in shown(1e-3)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
+from dxfcheck.analysis.faults.joined import joined_groups
 from dxfcheck.analysis.freedom.constraints import Matrix
 from dxfcheck.analysis.results import FreePart
 from dxfcheck.analysis.speeds.velocity import Motion
@@ -23,25 +24,9 @@ def free_parts(linkage: Linkage, motion: Motion) -> tuple[FreePart, ...]:
 
 
 def _parts(linkage: Linkage, settled: list[bool]) -> list[tuple[int, ...]]:
-    around: list[list[int]] = [[] for _ in linkage.links]
-    for joint in linkage.joints:
-        if not settled[joint.first] and not settled[joint.second]:
-            around[joint.first].append(joint.second)
-            around[joint.second].append(joint.first)
-    met = list(settled)
-    parts = []
-    for first in range(len(met)):
-        if met[first]:
-            continue
-        met[first] = True
-        part = [first]
-        for link in part:
-            for other in around[link]:
-                if not met[other]:
-                    met[other] = True
-                    part.append(other)
-        parts.append(tuple(sorted(part)))
-    return parts
+    free = [link for link, is_settled in enumerate(settled) if not is_settled]
+    pairs = [(joint.first, joint.second) for joint in linkage.joints]
+    return joined_groups(free, [pair for pair in pairs if not any(settled[link] for link in pair)])
 
 
 def _part(linkage: Linkage, motion: Motion, links: tuple[int, ...], *, alone: bool) -> FreePart:

@@ -13,6 +13,7 @@ from typing import NamedTuple
 import numpy as np
 from numpy.typing import NDArray
 
+from dxfcheck.analysis.faults.joined import joined_groups
 from dxfcheck.analysis.freedom.constraints import Body, Matrix, bodies_of
 from dxfcheck.analysis.freedom.freedom import freedom_at_pose, part_of
 from dxfcheck.analysis.freedom.vicinity import fastest_nearby
@@ -83,25 +84,8 @@ def _neighbours(linkage: Linkage) -> list[_Pair]:
 
 def _groups(topology: Topology, pairs: list[_Pair], still: NDArray[np.bool_]) -> list[tuple[int, ...]]:
     """Links that hang together by neighbours without relative motion, two or more."""
-    around: list[list[int]] = [[] for _ in range(topology.links)]
-    for pair, is_still in zip(pairs, still.tolist(), strict=True):
-        if is_still:
-            around[pair.first].append(pair.second)
-            around[pair.second].append(pair.first)
-    groups = []
-    met = [False] * topology.links
-    for first in range(topology.links):
-        if met[first] or not around[first]:
-            continue
-        met[first] = True
-        group = [first]
-        for link in group:
-            for other in around[link]:
-                if not met[other]:
-                    met[other] = True
-                    group.append(other)
-        groups.append(tuple(sorted(group)))
-    return groups
+    rigid = [(pair.first, pair.second) for pair, is_still in zip(pairs, still.tolist(), strict=True) if is_still]
+    return [group for group in joined_groups(range(topology.links), rigid) if len(group) > 1]
 
 
 def _still(pairs: list[_Pair], topology: Topology, bodies: list[Body], motions: Matrix) -> NDArray[np.bool_]:
