@@ -66,7 +66,7 @@ def _ratio(linkage: Linkage, each: Advantage, unit: str) -> str:
 def why_they_differ(linkage: Linkage, analysis: Analysis) -> str:
     """What makes the two ways of solving differ more than rounding in the computer does."""
     if analysis.mobility.redundant:
-        return "so much because a constraint repeats others only within the drawing's rounding; each weighs it otherwise"
+        return "so much because a constraint repeats others only within the drawing's rounding, and each weighs it"
     near = [*analysis.dead_centres, *analysis.near_dead_centres]
     if near:
         pin = linkage.pins[min(near, key=lambda each: each.angle).pin].name
