@@ -94,6 +94,6 @@ def trust_words(linkage: Linkage, analysis: Analysis, bounds: SpeedBounds, unit:
         return ""
     part, name = max(parts)
     if part < SHOWN_AS_ZERO:
-        return "places are drawn exactly: no digit shown is in doubt"
+        return "no rounding of places was found that reaches the digits shown"
     within = f"every coordinate within {_rough(bounds.resolution)} {unit}"
     return f"{within}: speeds within {100.0 * part:.2g} % ({name} at worst)"

@@ -190,7 +190,8 @@ def idle_freedom(subject: RuleSubject) -> Iterator[Finding]:
 
 def _idle_texts(linkage: Linkage, idle: IdleLink) -> tuple[str, str]:
     name = linkage.links[idle.link].name
-    about = "" if idle.pin is None else f" about {linkage.pins[idle.pin].name}"
+    pin = None if idle.pin is None else linkage.pins[idle.pin].name
+    about = "" if pin is None else f" about {'its pin' if pin == name else pin}"  # a link of one pin has its name
     does = f"turns freely{about}" if idle.turns else "slides freely"
     if idle.turns and idle.freedoms > 1:
         does = "turns and slides freely"

@@ -14,6 +14,9 @@ RIM_OF_RADIUS = 0.02
 TYPED_STEPS = (0.1, 0.01, 0.001, 0.0001)
 """Coordinates that all lie on one of these grids were typed or rounded to so many decimals; whole numbers are exact."""
 
+EXPORTED_STEPS = (1e-5, 1e-6, 1e-7, 1e-8)
+"""Grids of decimals that programs round to on export; finer ones cannot be told from full precision at 300 mm."""
+
 TYPED_NOISE = 1e-12
 """How far from its grid a typed coordinate may lie, over its own size: rounding in the computer."""
 

@@ -76,7 +76,7 @@ def test_the_worst_speed_tells_how_far_all_can_be_trusted() -> None:
     found = analyse(TIPPER)
     words = trust_words(TIPPER, found, bounds(2e-4), "mm")
     assert words == "every coordinate within 0.005 mm: speeds within 0.02 % (rocker at worst)"
-    assert "no digit shown is in doubt" in trust_words(TIPPER, found, bounds(0.0), "mm")
+    assert "no rounding of places was found" in trust_words(TIPPER, found, bounds(0.0), "mm")
 
 
 def test_json_has_angles_in_degrees_and_null_for_what_was_not_worked_out() -> None:

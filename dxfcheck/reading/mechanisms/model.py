@@ -6,6 +6,8 @@ from collections import defaultdict
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
+import numpy as np
+
 from dxfcheck.drawing.primitives import Arc, Sketch
 from dxfcheck.geometry import Point
 from dxfcheck.linkage import Linkage
@@ -14,6 +16,7 @@ from dxfcheck.reading.drives.drives import Driven, drive_linkages
 from dxfcheck.reading.lines.linework import arc_middle
 from dxfcheck.reading.lines.sheet import Sheet
 from dxfcheck.reading.lines.sorting import Sorted
+from dxfcheck.reading.lines.typed import rounding_of
 from dxfcheck.reading.mechanisms.assemble import Assembled, Assembly, Named, assemble, find_assemblies
 from dxfcheck.reading.parts.parts import Parts
 from dxfcheck.reading.requirements.requirement_notes import Required, read_requirement_notes
@@ -85,11 +88,12 @@ def make_model(sketch: Sketch, settings: Settings, kinds: Sorted, sheet: Sheet, 
 
 
 def _resolution(sheet: Sheet, settings: Settings) -> float:
-    """What a coordinate may be off by: half a step of typed decimals, a stated tolerance, gaps in what meets."""
+    """What a coordinate may be off by: half a step of its decimals, a stated tolerance, gaps in what meets."""
     t = sheet.tolerance.t
     gaps = [landing.offset for landing in sheet.landings.landings if landing.offset <= t]
     apart = [abs(ring.centre - pin.at) for pin in sheet.pins if len(pin.rings) > 1 for ring in pin.rings]
-    return max(sheet.tolerance.typed_rings / 2.0, settings.tolerance or 0.0, *gaps, *apart, 0.0)
+    rounding = rounding_of(np.array([pin.at for pin in sheet.pins], dtype=np.complex128))
+    return max(rounding, settings.tolerance or 0.0, *gaps, *apart)
 
 
 def _named(
